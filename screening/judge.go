@@ -1,0 +1,181 @@
+package screening
+
+import (
+	"fmt"
+	"slices"
+
+	"goodbin/screening/quantity"
+)
+
+// Judge holds a part's readings against the limits that its claim implies and rolls the findings up into a verdict.
+//
+// A stop found by eye gives the verdict that its check names. Otherwise the own claim is tried at each grade the policy allows, best first;
+// then a wider tolerance where only a tolerance is too close to call; then, where a failure cannot be undone, the lesser claims in order;
+// then treatment; what is left is undecided, with what would settle it.
+//
+// It returns an error where the claim cannot be understood by the rulebook: a contradiction, or a rating out of the tables' range.
+func Judge(book *Rulebook, part Part, policy Policy) (Judgement, error) {
+	j := judging{book: book, policy: &policy}
+	part.Kind = book.Kind
+	claim, notes, err := j.complete(part.Claim)
+	if err != nil {
+		return Judgement{Part: part, Tables: book.Tables}, err
+	}
+	part.Claim = claim
+	part.Readings = j.prepare(part)
+	if book.Derive != nil {
+		derived, why := book.Derive(part)
+		part.Readings = append(part.Readings, derived...)
+		notes = append(notes, why...)
+	}
+	findings, adjusted, err := j.findings(part)
+	if err != nil {
+		return Judgement{Part: part, Claim: claim, Tables: book.Tables}, err
+	}
+	result := Judgement{
+		Part: part, Claim: claim, Tables: book.Tables, Stops: j.stops(part), Findings: findings,
+		Reasons: append(notes, adjusted...),
+	}
+	j.rollUp(&result)
+	if book.Untested != nil {
+		result.Untested = book.Untested(part, findings)
+	}
+	if book.Cautions != nil {
+		result.Cautions = book.Cautions(part, AtVerdict)
+	}
+	for i := range findings {
+		if e := findings[i].Evidence(); e != nil && e.Assumed {
+			result.Assumed = true
+		}
+	}
+	return result, nil
+}
+
+// judging is one run of the judge.
+type judging struct {
+	book   *Rulebook
+	policy *Policy
+}
+
+func (j *judging) complete(claim Claim) (Claim, []Reason, error) {
+	if j.book.Complete == nil {
+		return claim, nil, nil
+	}
+	return j.book.Complete(claim)
+}
+
+// prepare fills in what the readings that stand leave open: the ambient temperature, what then is left of the field's default condition,
+// the uncertainty. A measured ambient goes before an assumed one.
+func (j *judging) prepare(part Part) []Reading {
+	readings := part.Current()
+	ambient, hasAmbient := part.Ambient()
+	for i := range readings {
+		r := &readings[i]
+		if hasAmbient && r.Of != Temperature.Name && !r.At.Has(PartTemperature) {
+			r.At = r.At.With(PartTemperature, ambient.Value)
+		}
+		if f := j.book.bench(r.Of); f != nil && !f.Default.IsZero() {
+			filled := r.At.Fill(f.Default)
+			for v := Frequency; v < variables; v++ {
+				if x, added := filled.Get(v); added && !r.At.Has(v) {
+					r.AssumedAt = r.AssumedAt.With(v, x)
+				}
+			}
+			r.At = filled
+		}
+		meter, ok := j.policy.Meters[r.Meter]
+		if !ok {
+			meter = AssumedMeter()
+		}
+		r.U = meter.Uncertainty(*r)
+		r.Assumed = meter.Assumed
+	}
+	return readings
+}
+
+func (j *judging) stops(part Part) []Stop {
+	var stops []Stop
+	for _, c := range j.book.Look {
+		if fault, _ := part.Seen(c.Name); fault && c.Verdict != NoVerdict {
+			stops = append(stops, Stop{Check: c.Name, Verdict: c.Verdict, Reason: c.Reason, Do: c.Do, Source: c.Source})
+		}
+	}
+	return stops
+}
+
+// findings evaluates every limit that counts under the policy, then applies the rules across readings. A limit without a section that has
+// readings by section is held against each of them.
+func (j *judging) findings(part Part) ([]Finding, []Reason, error) {
+	limits, err := j.book.Limits(part.Claim)
+	if err != nil {
+		return nil, nil, err
+	}
+	findings := make([]Finding, 0, len(limits))
+	for i := range limits {
+		l := &limits[i]
+		if !j.policy.counts(part.Kind, l) {
+			continue
+		}
+		for _, section := range sectionsFor(part, l) {
+			sectioned := *l
+			sectioned.Section = section
+			findings = append(findings, j.find(part, sectioned))
+		}
+	}
+	if j.book.Adjust == nil {
+		return findings, nil, nil
+	}
+	findings, reasons := j.book.Adjust(part, findings)
+	return findings, reasons, nil
+}
+
+// sectionsFor lists the sections that a limit is held against: its own, or of a limit for the whole part every section that was measured.
+func sectionsFor(part Part, l *Limit) []string {
+	if l.Section != "" {
+		return []string{l.Section}
+	}
+	var sections []string
+	for _, r := range part.Readings {
+		if r.Of == l.On && r.Section != "" && !slices.Contains(sections, r.Section) {
+			sections = append(sections, r.Section)
+		}
+	}
+	if sections == nil {
+		return []string{""}
+	}
+	return sections
+}
+
+// Plausible checks a reading against what is possible for its field and returns it tidied: a negative reading within two steps of zero is
+// a zero. The error says what was wrong; it wraps ErrOutsideBand.
+func Plausible(f Field, r Reading) (Reading, error) {
+	if !finite(r.Value) {
+		return r, fmt.Errorf("%w: %s is not a finite number", ErrOutsideBand, f.Label)
+	}
+	if f.Unit == quantity.Celsius {
+		return r, between(f, r, orSpan(f.Band, Span{-90, 300}))
+	}
+	if r.Value < 0 && -r.Value <= 2*r.Step && f.Band.Low >= 0 {
+		r.Value = 0
+	}
+	return r, between(f, r, orSpan(f.Band, Span{0, 1e15}))
+}
+
+func orSpan(s, fallback Span) Span {
+	if s == (Span{}) {
+		return fallback
+	}
+	return s
+}
+
+func between(f Field, r Reading, band Span) error {
+	switch {
+	case r.Value < band.Low && band.Low == 0:
+		return fmt.Errorf("%w: %s reads %s; it cannot be negative by more than the meter's last digits", ErrOutsideBand,
+			f.Label, quantity.Format(r.Value, r.Unit, 0))
+	case r.Value < band.Low || r.Value > band.High:
+		return fmt.Errorf("%w: %s reads %s; it lies between %s and %s", ErrOutsideBand, f.Label, quantity.Format(r.Value, r.Unit, 0),
+			quantity.Format(band.Low, r.Unit, 0), quantity.Format(band.High, r.Unit, 0))
+	}
+	return nil
+}

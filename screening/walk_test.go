@@ -1,0 +1,148 @@
+package screening_test
+
+import (
+	"errors"
+	"math"
+	"testing"
+
+	"goodbin/screening"
+	"goodbin/screening/quantity"
+)
+
+func answerLooks(w *screening.Walk) {
+	for q := w.Next(); q.Ask == screening.AskLook; q = w.Next() {
+		w.See(q.Check.Name, false)
+	}
+}
+
+func TestWalkAsksQuickReadingsThatCouldRejectFirst(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(toy(), relative(0.001), toyPart(none, none, none))
+	if q := w.Next(); q.Ask != screening.AskLook || q.Check.Name != "cracked" {
+		t.Fatalf("first question %+v; the look comes before power", q)
+	}
+	answerLooks(w)
+	for _, want := range []struct {
+		of    screening.Characteristic
+		unit  quantity.Unit
+		value float64
+	}{{"quick", quantity.Volt, 0.7}, {"value", quantity.Ohm, 100}, {"slow", quantity.Ampere, 1e-4}} {
+		q := w.Next()
+		if q.Ask != screening.AskReading || q.Field.Name != want.of {
+			t.Fatalf("asked for %q; want %q", q.Field.Name, want.of)
+		}
+		if err := w.Record(exactly(want.of, want.unit, want.value)); err != nil {
+			t.Fatal(err)
+		}
+	}
+	if q := w.Next(); q.Ask != screening.AskNothing {
+		t.Errorf("still asks %+v after every required reading", q)
+	}
+	w.AskWanted(true)
+	if q := w.Next(); q.Field.Name != "unsure" {
+		t.Errorf("wanted readings are not asked on request: %+v", q)
+	}
+	if j, _ := w.Judgement(); j.Verdict != screening.Accept {
+		t.Errorf("verdict %v", j.Verdict)
+	}
+}
+
+func TestWalkStopsAtTheFirstIrrecoverableFailureAndGoesOnWhenTold(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(toy(), relative(0.001), toyPart(none, none, none))
+	answerLooks(w)
+	if err := w.Record(exactly("quick", quantity.Volt, 0.1)); err != nil {
+		t.Fatal(err)
+	}
+	if !w.Stopped() || w.Next().Ask != screening.AskNothing {
+		t.Fatal("a part that is rejected is still asked about")
+	}
+	w.GoOn()
+	if q := w.Next(); q.Field.Name != "value" {
+		t.Errorf("going on asks %q; want the next reading", q.Field.Name)
+	}
+}
+
+func TestWalkTreatableFailureDoesNotStopIt(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(toy(), relative(0.001), toyPart(none, 5e-3, none))
+	answerLooks(w)
+	if w.Stopped() || w.Next().Field.Name != "quick" {
+		t.Errorf("a treatable failure ended the walk before the quick reading")
+	}
+}
+
+func TestWalkSkipRetractAndUnskip(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(toy(), relative(0.001), toyPart(none, none, none))
+	answerLooks(w)
+	w.Skip(w.Next())
+	if q := w.Next(); q.Field.Name != "value" {
+		t.Fatalf("after a skip asks %q", q.Field.Name)
+	}
+	w.Unskip()
+	if q := w.Next(); q.Field.Name != "quick" {
+		t.Errorf("after unskip asks %q", q.Field.Name)
+	}
+	_ = w.Record(exactly("quick", quantity.Volt, 0.7))
+	if !w.Retract() || w.Next().Field.Name != "quick" {
+		t.Error("a retracted reading is not asked again")
+	}
+}
+
+func TestWalkAsksForTheClaimFirst(t *testing.T) {
+	w := screening.NewWalk(toy(), relative(0.001), screening.Part{Kind: "toy"})
+	if q := w.Next(); q.Ask != screening.AskClaim || q.Field.Name != "value" {
+		t.Fatalf("asks %+v; want the claim", q)
+	}
+	w.SetClaim(toyPart(0, 0, 0).Claim)
+	if q := w.Next(); q.Ask != screening.AskLook {
+		t.Errorf("after the claim asks %+v", q)
+	}
+}
+
+func TestWalkRefusesWhatTheKindDoesNotHave(t *testing.T) {
+	w := screening.NewWalk(toy(), relative(0.001), toyPart(100, 1e-4, 0.7))
+	if err := w.Record(exactly("hfe", quantity.One, 100)); !errors.Is(err, screening.ErrNotAsked) {
+		t.Errorf("error %v", err)
+	}
+	if err := w.Record(exactly("quick", quantity.Volt, -5)); !errors.Is(err, screening.ErrOutsideBand) {
+		t.Errorf("error %v", err)
+	}
+}
+
+func TestWalkGateKeepsHandsOffAChargedPart(t *testing.T) {
+	book := toy()
+	book.Bench[1].UnderVoltage = true
+	book.Cautions = func(_ screening.Part, m screening.Moment) []screening.Caution {
+		if m == screening.AtLook {
+			return []screening.Caution{{Code: "stored-charge", Level: screening.Danger, Text: "charged", Gate: true}}
+		}
+		return nil
+	}
+	none := math.NaN()
+	w := screening.NewWalk(book, relative(0.001), toyPart(none, none, none))
+	if q := w.Next(); q.Ask != screening.AskGate || len(q.Cautions) != 1 {
+		t.Fatalf("asks %+v; the gate comes before the look", q)
+	}
+	if err := w.Record(exactly("remaining-voltage", quantity.Volt, 120)); !errors.Is(err, screening.ErrStillLive) {
+		t.Fatalf("120 V remaining: %v", err)
+	}
+	if q := w.Next(); q.Ask != screening.AskGate {
+		t.Fatalf("120 V remaining opens the gate: %+v", q)
+	}
+	_ = w.Record(exactly("remaining-voltage", quantity.Volt, 2))
+	answerLooks(w)
+	_ = w.Record(exactly("slow", quantity.Ampere, 1e-4))
+	if q := w.Next(); q.Ask != screening.AskGate {
+		t.Errorf("after a test under voltage asks %+v; want the gate again", q)
+	}
+	_ = w.Record(exactly("remaining-voltage", quantity.Volt, 0.5))
+	if q := w.Next(); q.Ask != screening.AskReading {
+		t.Errorf("after the second gate asks %+v", q)
+	}
+	again := screening.NewWalk(book, relative(0.001), w.Part())
+	if q := again.Next(); q.Ask != screening.AskReading {
+		t.Errorf("reopened, the walk asks %+v; it should go on where it was", q)
+	}
+}
