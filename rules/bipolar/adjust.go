@@ -1,0 +1,187 @@
+package bipolar
+
+import (
+	"fmt"
+
+	"goodbin/screening"
+	"goodbin/screening/quantity"
+)
+
+// validGain is the share of the collector current up to which leakage leaves a gain reading valid (ASTM F528).
+const validGain = 0.10
+
+// A base current below this leaves the second transistor of a power Darlington off: VBE over its built-in resistor, about 0.7 V / 10 kΩ
+// (derived; a simulated TIP122 reaches a gain of 376 at 100 µA and 20 at 70 µA).
+const turnOnCurrent = 100e-6
+
+// adjust holds the rules that look across readings: what leakage makes of a gain, where a low gain says nothing, what a base-emitter
+// voltage outside its band looks like.
+func adjust(part screening.Part, findings []screening.Finding) ([]screening.Finding, []screening.Reason) {
+	p := promiseOf(part.Claim)
+	var why []screening.Reason
+	undecided := gainUndecided(findings)
+	for i := range findings {
+		f := &findings[i]
+		if undecided && informative(&f.Limit) && f.Limit.Criterion == CriterionGain {
+			unanswer(f, "a reading at the sheet's own current is there, and it decides")
+		}
+		switch f.Limit.On {
+		case HFE.Name, HFENet.Name:
+			why = appendNote(why, p.adjustGain(part, f))
+		case VBE.Name:
+			why = appendNote(why, p.adjustVBE(f))
+		case screening.Temperature.Name:
+			if f.Outcome == screening.Missing && leakageStatesTemperature(part) {
+				f.Outcome, f.Probability, f.Why = screening.Pass, 1, ""
+			}
+		case ICEO.Name:
+			if f.Outcome == screening.Fail && f.Limit.Grade == screening.WithinSpec && p.material == germanium {
+				why = appendNote(why, "more than 300 µA of open-base leakage is suspicious in a small germanium part; watch it for drift")
+			}
+		}
+	}
+	return findings, why
+}
+
+// unanswer takes a reading back as evidence for a limit, and says why.
+func unanswer(f *screening.Finding, why string) {
+	f.Outcome, f.Why = screening.Missing, why
+	f.Probability, f.Margin, f.NearLimit, f.Unconfirmed = nan, nan, false, false
+}
+
+// gainUndecided reports whether a gain taken at a current of the sheet is too near its limit or fails an unconfirmed one. The weak bound
+// must not answer in its place.
+func gainUndecided(findings []screening.Finding) bool {
+	for i := range findings {
+		l := &findings[i].Limit
+		if l.Criterion == CriterionGain && l.Grade != screening.WithinSpec && !informative(l) && findings[i].Outcome == screening.Close {
+			return true
+		}
+	}
+	return false
+}
+
+// appendNote adds a note once.
+func appendNote(notes []screening.Reason, text string) []screening.Reason {
+	if text == "" {
+		return notes
+	}
+	for _, n := range notes {
+		if n.Text == text {
+			return notes
+		}
+	}
+	return append(notes, note("", text))
+}
+
+// adjustGain refuses a gain that is mostly leakage, and takes a low one away from the sheet's current for what it is: no evidence.
+func (p *promise) adjustGain(part screening.Part, f *screening.Finding) string {
+	r := f.Reading
+	if r == nil {
+		if f.Limit.On == HFENet.Name {
+			f.Why = "needs hfe with its collector current, and iceo at the same VCE and temperature"
+		}
+		return ""
+	}
+	if share, ok := leakageShare(part, *r); ok && f.Limit.On == HFE.Name && p.material != germanium && f.Limit.Criterion == CriterionGain {
+		unanswer(f, fmt.Sprintf("leakage is %.0f %% of the collector current; from %.0f %% on a gain reading is not valid (ASTM F528)",
+			100*share, 100*validGain))
+		return ""
+	}
+	if f.Outcome == screening.Fail && informative(&f.Limit) && (p.power() || p.darlington) {
+		unanswer(f, "a power type or a Darlington can read no gain at a small current: measure at the sheet's")
+	}
+	if p.powerDarlington() && f.Outcome == screening.Missing {
+		return p.smallBaseCurrent(*r)
+	}
+	if f.Outcome == screening.Pass && informative(&f.Limit) && f.Limit.Criterion == CriterionGain {
+		return p.informativeNote(part)
+	}
+	return ""
+}
+
+// smallBaseCurrent says why a power Darlington seems to have no gain.
+func (p *promise) smallBaseCurrent(r screening.Reading) string {
+	ib, ok := r.At.Get(screening.IB)
+	if ic, stated := r.At.Get(screening.IC); !ok && stated && r.Value > 0 {
+		ib, ok = ic/r.Value, true
+	}
+	if ok && ib >= turnOnCurrent {
+		return ""
+	}
+	return p.name() + " may hold resistors across its junctions: below about 100 µA of base current they take it all and the gain reads near " +
+		"nothing. That is not a fault; test it with a lamp"
+}
+
+// leakageShare returns ICEO over IC of a gain reading where it reaches the share that makes the gain invalid.
+func leakageShare(part screening.Part, gain screening.Reading) (float64, bool) {
+	ic, ok := collectorCurrent(gain)
+	if !ok {
+		return 0, false
+	}
+	leak, ok := leakageBeside(part, gain)
+	if !ok || leak.Sense == quantity.AtMost {
+		return 0, false
+	}
+	return leak.Value / ic, leak.Value >= validGain*ic
+}
+
+// informativeNote says that gain was judged by the weak bound only, unless a reading met the sheet's current too.
+func (p *promise) informativeNote(part screening.Part) string {
+	promised, ok := p.claim.Rating(HFE.Name, "")
+	if !ok {
+		return ""
+	}
+	for _, r := range part.Readings {
+		if r.Of != HFE.Name && r.Of != HFENet.Name {
+			continue
+		}
+		if _, _, fits := gainFit.Misfit(&r.At, &promised.At); fits {
+			return ""
+		}
+		for _, s := range p.gainPoints() {
+			if _, _, fits := gainFit.Misfit(&r.At, &s.At); fits && s.Of == HFE.Name {
+				return ""
+			}
+		}
+	}
+	return "the gain is informative only: " + p.name() + " states it at " + promised.At.String()
+}
+
+// adjustVBE says what a voltage outside the band looks like. A part without a type number that reads like a Darlington is asked whether it
+// is one; nothing is ever passed silently as another family.
+func (p *promise) adjustVBE(f *screening.Finding) string {
+	e := f.Evidence()
+	if f.Outcome != screening.Fail || e == nil || f.Limit.Criterion != CriterionVBE {
+		return ""
+	}
+	x := e.Value
+	pair := figures()["vbe-darlington"]
+	switch {
+	case e.Over || x > pair.high+0.3:
+		return "base to emitter reads open: the wrong way round, the wrong pins, or an open junction; turn the probes before you throw it away"
+	case !p.darlington && x >= pair.low:
+		if !p.known {
+			unanswer(f, "it looks like a Darlington: if it is one, say darlington")
+		}
+		return fmt.Sprintf("it looks like a Darlington: %s is two junctions in series", quantity.Format(x, quantity.Volt, 3))
+	case p.darlington && x < pair.low && f.Side == screening.Below:
+		return fmt.Sprintf("%s is one junction: it does not look like a Darlington", quantity.Format(x, quantity.Volt, 3))
+	case p.material == silicon && x >= figures()["vbe-germanium"].low && x <= figures()["vbe-germanium"].high:
+		return "it reads like germanium, or like a leaking junction"
+	case p.material == germanium && x >= figures()["vbe-silicon-power"].low:
+		return "it reads like silicon"
+	case x < figures()["conducts-vbe"].low:
+		return "base to emitter reads as a short"
+	}
+	return ""
+}
+
+func leakageStatesTemperature(part screening.Part) bool {
+	for _, r := range part.Readings {
+		if r.Of == ICEO.Name && r.At.Has(screening.PartTemperature) {
+			return true
+		}
+	}
+	return false
+}

@@ -1,0 +1,173 @@
+package bipolar
+
+import (
+	"encoding/csv"
+	"math"
+	"os"
+	"strconv"
+	"strings"
+	"testing"
+
+	"pgregory.net/rapid"
+
+	"goodbin/rules/types"
+	"goodbin/screening"
+)
+
+// reference reads the table of transistors as it was collected.
+func reference(t *testing.T) []map[string]string {
+	t.Helper()
+	text, err := os.ReadFile("../types/testdata/types-ref.csv")
+	if err != nil {
+		t.Fatal(err)
+	}
+	lines, err := csv.NewReader(strings.NewReader(string(text))).ReadAll()
+	if err != nil {
+		t.Fatal(err)
+	}
+	var rows []map[string]string
+	for _, line := range lines[1:] {
+		row := map[string]string{}
+		for i, cell := range line {
+			row[lines[0][i]] = cell
+		}
+		rows = append(rows, row)
+	}
+	return rows
+}
+
+func cell(t *testing.T, text string, empty float64) float64 {
+	t.Helper()
+	if text == "" {
+		return empty
+	}
+	x, err := strconv.ParseFloat(text, 64)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return x
+}
+
+func TestEveryTypesLimitsEqualItsRow(t *testing.T) {
+	rows := reference(t)
+	if len(rows) != 99 {
+		t.Fatalf("%d rows, want 99", len(rows))
+	}
+	for _, ref := range rows {
+		name := ref["type"]
+		claim, _, err := complete(words("type=" + name))
+		if err != nil {
+			t.Errorf("%s: %v", name, err)
+			continue
+		}
+		all, err := limits(claim)
+		if err != nil {
+			t.Errorf("%s: %v", name, err)
+			continue
+		}
+		on := HFE.Name
+		if ref["mat"] == "Ge" {
+			on = HFENet.Name
+		}
+		type bounds struct {
+			On        screening.Characteristic
+			Low, High float64
+			IC        float64
+		}
+		wantGain := bounds{on, cell(t, ref["hfe_min"], 0), cell(t, ref["hfe_max"], inf), cell(t, ref["hfe_ic_ma"], 0) * 1e-3}
+		wantVBR := bounds{On: "vbr", Low: cell(t, ref["vceo_v"], 0), High: inf}
+		wantICBO := bounds{On: "icbo", Low: -inf, High: cell(t, ref["icbo_max_a"], 0)}
+		var spec, serviceable, breakdown, cutOff bool
+		for _, l := range all {
+			collector, _ := l.At.Get(screening.IC)
+			got := bounds{l.On, l.Low, l.High, math.Round(collector*1e9) / 1e9}
+			spec = spec || got == wantGain && l.Grade == screening.WithinSpec && !l.Soft
+			serviceable = serviceable || got == wantGain && l.Grade == screening.Serviceable && l.Soft
+			breakdown = breakdown || got == wantVBR && l.Need == screening.Wanted
+			cutOff = cutOff || got == wantICBO && l.Need == screening.Wanted && l.Grade == screening.WithinSpec
+		}
+		if !spec || !serviceable || !breakdown || cutOff != (ref["icbo_max_a"] != "") {
+			t.Errorf("%s: gain %v/%v, breakdown %v, ICBO %v", name, spec, serviceable, breakdown, cutOff)
+		}
+	}
+}
+
+// Under simple acceptance the bounds belong to the range (BC547 group B: 200 to 450 at 2 mA, 5 V).
+func TestGainBoundaries(t *testing.T) {
+	policy := screening.DefaultPolicy()
+	policy.Rule, policy.Meters = screening.SimpleAcceptance, map[string]screening.Meter{"": screening.ExactMeter()}
+	for gain, want := range map[float64]screening.Verdict{
+		199.9: screening.Regrade, 200: screening.Accept, 450: screening.Accept, 450.1: screening.Regrade, 109.9: screening.Reject,
+	} {
+		part := screening.Part{Claim: words("type=BC547B"), Readings: []screening.Reading{
+			read(VBE, 0.65, none), read(HFE, gain, at(ic, 2e-3, vce, 5.0)), atMost(read(ICEO, 0.1e-6, at(vce, 20.0))),
+		}}
+		j, err := screening.Judge(Book(), part, policy)
+		if err != nil || j.Verdict != want {
+			t.Errorf("gain %g: %s (%v), want %s\n%s", gain, j.Verdict, err, want, texts(j))
+		}
+	}
+}
+
+func TestAPoorMeterNeverRejectsAMiddlingPart(t *testing.T) {
+	policy := screening.DefaultPolicy()
+	poor := screening.Accuracy{Relative: 0.5}
+	policy.Meters = map[string]screening.Meter{"": {By: map[screening.Characteristic]screening.Accuracy{"hfe": poor, "vbe": poor, "iceo": poor}}}
+	part := screening.Part{Claim: words("type=BC547B"), Readings: []screening.Reading{
+		read(VBE, 0.65, none), read(HFE, 300, at(ic, 2e-3, vce, 5.0)), read(ICEO, 0.1e-6, at(vce, 20.0)),
+	}}
+	j, err := screening.Judge(Book(), part, policy)
+	if err != nil || j.Verdict == screening.Reject || j.Verdict == screening.Regrade {
+		t.Errorf("verdict %s, %v\n%s", j.Verdict, err, texts(j))
+	}
+}
+
+// Laws over all types: what is sound by its own row, measured at its own condition, is never rejected; and a gain far below the sheet's
+// currents never rejects either, whatever it reads above one.
+func TestSoundPartsAreNeverRejected(t *testing.T) {
+	names := types.Names(Kind)
+	rapid.Check(t, func(rt *rapid.T) {
+		name := rapid.SampledFrom(names).Draw(rt, "type")
+		c, _, err := complete(words("type=" + name))
+		if err != nil {
+			rt.Fatal(err)
+		}
+		p := promiseOf(c)
+		promised, _ := c.Rating(HFE.Name, "")
+		high := math.Min(promised.High, 4*promised.Low)
+		gain := rapid.Float64Range(promised.Low*1.2, math.Max(promised.Low*1.2, high*0.85)).Draw(rt, "gain")
+		band := figures()[p.vbeFigure()]
+		vbe := rapid.Float64Range(band.low+0.05, band.high-0.05).Draw(rt, "vbe")
+		away := rapid.Bool().Draw(rt, "away from the sheet's current")
+		where := promised.At
+		if away {
+			where = at(ic, 3e-6, vce, 5.0) // below every current that a sheet prints
+			gain = rapid.Float64Range(1.5, 2*promised.Low).Draw(rt, "low gain")
+		}
+		j, err := screening.Judge(Book(), screening.Part{Claim: words("type=" + name), Readings: []screening.Reading{
+			read(VBE, vbe, none), read(HFE, gain, where), read(ICEO, 1e-6, at(vce, 9.0, warm, 22.0)),
+		}}, screening.DefaultPolicy())
+		if err != nil {
+			rt.Fatal(err)
+		}
+		if j.Verdict == screening.Reject || j.Verdict == screening.Regrade {
+			rt.Errorf("%s with gain %g at %s, VBE %g: %s\n%s", name, gain, where, vbe, j.Verdict, texts(j))
+		}
+	})
+}
+
+func BenchmarkJudge(b *testing.B) {
+	book, policy := Book(), screening.DefaultPolicy()
+	part := screening.Part{Claim: words("type=BC547B"), Readings: []screening.Reading{
+		read(VBE, 0.65, none), read(HFE, 290, at(ic, 2e-3, vce, 5.0)), atMost(read(ICEO, 0.1e-6, at(vce, 20.0))),
+	}}
+	var findings int
+	for b.Loop() {
+		j, err := screening.Judge(book, part, policy)
+		if err != nil {
+			b.Fatal(err)
+		}
+		findings = len(j.Findings)
+	}
+	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(findings), "ns/finding")
+}

@@ -1,0 +1,325 @@
+package electrolytic
+
+import (
+	"fmt"
+	"math"
+	"slices"
+
+	"goodbin/screening"
+	"goodbin/screening/quantity"
+)
+
+// Codes of this kind's own reasons.
+const (
+	codeLeakageSuspected = "leakage-suspected"
+	codeFaultEra         = "electrolyte-fault-era"
+	codeConfirmed        = "fails-published-too"
+	codeUnconfirmed      = "figure-unconfirmed"
+	codeSeriesUnknown    = "series-unknown"
+	codeCold             = "cold"
+)
+
+// Years of the water-driven electrolyte fault (from memory).
+const faultFrom, faultTo = 1999, 2007
+
+// mostTreatments is how many times a part is worth re-forming.
+const mostTreatments = 2
+
+// coldBelow is the temperature in °C below which ESR reads 20 to 50 % high.
+const coldBelow = 10
+
+// oneSided95 is the normal quantile at which a reading lies beyond a bound with probability 0.95.
+const oneSided95 = 1.645
+
+// view is one section's findings, sorted for the rules across readings.
+type view struct {
+	part                                screening.Part
+	unit                                unit
+	capacitance, loss, leakage, ceiling []*screening.Finding
+}
+
+// adjust applies the rules that look across readings, section by section.
+func adjust(part screening.Part, findings []screening.Finding) ([]screening.Finding, []screening.Reason) {
+	us, err := units(part.Claim)
+	if err != nil {
+		return findings, nil // the limits have said so already
+	}
+	var reasons []screening.Reason
+	for _, u := range us {
+		v := viewOf(part, u, findings)
+		reasons = append(reasons, v.confirm()...)
+		reasons = append(reasons, v.confirmDry()...)
+		reasons = append(reasons, v.forgive()...)
+		reasons = append(reasons, v.suspectLeakage()...)
+		reasons = append(reasons, v.giveUp()...)
+	}
+	if t, ok := part.Ambient(); ok && t.Value < coldBelow {
+		reasons = append(reasons, screening.Reason{
+			Code: codeCold, Of: screening.ESR.Name,
+			Text: fmt.Sprintf("at %g °C ESR reads high by 2 to 5 %% per kelvin below 20 °C: let the part warm up and measure again if it fails", t.Value),
+		})
+	}
+	return findings, reasons
+}
+
+func viewOf(part screening.Part, u unit, findings []screening.Finding) view {
+	v := view{part: part, unit: u}
+	for i := range findings {
+		f := &findings[i]
+		if f.Limit.Section != u.section {
+			continue
+		}
+		switch f.Limit.Criterion {
+		case criterionCapacitance:
+			v.capacitance = append(v.capacitance, f)
+		case criterionLoss:
+			v.loss = append(v.loss, f)
+		case criterionLeakage:
+			v.leakage = append(v.leakage, f)
+		case criterionCeiling:
+			v.ceiling = append(v.ceiling, f)
+		}
+	}
+	return v
+}
+
+func hasOutcome(findings []*screening.Finding, outcome screening.Outcome) bool {
+	for _, f := range findings {
+		if f.Outcome == outcome {
+			return true
+		}
+	}
+	return false
+}
+
+// readsHigh reports whether the capacitance reads above the top of its tolerance, and the reading.
+func (v *view) readsHigh() (*screening.Reading, bool) {
+	for _, f := range v.capacitance {
+		e := f.Evidence()
+		if e != nil && e.Sense != quantity.AtMost && e.Value > f.Limit.High {
+			return e, true
+		}
+	}
+	return nil, false
+}
+
+// confirm turns a failure against an unpublished figure into one that counts where a published figure fails too: a leakage above the
+// vintage or snap-in limit that is above what data sheets allow a new part as well. Where none does, it says so.
+func (v *view) confirm() []screening.Reason {
+	var reasons []screening.Reason
+	for _, f := range slices.Concat(v.leakage, v.ceiling) {
+		e := f.Evidence()
+		if !f.Unconfirmed || e == nil {
+			continue
+		}
+		after, _ := f.Limit.At.Get(screening.After)
+		published, ok := generalLeakage(v.unit, after)
+		if !ok || f.Limit.Criterion == criterionCeiling || e.Value-oneSided95*e.U <= published {
+			reasons = append(reasons, screening.Reason{Code: codeUnconfirmed, Of: f.Limit.On, Text: fmt.Sprintf(
+				"leakage reads %s, above the %s limit of %s; that figure is %s and rejects nothing by itself",
+				quantity.Format(e.Value, quantity.Ampere, 3), f.Limit.Set, quantity.Format(f.Limit.High, quantity.Ampere, 3), f.Limit.Source.Status)})
+			continue
+		}
+		f.Outcome, f.Unconfirmed, f.Why = screening.Fail, false, ""
+		reasons = append(reasons, screening.Reason{Code: codeConfirmed, Of: f.Limit.On, Text: fmt.Sprintf(
+			"the %s limit is %s, but the leakage is also above the %s that published data sheets allow a new part", f.Limit.Set,
+			f.Limit.Source.Status, quantity.Format(published, quantity.Ampere, 3))})
+	}
+	return reasons
+}
+
+// confirmDry: a capacitance below 0.70 of nominal fails a published figure, even where the tolerance is an assumed one from memory.
+func (v *view) confirmDry() []screening.Reason {
+	kept := named("serviceable-capacitance")
+	for _, f := range v.capacitance {
+		if !f.Unconfirmed || f.Side != screening.Below || f.Limit.Grade != screening.Serviceable {
+			continue
+		}
+		f.Outcome, f.Unconfirmed, f.Why = screening.Fail, false, ""
+		f.Limit.Source = kept.source
+		return []screening.Reason{{Code: codeConfirmed, Of: f.Limit.On, Text: fmt.Sprintf(
+			"only the assumed tolerance is from memory; the lower bound of %.2f of nominal is published", kept.value)}}
+	}
+	return nil
+}
+
+// forgive keeps a loss that fails the ladder in use from rejecting while some published series would still allow it.
+func (v *view) forgive() []screening.Reason {
+	if !hasOutcome(v.loss, screening.Fail) {
+		return nil
+	}
+	laxest := laxestTanDelta(v.part.Claim, v.unit) * named("serviceable-loss").value
+	forgiven := false
+	for _, f := range v.loss {
+		e := f.Evidence()
+		if f.Outcome != screening.Fail || e == nil || f.Limit.Grade != screening.Serviceable {
+			continue
+		}
+		hertz, _ := f.Limit.At.Get(screening.Frequency)
+		bound := laxest
+		if f.Limit.On == screening.ESR.Name {
+			bound = esrOf(laxest, hertz, v.unit.farad)
+		}
+		if e.Value-oneSided95*e.U > bound {
+			continue
+		}
+		f.Outcome, f.Unconfirmed, forgiven = screening.Close, true, true
+		f.Why = "too much for an ordinary series, but some series print a limit that allows it: look up this part's own"
+	}
+	if !forgiven {
+		return nil
+	}
+	return []screening.Reason{{Code: codeSeriesUnknown, Of: screening.ESR.Name, Text: fmt.Sprintf(
+		"the losses are out for an ordinary series, but up to tan δ %.2g would be serviceable in the laxest series known", laxest)}}
+}
+
+// suspectLeakage: a capacitance above its tolerance is a leakage suspicion. Leakage then decides: unmeasured it is required, passed it
+// leaves the reading unexplained, failed it is to be re-formed, but on parts of the electrolyte fault's years that is not to be trusted.
+func (v *view) suspectLeakage() []screening.Reason {
+	reading, high := v.readsHigh()
+	if !high {
+		return nil
+	}
+	for _, f := range v.leakage {
+		f.Need = screening.Required
+		if f.Outcome == screening.Missing && f.Reading == nil {
+			f.Why = "capacitance reads high, so leakage decides"
+		}
+	}
+	text := fmt.Sprintf("capacitance reads %s, above its tolerance: a leaky part reads high, so leakage at %s decides",
+		microfarads(reading.Value), quantity.Format(v.unit.volts, quantity.Volt, 0))
+	year, _ := v.part.Claim.Year()
+	failed := hasOutcome(v.leakage, screening.Fail)
+	switch {
+	case failed && year >= faultFrom && year <= faultTo:
+		why := fmt.Sprintf("high capacitance with high leakage on a part of %d is how the electrolyte fault of %d to %d shows (from memory): "+
+			"re-forming does not last; replace it or prove its maker's series sound", year, faultFrom, faultTo)
+		v.holdOpen(why)
+		return []screening.Reason{{Code: codeFaultEra, Text: why, Of: screening.Leakage.Name}}
+	case hasOutcome(v.leakage, screening.Pass) && !failed:
+		why := "capacitance reads high although leakage at rated voltage passes: measure again at 120 Hz with another meter, and check the marking"
+		for _, f := range v.capacitance {
+			if f.Outcome == screening.Fail {
+				f.Outcome, f.Why = screening.Close, why
+			}
+		}
+		text = why
+	case v.part.Treated >= mostTreatments && !failed:
+		for _, f := range v.capacitance {
+			if f.Outcome == screening.Fail {
+				f.Outcome, f.Why = screening.Close, "reads high after re-forming; leakage at rated voltage decides"
+			}
+		}
+	}
+	return []screening.Reason{{Code: codeLeakageSuspected, Text: text, Of: screening.Capacitance.Name}}
+}
+
+// holdOpen makes every failure of capacitance and leakage undecided, for a stated reason.
+func (v *view) holdOpen(why string) {
+	for _, group := range [][]*screening.Finding{v.capacitance, v.leakage} {
+		for _, f := range group {
+			if f.Outcome == screening.Fail {
+				f.Outcome, f.Why = screening.Close, why
+			}
+		}
+	}
+}
+
+// giveUp takes re-forming away from a part that was re-formed twice and still leaks.
+func (v *view) giveUp() []screening.Reason {
+	if v.part.Treated < mostTreatments || !hasOutcome(v.leakage, screening.Fail) {
+		return nil
+	}
+	for _, group := range [][]*screening.Finding{v.capacitance, v.leakage} {
+		for _, f := range group {
+			f.Limit.TreatHigh = ""
+		}
+	}
+	return []screening.Reason{{Code: screening.CodeTreatedBefore, Of: screening.Leakage.Name, Text: fmt.Sprintf(
+		"re-formed %d times and still leaking: the oxide does not come back", v.part.Treated)}}
+}
+
+// lesser offers lower voltages: only for leakage, only at a voltage at which leakage was read, and only to a part whose other readings do
+// not fail its own claim. Capacitance and loss are never answered by a lesser claim.
+func lesser(part screening.Part, findings []screening.Finding) []screening.Lesser {
+	us, err := units(part.Claim)
+	if err != nil {
+		return nil
+	}
+	var all []screening.Lesser
+	for _, u := range us {
+		v := viewOf(part, u, findings)
+		if !hasOutcome(v.leakage, screening.Fail) {
+			continue
+		}
+		if spoilt(v.capacitance) || spoilt(v.loss) {
+			return nil
+		}
+		for _, volts := range lowerVoltages(part, u) {
+			all = append(all, lowerVoltage(part.Claim, u, volts))
+		}
+	}
+	return all
+}
+
+// spoilt reports whether a criterion fails or is open to doubt at the grade serviceable, so that no lower voltage may hide it.
+func spoilt(findings []*screening.Finding) bool {
+	pass, doubt := false, false
+	for _, f := range findings {
+		if f.Limit.Grade == screening.WithinSpec {
+			continue
+		}
+		switch f.Outcome {
+		case screening.Fail:
+			return true
+		case screening.Close:
+			doubt = true
+		case screening.Pass:
+			pass = true
+		}
+	}
+	return doubt && !pass
+}
+
+// lowerVoltages lists the voltages below the rated one at which leakage of a section was read, highest first; a reading within 3 % of a
+// printed rating counts for that rating.
+func lowerVoltages(part screening.Part, u unit) []float64 {
+	var volts []float64
+	for _, r := range part.Readings {
+		x, ok := r.At.Get(screening.Voltage)
+		if r.Of != screening.Leakage.Name || r.Section != u.section || !ok || x < leastVolts || x >= u.volts*nearlyAtRated[screening.Voltage].Low {
+			continue
+		}
+		for _, v := range ladderVolts {
+			if math.Abs(x/v-1) <= 0.03 {
+				x = v
+			}
+		}
+		volts = insertDescending(volts, x)
+	}
+	return volts
+}
+
+func insertDescending(list []float64, x float64) []float64 {
+	i := 0
+	for i < len(list) && list[i] > x {
+		i++
+	}
+	if i < len(list) && list[i] == x {
+		return list
+	}
+	list = append(list, 0)
+	copy(list[i+1:], list[i:])
+	list[i] = x
+	return list
+}
+
+func lowerVoltage(claim screening.Claim, u unit, volts float64) screening.Lesser {
+	r, _ := claim.Rating(screening.RatedVoltage.Name, u.section)
+	r.Nominal, r.Low, r.High, r.Typed = volts, volts, volts, ""
+	r.Source = screening.Source{Document: "leakage read at this voltage", Status: screening.House}
+	return screening.Lesser{
+		Claim: claim.WithRating(r), Answers: criterionLeakage, Source: r.Source,
+		Text: fmt.Sprintf("for use up to %g V instead of %g V, on the leakage read there", volts, u.volts),
+	}
+}

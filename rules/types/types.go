@@ -1,0 +1,259 @@
+// Package types is the table of type numbers: what a part's name promises. Its rows stand in CSV files whose headers are the command
+// line's names, each with its source and status; this package reads them and finds the row that a marking means.
+//
+// A type number is looked up, never guessed from its grammar: "2N" says three terminals and nothing else, AD811 has the shape of a
+// germanium power transistor and is an amplifier. What the table does not hold is unknown.
+package types
+
+import (
+	"math"
+	"slices"
+	"strings"
+	"sync"
+	"unicode"
+
+	"goodbin/screening"
+)
+
+// The kinds of part that the table serves.
+const (
+	Bipolar screening.Kind = "bipolar"
+	Diode   screening.Kind = "diode"
+	Zener   screening.Kind = "zener"
+)
+
+// Version names the state of the tables; a verdict under another version is stale.
+func Version() string { return "types 1" }
+
+// Row is what one type number promises.
+type Row struct {
+	Type  string // as the sheet prints it: "BC547", "BZX79-C5V1"
+	Group string // the gain group that the word looked up ended in; "" for none
+
+	// Ratings are the numbers by their command-line names, each with its own source. A rating that a sheet states at several conditions
+	// stands there several times, the test condition first.
+	//
+	// Bipolar: vceo vcbo vebo ic-max ptot hfe ft icbo. Diode: vrrm if-av ifsm vf ir trr. Zener: vz (nominal with its printed bounds, at
+	// current izt), zz (at izt, then at the knee current), ir, izm, ptot.
+	Ratings []screening.Rating
+	// Traits are type, and where the sheet says so polarity, material, technology, case, pinout, group.
+	Traits []screening.Trait
+	// Points are further figures that the sheet prints: gain at other currents, open-base leakage, base-emitter voltage.
+	Points []screening.Rating
+	// Groups are the gain groups of this type, lowest first.
+	Groups []Group
+
+	Darlington bool
+	// LeakageAs says how the sheet states the collector cut-off current: "icbo" (emitter open), "icex" (base reverse-biased), or "".
+	LeakageAs string
+	// TempCoLow and TempCoHigh bound the relative change of a Zener's voltage per kelvin; NaN where the sheet was not kept.
+	TempCoLow, TempCoHigh float64
+
+	Note   string
+	Source screening.Source // of the row as a whole; single figures may differ
+}
+
+// Group is one gain group of one type. The same letter means another range on another type.
+type Group struct {
+	Name  string // as printed, without its hyphen: "B", "25", "GR"
+	Alias string // another print of the same group; "" for none
+	Gain  screening.Rating
+	// Points are the group's own minima at other currents.
+	Points []screening.Rating
+	Note   string
+}
+
+// Rating returns the first rating of a name, the one at the sheet's test condition.
+func (r Row) Rating(of screening.Characteristic) (screening.Rating, bool) {
+	i := slices.IndexFunc(r.Ratings, func(x screening.Rating) bool { return x.Of == of })
+	if i < 0 {
+		return screening.Rating{}, false
+	}
+	return r.Ratings[i], true
+}
+
+// Trait returns the text of a trait, "" where the row has none.
+func (r Row) Trait(name string) string { return screening.Claim{Traits: r.Traits}.Trait(name) }
+
+// FindGroup finds one of the type's gain groups by its name or alias; case and a leading hyphen do not count.
+func (r Row) FindGroup(name string) (Group, bool) {
+	want := fold(name)
+	for _, g := range r.Groups {
+		if want != "" && (want == fold(g.Name) || want == fold(g.Alias)) {
+			return g, true
+		}
+	}
+	return Group{}, false
+}
+
+type table struct {
+	rows   map[screening.Kind][]Row
+	byName map[screening.Kind]map[string]int // folded name or alias to index in rows
+}
+
+// load reads the embedded tables once; a test holds them to load.
+var load = sync.OnceValue(func() table {
+	t, err := read()
+	if err != nil {
+		panic("types: embedded tables: " + err.Error())
+	}
+	return t
+})
+
+// Names lists every type number of a kind in the order of the table.
+func Names(kind screening.Kind) []string {
+	rows := load().rows[kind]
+	names := make([]string, len(rows))
+	for i, r := range rows {
+		names[i] = r.Type
+	}
+	return names
+}
+
+// GroupNamed reports whether any type has a gain group of this name, and how it is printed: "-25" and "25" are "25", "gr" is "GR".
+func GroupNamed(name string) (string, bool) {
+	for _, r := range load().rows[Bipolar] {
+		if g, ok := r.FindGroup(name); ok {
+			return g.Name, true
+		}
+	}
+	return "", false
+}
+
+// Lookup finds the row that a marking means: the type number as printed, whatever its case, spaces and hyphens, alone or followed by one
+// of that type's gain groups ("bc547b", "BC337-25"); a Zener's tolerance letter may differ from the table's where the maker's rule for it
+// is printed ("1N4733C"). The longest type that matches wins. Anything else is unknown.
+//
+// The row's slices are the table's own: they are there to be read.
+func Lookup(kind screening.Kind, word string) (Row, bool) {
+	t := load()
+	folded := fold(word)
+	if folded == "" {
+		return Row{}, false
+	}
+	if i, ok := t.byName[kind][folded]; ok {
+		return t.rows[kind][i], true
+	}
+	for n := len(folded) - 1; n >= shortestType; n-- {
+		i, ok := t.byName[kind][folded[:n]]
+		if !ok {
+			continue
+		}
+		if g, ok := t.rows[kind][i].FindGroup(folded[n:]); ok {
+			row := t.rows[kind][i]
+			row.Group = g.Name
+			row.Traits = append(slices.Clip(row.Traits), screening.Trait{Name: screening.TraitGroup, Text: g.Name})
+			return row, true
+		}
+	}
+	if kind == Zener {
+		return t.otherTolerance(folded)
+	}
+	return Row{}, false
+}
+
+// shortestType is the length of the shortest name that may carry a suffix ("C945" counts; "OC71").
+const shortestType = 4
+
+// fold brings a name to the form in which names are compared: capitals, without spaces and hyphens of any sort.
+func fold(name string) string {
+	if isFolded(name) {
+		return name
+	}
+	return strings.Map(func(r rune) rune {
+		if unicode.IsSpace(r) || unicode.Is(unicode.Pd, r) {
+			return -1
+		}
+		return unicode.ToUpper(r)
+	}, name)
+}
+
+func isFolded(name string) bool {
+	for i := range len(name) {
+		if c := name[i]; (c < 'A' || c > 'Z') && (c < '0' || c > '9') {
+			return false
+		}
+	}
+	return true
+}
+
+// otherTolerance serves the tolerance letters for which a sheet prints a rule rather than a table. The bounds are the nominal and the
+// printed tolerance; everything else is the row's.
+func (t table) otherTolerance(folded string) (Row, bool) {
+	for _, s := range toleranceSuffixes {
+		base, ok := s.base(folded)
+		if !ok {
+			continue
+		}
+		i, ok := t.byName[Zener][fold(base)]
+		if !ok {
+			continue
+		}
+		row := t.rows[Zener][i]
+		row.Ratings = slices.Clone(row.Ratings)
+		row.Type = s.name(row.Type)
+		row.Traits = screening.Claim{Traits: row.Traits}.WithTrait(screening.TraitType, row.Type).Traits
+		for j, r := range row.Ratings {
+			if r.Of == "vz" {
+				r.Low, r.High = r.Nominal*(1-s.tolerance), r.Nominal*(1+s.tolerance)
+				r.Source = s.source
+				row.Ratings[j] = r
+			}
+		}
+		row.Note = s.source.Clause
+		return row, true
+	}
+	return Row{}, false
+}
+
+// toleranceSuffix is one letter of a Zener family and what it promises.
+type toleranceSuffix struct {
+	prefix    string // of the family, folded
+	letter    string // "" for none
+	after     bool   // the letter ends the number (1N4733C) rather than standing before the voltage (BZX79-B5V1)
+	tolerance float64
+	source    screening.Source
+}
+
+var toleranceSuffixes = []toleranceSuffix{
+	{"1N47", "", true, 0.10, oneN47("no suffix is ±10 %")},
+	{"1N47", "C", true, 0.02, oneN47("suffix C is ±2 %")},
+	{"1N47", "D", true, 0.01, oneN47("suffix D is ±1 %")},
+	// The printed tables of these letters are rounded, as that of C is, so the bounds are near and not the sheet's own.
+	{"BZX79", "B", false, 0.02, bzx("letter B is ±2 %; the sheet rounds its table")},
+	{"BZX79", "F", false, 0.03, bzx("letter F is ±3 %; the sheet rounds its table")},
+	{"BZX55", "B", false, 0.02, bzx("letter B is ±2 %; the sheet rounds its table")},
+}
+
+func oneN47(clause string) screening.Source {
+	return screening.Source{Document: "Fairchild 1N4728A-1N4764A data sheet", Clause: clause, Status: screening.Published}
+}
+
+func bzx(clause string) screening.Source {
+	return screening.Source{Document: "BZX79 and BZX55 data sheets", Clause: clause, Status: screening.Derived}
+}
+
+// base returns the table's name for a folded word that carries this suffix: suffix A after a number, letter C before a voltage.
+func (s toleranceSuffix) base(folded string) (string, bool) {
+	rest, ok := strings.CutPrefix(folded, s.prefix)
+	if !ok {
+		return "", false
+	}
+	if s.after {
+		rest, ok = strings.CutSuffix(rest, s.letter)
+		return s.prefix + rest + "A", ok && rest != "" && rest[len(rest)-1] >= '0' && rest[len(rest)-1] <= '9'
+	}
+	rest, ok = strings.CutPrefix(rest, s.letter)
+	return s.prefix + "C" + rest, ok
+}
+
+// name turns the table's type into the suffixed one.
+func (s toleranceSuffix) name(tabled string) string {
+	if s.after {
+		return strings.TrimSuffix(tabled, "A") + s.letter
+	}
+	return strings.Replace(tabled, "-C", "-"+s.letter, 1)
+}
+
+// notGiven is an empty cell of a table.
+var notGiven = math.NaN()
