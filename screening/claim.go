@@ -179,11 +179,15 @@ func (c Claim) WithTrait(name, text string) Claim {
 // IsZero reports whether nothing is claimed.
 func (c Claim) IsZero() bool { return len(c.Ratings) == 0 && len(c.Traits) == 0 }
 
-// String prints the claim in one line, numbers first: "2200 µF 35 V ±20 % 1974".
+// String prints what the part itself claims in one line, numbers first: "2200 µF 35 V ±20 % 1974". Ratings that a table supplied are left
+// out.
 func (c Claim) String() string {
 	var words []string
 	for i := 0; i < len(c.Ratings); i++ {
 		r := c.Ratings[i]
+		if r.Typed == "" && r.Source.Status != NoStatus {
+			continue
+		}
 		if r.Section == "" {
 			words = append(words, r.String())
 			continue

@@ -72,13 +72,7 @@ func (j *judging) find(part Part, l Limit) Finding {
 // tryConversion brings a reading to the limit's condition by the rulebook's rule. Where no rule applies the finding stays missing and says
 // which condition is off.
 func (j *judging) tryConversion(part Part, f *Finding, fit Fit, r *Reading) {
-	v, absent, _ := fit.Misfit(&r.At, &f.Limit.At)
-	want, _ := f.Limit.At.Get(v)
-	stated := quantity.Format(want, v.Unit(), 0)
-	why := "taken at " + r.At.String() + ", the limit holds at " + f.Limit.At.String()
-	if absent {
-		why = "the " + v.String() + " of the reading is not stated; the limit holds at " + stated
-	}
+	why := ""
 	if j.book.Convert != nil {
 		c := j.book.Convert(part, *r, f.Limit)
 		if c.OK {
@@ -92,13 +86,24 @@ func (j *judging) tryConversion(part Part, f *Finding, fit Fit, r *Reading) {
 			*f = held
 			return
 		}
-		if c.Why != "" {
-			why = c.Why
-		}
+		why = c.Why
 	}
 	if f.Why == "" {
+		if why == "" {
+			why = misfitText(fit, r, &f.Limit)
+		}
 		f.Reading, f.Why = r, why
 	}
+}
+
+// misfitText says which condition of a reading is off, or not stated.
+func misfitText(fit Fit, r *Reading, l *Limit) string {
+	v, absent, _ := fit.Misfit(&r.At, &l.At)
+	if absent {
+		want, _ := l.At.Get(v)
+		return "the " + v.String() + " of the reading is not stated; the limit holds at " + quantity.Format(want, v.Unit(), 0)
+	}
+	return "taken at " + r.At.String() + ", the limit holds at " + l.At.String()
 }
 
 // hold decides one limit by one reading that fits it.

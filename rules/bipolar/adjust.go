@@ -88,6 +88,10 @@ func (p *promise) adjustGain(part screening.Part, f *screening.Finding) string {
 			100*share, 100*validGain))
 		return ""
 	}
+	if low, ok := p.betweenCurrents(f); ok {
+		unanswer(f, "between the currents of the sheet a gain may be as low as at either, "+quantity.Format(low, quantity.One, 0))
+		return ""
+	}
 	if f.Outcome == screening.Fail && informative(&f.Limit) && (p.power() || p.darlington) {
 		unanswer(f, "a power type or a Darlington can read no gain at a small current: measure at the sheet's")
 	}
@@ -98,6 +102,48 @@ func (p *promise) adjustGain(part screening.Part, f *screening.Finding) string {
 		return p.informativeNote(part)
 	}
 	return ""
+}
+
+// betweenCurrents reports whether a gain that is too low for one current of the sheet, but was not taken at it, is still as high as the
+// sheet asks around the current it was taken at. The minima of a sheet rise and fall with current (2N3904: 60 at 50 mA, 30 at 100 mA).
+func (p *promise) betweenCurrents(f *screening.Finding) (low float64, yes bool) {
+	if f.Limit.Criterion != CriterionGain || f.Side != screening.Below || f.Outcome != screening.Fail && f.Outcome != screening.Close {
+		return 0, false
+	}
+	ic, ok := f.Reading.At.Get(screening.IC)
+	if !ok || !f.Limit.At.Has(screening.IC) {
+		return 0, false
+	}
+	low = p.lowestAround(ic)
+	return low, low < f.Limit.Low && f.Reading.Value+coverage*f.Reading.U >= low
+}
+
+// coverage is the normal quantile of 0.95.
+const coverage = 1.645
+
+// lowestAround returns the least gain that the sheet asks at a collector current: what it prints there, else the lower of its neighbours.
+func (p *promise) lowestAround(ic float64) float64 {
+	var below, above, lowBelow, lowAbove float64 = 0, inf, inf, inf
+	consider := func(r *screening.Rating) {
+		at, ok := r.At.Get(screening.IC)
+		if r.Of != HFE.Name || !ok {
+			return
+		}
+		if at <= ic*sameValue && at > below {
+			below, lowBelow = at, r.Low
+		}
+		if at >= ic/sameValue && at < above {
+			above, lowAbove = at, r.Low
+		}
+	}
+	if promised, ok := p.claim.Rating(HFE.Name, ""); ok {
+		consider(&promised)
+	}
+	points := p.gainPoints()
+	for i := range points {
+		consider(&points[i])
+	}
+	return min(lowBelow, lowAbove)
 }
 
 // smallBaseCurrent says why a power Darlington seems to have no gain.

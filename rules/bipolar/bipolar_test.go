@@ -252,6 +252,24 @@ func verdictCases() []verdictCase {
 			verdict:  screening.Undecided, says: "measure at the sheet's",
 		},
 		{
+			name:     "2N3904 with 40 at 100 mA, where its sheet asks 30: not held to the 60 of 50 mA",
+			claim:    words("type=2N3904"),
+			readings: []screening.Reading{read(VBE, 0.66, none), read(HFE, 40, at(ic, 0.1, vce, 1.0)), atMost(read(ICEO, 1e-6, at(vce, 20.0)))},
+			verdict:  screening.Accept, grade: screening.WithinSpec,
+		},
+		{
+			name:     "2N3904 with 80 at 20 mA, between 100 at 10 mA and 60 at 50 mA",
+			claim:    words("type=2N3904"),
+			readings: []screening.Reading{read(VBE, 0.66, none), read(HFE, 80, at(ic, 20e-3, vce, 1.0)), atMost(read(ICEO, 1e-6, at(vce, 20.0)))},
+			verdict:  screening.Accept, grade: screening.Serviceable,
+		},
+		{
+			name:     "2N3904 with 30 at 20 mA lies below both",
+			claim:    words("type=2N3904"),
+			readings: []screening.Reading{read(VBE, 0.66, none), read(HFE, 30, at(ic, 20e-3, vce, 1.0)), atMost(read(ICEO, 1e-6, at(vce, 20.0)))},
+			verdict:  screening.Reject,
+		},
+		{
 			name:     "dead 2N3904 on a tester without a stated current",
 			claim:    words("type=2N3904"),
 			readings: []screening.Reading{read(VBE, 0.66, none), read(HFE, 0.1, none), atMost(read(ICEO, 1e-6, at(vce, 20.0)))},

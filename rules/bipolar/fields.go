@@ -105,12 +105,12 @@ func claims() []screening.Field {
 var (
 	gainFit    = screening.Fit{screening.IC: {Low: 0.5, High: 2}, screening.VCE: {Low: 0.5, High: 10}, screening.VCB: screening.Any}
 	vbeFit     = screening.Fit{screening.IC: {Low: 0.05, High: 20}, screening.VCE: screening.Any}
-	leakageFit = screening.Fit{screening.VCE: {Low: leastVoltage, High: sameVoltage}, screening.VCB: {Low: 0.5, High: sameVoltage}}
+	leakageFit = screening.Fit{screening.VCE: {Low: leastVoltage, High: sameValue}, screening.VCB: {Low: 0.5, High: sameValue}}
 )
 
 const (
 	leastVoltage = 0.15 // of the limit's voltage: 3 V for 20 V, 9 V for 60 V
-	sameVoltage  = 1.02
+	sameValue    = 1.02 // two voltages or currents are the same within 2 %
 )
 
 // bench lists what is measured, quick readings that could reject first.

@@ -4,6 +4,7 @@ import (
 	"encoding/csv"
 	"math"
 	"os"
+	"slices"
 	"strconv"
 	"strings"
 	"testing"
@@ -170,4 +171,44 @@ func BenchmarkJudge(b *testing.B) {
 		findings = len(j.Findings)
 	}
 	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(findings), "ns/finding")
+}
+
+func TestUntested(t *testing.T) {
+	for _, tt := range []struct {
+		name     string
+		claim    screening.Claim
+		readings []screening.Reading
+		want     []string
+	}{
+		{
+			"gain at the sheet's current, leakage at 20 V", words("type=2N3904"),
+			[]screening.Reading{read(HFE, 180, at(ic, 10e-3, vce, 1.0)), atMost(read(ICEO, 1e-6, at(vce, 20.0)))},
+			[]string{"collector to emitter not tested above 20 V (rated 40 V)"},
+		},
+		{
+			"a gain that fails was tested", words("type=BC547C"),
+			[]screening.Reading{read(HFE, 300, at(ic, 2e-3, vce, 5.0))},
+			nil,
+		},
+		{
+			"gain elsewhere", words("type=2N2222"),
+			[]screening.Reading{read(HFE, 70, at(ic, 1e-3, vce, 5.0))},
+			[]string{"gain not tested at IC 150 mA, VCE 10 V"},
+		},
+		{
+			"blocks to its rating", words("type=2N3904"), []screening.Reading{atLeast(read(screening.VBR, 40, none))}, nil,
+		},
+		{
+			"no rating known", words("polarity=npn"),
+			[]screening.Reading{atMost(read(ICEO, 1e-6, at(vce, 9.0)))},
+			[]string{"collector to emitter not tested above 9 V (no rating known)"},
+		},
+		{
+			"leakage that fails proves no blocking", words("type=2N3904"), []screening.Reading{read(ICEO, 1e-3, at(vce, 20.0))}, nil,
+		},
+	} {
+		if got := judge(t, tt.claim, tt.readings...).Untested; !slices.Equal(got, tt.want) {
+			t.Errorf("%s: %q, want %q", tt.name, got, tt.want)
+		}
+	}
 }

@@ -46,21 +46,20 @@ func provenVoltage(part screening.Part, findings []screening.Finding) float64 {
 	return proven
 }
 
-// gainOnlyInformative reports whether gain was answered by the weak bound alone.
+// gainOnlyInformative reports whether gain was answered by the weak bound alone: no reading was taken at a current of the sheet.
 func gainOnlyInformative(findings []screening.Finding) bool {
-	weak, sheet := false, false
+	weak := false
 	for i := range findings {
 		f := &findings[i]
-		if f.Limit.Criterion != CriterionGain || f.Outcome != screening.Pass {
+		if f.Limit.Criterion != CriterionGain || f.Outcome == screening.Missing {
 			continue
 		}
-		if informative(&f.Limit) || f.Limit.Source == figures()["gain-lamp"].source {
-			weak = true
-		} else {
-			sheet = true
+		if !informative(&f.Limit) && f.Limit.Source != figures()["gain-lamp"].source {
+			return false
 		}
+		weak = true
 	}
-	return weak && !sheet
+	return weak
 }
 
 // From these values on a caution is given: the voltage at which a supply can hurt, and the power at which a small part warms in seconds.

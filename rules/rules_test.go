@@ -1,0 +1,197 @@
+package rules_test
+
+import (
+	"math"
+	"slices"
+	"strings"
+	"testing"
+
+	"goodbin/rules"
+	"goodbin/screening"
+	"goodbin/screening/entry"
+)
+
+// samples are claims of every kind, as typed, that together reach every table.
+var samples = map[screening.Kind][]string{
+	"electrolytic": {"2200uF 35V M", "47uF 450V can 1974 22x30", "10000uF 63V snap-in", "8+8/450 1955", "100uF 100V axial T", "22uF 63V", "1uF 525V", "10uF 4V smd"},
+	"diode":        {"type=1N4148", "type=1N4007", "type=1N5819", "type=1N34A"},
+	"zener":        {"type=BZX79-C5V1", "type=1N4733A", "type=BZX55-C12"},
+	"bipolar":      {"type=2N3904", "type=BC547 group=B", "type=AC128", "type=TIP120", "npn", "pnp material=germanium"},
+	"resistor":     {"4k7 5%", "100R", "1M 1%"},
+}
+
+func TestEveryRulebookIsWhole(t *testing.T) {
+	for _, b := range rules.All() {
+		t.Run(string(b.Kind), func(t *testing.T) {
+			if b.Kind == "" || b.Label == "" || b.Tables == "" || b.Limits == nil {
+				t.Errorf("kind %q, label %q, tables %q, limits %v", b.Kind, b.Label, b.Tables, b.Limits != nil)
+			}
+			for group, fields := range map[string][]screening.Field{"claims": b.Claims, "bench": b.Bench} {
+				if len(fields) == 0 {
+					t.Errorf("no %s", group)
+				}
+				names := map[screening.Characteristic]bool{}
+				for _, f := range fields {
+					if f.Name == "" || f.Label == "" || f.Help == "" || f.Example == "" || !f.Trait && f.Symbol == "" {
+						t.Errorf("%s: field %q lacks a label, symbol, help or example: %+v", group, f.Name, f.Definition)
+					}
+					if names[f.Name] {
+						t.Errorf("%s: %q stands twice", group, f.Name)
+					}
+					names[f.Name] = true
+				}
+			}
+		})
+	}
+}
+
+func TestEveryKindIsBarredFromTheMains(t *testing.T) {
+	for _, b := range rules.All() {
+		i := slices.IndexFunc(b.Look, func(c screening.Check) bool { return c.Name == "mains-or-cracked" })
+		if i < 0 || b.Look[i].Verdict != screening.Barred || !slices.Contains(b.Look[i].Words, "mains") || !slices.Contains(b.Look[i].Words, "cracked") {
+			t.Errorf("%s: no stop for mains and cracks", b.Kind)
+		}
+		for _, c := range b.Look {
+			if c.Question == "" || len(c.Words) == 0 || c.Verdict != screening.NoVerdict && (c.Reason == "" || c.Do == "" || c.Source.Status == screening.NoStatus) {
+				t.Errorf("%s: check %q lacks a question, words, or of a stop its reason, what to do, or status", b.Kind, c.Name)
+			}
+		}
+	}
+}
+
+func TestACharacteristicMeansTheSameEverywhere(t *testing.T) {
+	type home struct {
+		kind screening.Kind
+		def  screening.Definition
+	}
+	first := map[screening.Characteristic]home{}
+	for _, b := range rules.All() {
+		for _, f := range slices.Concat(b.Claims, b.Bench) {
+			h, known := first[f.Name]
+			switch {
+			case !known:
+				first[f.Name] = home{b.Kind, f.Definition}
+			case f.Trait && h.def.Label != f.Label, !f.Trait && h.def != f.Definition:
+				t.Errorf("%q is %+v in %s and %+v in %s", f.Name, h.def, h.kind, f.Definition, b.Kind)
+			}
+		}
+	}
+}
+
+func TestEveryExampleReads(t *testing.T) {
+	for _, b := range rules.All() {
+		for _, f := range b.Claims {
+			words := strings.Fields(f.Example)
+			if _, err := entry.Words(b, words); err != nil {
+				if _, err := entry.Words(b, []string{string(f.Name) + "=" + f.Example}); err != nil {
+					if _, err := entry.Words(b, []string{"rated:" + string(f.Name) + "=" + f.Example}); err != nil {
+						t.Errorf("%s %s: example %q: %v", b.Kind, f.Name, f.Example, err)
+					}
+				}
+			}
+		}
+		for _, f := range b.Bench {
+			word := f.Example
+			if !strings.Contains(word, "=") {
+				word = string(f.Name) + "=" + word
+			}
+			p, err := entry.Words(b, []string{word})
+			if err != nil {
+				t.Errorf("%s %s: example %q: %v", b.Kind, f.Name, f.Example, err)
+				continue
+			}
+			if len(p.Readings) == 0 || p.Readings[0].Of != f.Name {
+				t.Errorf("%s %s: example %q is no reading of it: %+v", b.Kind, f.Name, f.Example, p.Readings)
+			}
+		}
+	}
+}
+
+func TestEveryLimitHasItsSource(t *testing.T) {
+	for _, b := range rules.All() {
+		if len(samples[b.Kind]) == 0 {
+			t.Errorf("%s has no sample claims", b.Kind)
+		}
+		for _, text := range samples[b.Kind] {
+			t.Run(string(b.Kind)+" "+text, func(t *testing.T) {
+				p, err := entry.Words(b, strings.Fields(text))
+				if err != nil {
+					t.Fatal(err)
+				}
+				j, err := screening.Judge(b, screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
+				if err != nil {
+					t.Fatal(err)
+				}
+				limits, err := b.Limits(j.Claim)
+				if err != nil || len(limits) == 0 {
+					t.Fatalf("%d limits, %v", len(limits), err)
+				}
+				for _, l := range limits {
+					checkLimit(t, b, j.Part, l)
+				}
+				if !slices.ContainsFunc(limits, func(l screening.Limit) bool { return l.InUse }) {
+					t.Error("no limit is in use")
+				}
+			})
+		}
+	}
+}
+
+func checkLimit(t *testing.T, b *screening.Rulebook, part screening.Part, l screening.Limit) {
+	t.Helper()
+	name := string(l.On) + " " + string(l.Set) + " " + l.Grade.String()
+	f, ok := b.Find(l.On)
+	switch {
+	case !ok:
+		t.Errorf("%s: no field of this name", name)
+	case f.Unit != l.Unit:
+		t.Errorf("%s: in %s, the field in %s", name, l.Unit.Symbol(), f.Unit.Symbol())
+	}
+	if l.Source.Status == screening.NoStatus || l.Source.Document == "" {
+		t.Errorf("%s: source %q", name, l.Source)
+	}
+	if math.IsNaN(l.Low) || math.IsNaN(l.High) || l.Low > l.High {
+		t.Errorf("%s: bounds %v to %v", name, l.Low, l.High)
+	}
+	if math.IsInf(l.Low, -1) && math.IsInf(l.High, 1) && l.FormulaText() == "" && l.Note == "" {
+		t.Errorf("%s: asks for any value without saying why", name)
+	}
+	if l.Criterion == "" || l.Set == "" {
+		t.Errorf("%s: criterion %q, set %q", name, l.Criterion, l.Set)
+	}
+	for _, v := range screening.Variables() {
+		if x, ok := l.At.Get(v); ok && (math.IsNaN(x) || math.IsInf(x, 0)) {
+			t.Errorf("%s: %s is %v", name, v, x)
+		}
+	}
+	if text := l.FormulaText(); l.Formula != nil && (text == "" || strings.Contains(text, "NaN") || strings.Contains(text, "%!")) {
+		t.Errorf("%s: formula %q", name, text)
+	}
+	if b.Recipes == nil {
+		return
+	}
+	for _, r := range b.Recipes(part, l) {
+		text := strings.Join(r.Lines, "\n")
+		if r.Title == "" || text == "" || r.Source.Status == screening.NoStatus || strings.Contains(text, "NaN") || strings.Contains(text, "%!") {
+			t.Errorf("%s: recipe %+v", name, r)
+		}
+		for k, x := range r.Values {
+			if math.IsNaN(x) || math.IsInf(x, 0) || x < 0 {
+				t.Errorf("%s: recipe value %s is %v", name, k, x)
+			}
+		}
+	}
+}
+
+func TestTablesNamesEveryRulebook(t *testing.T) {
+	seen := map[string]bool{}
+	for _, b := range rules.All() {
+		if !strings.Contains(rules.Tables(), b.Tables) {
+			t.Errorf("%s: %q is not part of %q", b.Kind, b.Tables, rules.Tables())
+		}
+		if seen[b.Tables] {
+			t.Errorf("%s: %q names another kind's tables too", b.Kind, b.Tables)
+		}
+		seen[b.Tables] = true
+	}
+}
