@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"goodbin/rules/bipolar"
+	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
 	"goodbin/rules/resistor"
 	"goodbin/screening"
@@ -14,6 +15,7 @@ import (
 func All() screening.Kinds {
 	return screening.Kinds{
 		electrolytic.Book(),
+		diode.Book(),
 		bipolar.Book(),
 		resistor.Book(),
 	}

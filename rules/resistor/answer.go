@@ -87,6 +87,7 @@ func wider(c screening.Claim, f *screening.Finding) []screening.Lesser {
 		}
 		rating := screening.RangeRating(screening.Tolerance, -t, t)
 		rating.Source = screening.Source{Document: "the printed value at a wider tolerance", Status: screening.House}
+		rating.Typed = rating.String()
 		answers = append(answers, screening.Lesser{
 			Claim: c.WithRating(rating), Answers: f.Limit.Criterion, Tolerance: true, Text: widerText(f, nominal, claimed, rating),
 			Source: rating.Source,
@@ -98,7 +99,7 @@ func wider(c screening.Claim, f *screening.Finding) []screening.Lesser {
 func widerText(f *screening.Finding, nominal float64, claimed, proven screening.Rating) string {
 	switch {
 	case f.Outcome == screening.Fail:
-		return proven.String() + ": it reads " + quantity.Format(f.Reading.Value, quantity.Ohm, 4) + ", " +
+		return proven.String() + ": it reads " + quantity.Format(honest(f.Reading.Value, f.Reading.U), quantity.Ohm, 0) + ", " +
 			signedPercent(f.Reading.Value/nominal-1) + " from its value"
 	case f.Unconfirmed:
 		return proven.String() + " proven; " + claimed.String() + " is only taken for granted (" + f.Limit.Source.Status.String() + ")"
@@ -142,6 +143,7 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 		rating := screening.NominalRating(screening.Resistance, value)
 		tolerance := screening.RangeRating(screening.Tolerance, -t, t)
 		rating.Source, tolerance.Source = source, source
+		rating.Typed, tolerance.Typed = rating.String(), tolerance.String()
 		return []screening.Lesser{{
 			Claim: c.WithRating(rating).WithRating(tolerance), Answers: f.Limit.Criterion,
 			Text:   "as measured, " + quantity.Format(value, quantity.Ohm, 0) + " " + tolerance.String(),

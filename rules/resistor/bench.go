@@ -46,7 +46,7 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 // dries reports whether the part is carbon composition, reads high, and was not dried yet.
 func dries(part screening.Part) bool {
 	r, measured := part.Reading(screening.Resistance.Name, "")
-	_, high, _, ok := band(part.Claim)
+	_, high, ok := band(part.Claim)
 	return ok && measured && part.Treated == 0 && technologyOf(part.Claim).name == composition && r.Sense == quantity.Exactly &&
 		r.Value > high && r.Value*(1-driesBack) <= high
 }

@@ -124,19 +124,29 @@ func note(of screening.Characteristic, format string, args ...any) screening.Rea
 // width is the larger side of a tolerance, as a ratio.
 func width(t screening.Rating) float64 { return math.Max(-t.Low, t.High) }
 
-// band returns the bounds in ohms that a claim implies and how they come about.
-func band(c screening.Claim) (low, high float64, formula string, ok bool) {
+// band returns the bounds in ohms that a claim implies.
+func band(c screening.Claim) (low, high float64, ok bool) {
 	r, claimed := c.Rating(screening.Resistance.Name, "")
 	if !claimed {
-		return 0, 0, "", false
+		return 0, 0, false
 	}
 	if !r.HasNominal() {
-		return r.Low, r.High, r.String() + " as claimed", true
+		return r.Low, r.High, true
 	}
 	t, _ := c.Rating(screening.Tolerance.Name, "")
-	low, high = r.Nominal*(1+t.Low), r.Nominal*(1+t.High)
-	return low, high, fmt.Sprintf("%s %s = %s to %s", quantity.Format(r.Nominal, quantity.Ohm, 0), t,
-		quantity.Format(low, quantity.Ohm, 4), quantity.Format(high, quantity.Ohm, 4)), true
+	return r.Nominal * (1 + t.Low), r.Nominal * (1 + t.High), true
+}
+
+// bandFormula says how the bounds come about: "4.7 kΩ ±5 % = 4.465 kΩ to 4.935 kΩ".
+func bandFormula(c screening.Claim) string {
+	r, _ := c.Rating(screening.Resistance.Name, "")
+	if !r.HasNominal() {
+		return r.String() + " as claimed"
+	}
+	low, high, _ := band(c)
+	t, _ := c.Rating(screening.Tolerance.Name, "")
+	return fmt.Sprintf("%s %s = %s to %s", quantity.Format(r.Nominal, quantity.Ohm, 0), t,
+		quantity.Format(low, quantity.Ohm, 4), quantity.Format(high, quantity.Ohm, 4))
 }
 
 // toleranceSource is where the band comes from: the part's own print, the letter's meaning, or the default's source.
@@ -151,7 +161,7 @@ func toleranceSource(t screening.Rating) screening.Source {
 }
 
 func limits(c screening.Claim) ([]screening.Limit, error) {
-	low, high, _, ok := band(c)
+	low, high, ok := band(c)
 	if !ok {
 		return nil, nil
 	}
@@ -159,10 +169,7 @@ func limits(c screening.Claim) ([]screening.Limit, error) {
 	l := screening.Limit{
 		On: screening.Resistance.Name, Unit: quantity.Ohm, Criterion: valueCriterion, Low: low, High: high,
 		Need: screening.Required, Set: screening.GeneralSet, InUse: true, Grade: screening.WithinSpec, Source: toleranceSource(t),
-		Formula: func() string {
-			_, _, text, _ := band(c)
-			return text
-		},
+		Formula: func() string { return bandFormula(c) },
 	}
 	if technologyOf(c).name == composition {
 		l.TreatHigh = screening.Dry

@@ -1,0 +1,138 @@
+// Package diode is the rulebook of rectifier, signal, Schottky and germanium diodes, single, dual and in bridges.
+//
+// A diode is told by its forward voltage at a tester's small current, and proved by what it blocks in reverse, as far as the bench goes. A
+// breakdown above the rating is normal; below it the diode is damaged and no lesser claim helps.
+package diode
+
+import (
+	"strings"
+	"time"
+
+	"goodbin/rules/internal/book"
+	"goodbin/rules/types"
+	"goodbin/screening"
+	"goodbin/screening/quantity"
+)
+
+// Kind is the kind's name.
+const Kind = types.Diode
+
+// Version names the state of this rulebook's tables.
+const Version = "diode 1"
+
+// Ratings of a diode.
+var (
+	// VRRM is the reverse voltage that it claims to block again and again.
+	VRRM = screening.Definition{Name: "vrrm", Symbol: "VRRM", Label: "rated reverse voltage", Unit: quantity.Volt}
+	// IFAV is the average forward current that it claims to carry.
+	IFAV = screening.Definition{Name: "if-av", Symbol: "IF(AV)", Label: "rated forward current", Unit: quantity.Ampere}
+	// IFSM is the surge of one half-wave that it claims to survive.
+	IFSM = screening.Definition{Name: "ifsm", Symbol: "IFSM", Label: "rated surge current", Unit: quantity.Ampere}
+	// TRR is the time that it claims to need to block again.
+	TRR = screening.Definition{Name: "trr", Symbol: "trr", Label: "reverse recovery time", Unit: quantity.Second}
+)
+
+// The criteria.
+const (
+	forwardCriterion   screening.Criterion = "forward"
+	blockingCriterion  screening.Criterion = "blocking"
+	breakdownCriterion screening.Criterion = "breakdown"
+	leakageCriterion   screening.Criterion = "leakage"
+)
+
+// TraitDual says that one case holds two diodes and how they are joined.
+const TraitDual = "dual"
+
+// testerCurrent is what a diode test is taken to send through a junction where no current is stated (house).
+const testerCurrent = 1e-3
+
+// Book returns the rulebook.
+func Book() *screening.Rulebook {
+	return &screening.Rulebook{
+		Kind: Kind, Label: "diode", Tables: Version + ", " + types.Version(),
+		Claims: claims(), Bench: bench(), Look: []screening.Check{book.MainsOrCracked()},
+		Complete: complete, Limits: limits, Convert: convert, Adjust: adjust, Untested: untested, Cautions: cautions, Recipes: recipes,
+	}
+}
+
+func trait(name, label string) screening.Definition {
+	return screening.Definition{Name: screening.Characteristic(name), Label: label}
+}
+
+func claims() []screening.Field {
+	return []screening.Field{
+		{
+			Definition: trait(screening.TraitType, "type"), Trait: true, Example: "1N4148", AcceptText: acceptType,
+			Help: "the type number as printed; a known one says all the rest",
+		},
+		{
+			Definition: trait(screening.TraitTechnology, "technology"), Trait: true, Example: "rectifier", Words: technologyWords(),
+			Help: "rectifier, signal, fast, ultrafast, schottky, point-contact, gold-bonded; unknown where you cannot tell",
+		},
+		{
+			Definition: trait(screening.TraitMaterial, "material (si or ge)"), Trait: true, Example: "si", Help: "si or ge",
+			Words: []screening.Word{
+				{Word: "si", Text: "si"}, {Word: silicon, Text: "si"}, {Word: "ge", Text: "ge"}, {Word: germanium, Text: "ge"},
+			},
+		},
+		{
+			Definition: VRRM, Example: "400V", AcceptRange: atLeastIn(quantity.Volt, "V"),
+			Help: "the reverse voltage it claims to block",
+		},
+		{
+			Definition: IFAV, Example: "1A", AcceptRange: atLeastIn(quantity.Ampere, "A"),
+			Help: "the forward current it claims to carry; not tested",
+		},
+		{
+			Definition: trait(TraitDual, "two diodes in one case"), Trait: true, Example: "dual",
+			Help: "dual, common-cathode, common-anode or series; measure both: vf/1=… vf/2=…",
+			Words: []screening.Word{
+				{Word: "dual", Text: "dual"}, {Word: "common-cathode", Text: "common cathode"}, {Word: "common-anode", Text: "common anode"},
+				{Word: "series", Text: "in series"},
+			},
+		},
+		{Definition: IFSM, Example: "rated:ifsm=30A", Help: "the surge of one half-wave that its sheet allows; not tested"},
+		{Definition: screening.VF, Example: "rated:vf@1A=..1.1V", Help: "the highest forward voltage its sheet allows, at a current"},
+		{Definition: screening.IR, Example: "rated:ir@400V=..5uA", Help: "the highest reverse current its sheet allows, at a voltage"},
+		{Definition: TRR, Example: "rated:trr=50ns", Help: "the recovery time of its sheet; not tested"},
+		{Definition: trait(screening.TraitCase, "case"), Trait: true, Example: "case=DO-41", Help: "the outline"},
+		{Definition: trait(screening.TraitDated, "maker's date"), Trait: true, Example: "dated=1974", Help: "year or decade of making"},
+	}
+}
+
+func acceptType(word string) (string, bool) {
+	row, ok := types.Lookup(Kind, word)
+	return row.Type, ok
+}
+
+// atLeastIn takes a bare value that states its unit as "at least so much": what stands on a diode is what it claims to bear.
+func atLeastIn(unit quantity.Unit, symbol string) func(string) (low, high float64, ok bool) {
+	return func(word string) (low, high float64, ok bool) {
+		if !strings.HasSuffix(word, symbol) {
+			return 0, 0, false
+		}
+		v, err := quantity.Parse(word, unit)
+		if err != nil || v.Sense != quantity.Exactly || v.Over || v.Number <= 0 {
+			return 0, 0, false
+		}
+		return v.Number, inf, true
+	}
+}
+
+func bench() []screening.Field {
+	return []screening.Field{
+		{
+			Definition: screening.VF, Effort: 5 * time.Second, Default: screening.At(screening.Current, testerCurrent), Example: "vf=0.62",
+			Help: "diode test, red on the anode; at another current say which: vf@10mA=0.72",
+		},
+		{
+			Definition: screening.VBR, Effort: 5 * time.Second, Example: "vbr=OL",
+			Help: "turn the probes: OL is what a sound one shows; >30V where it blocked 30 V through a resistor",
+		},
+		{
+			Definition: screening.IR, Effort: time.Minute, Example: "ir@20V=0.1uA",
+			Help: "reverse current through a series resistor, at the voltage stated",
+		},
+		{Definition: screening.Temperature, PerPart: true, Effort: 10 * time.Second, Help: "of the part, lying in the room", Example: "22C"},
+	}
+}

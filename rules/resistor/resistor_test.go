@@ -1,0 +1,236 @@
+package resistor
+
+import (
+	"math"
+	"slices"
+	"strings"
+	"testing"
+
+	"pgregory.net/rapid"
+
+	"goodbin/screening"
+	"goodbin/screening/entry"
+	"goodbin/screening/quantity"
+)
+
+// judge judges a part from the words that a person types.
+func judge(t testing.TB, words string, policy screening.Policy) screening.Judgement {
+	t.Helper()
+	p, err := entry.Words(Book(), strings.Fields(words))
+	if err != nil {
+		t.Fatalf("%s: %v", words, err)
+	}
+	j, err := screening.Judge(Book(), screening.Part{Claim: p.Claim, Look: p.Look, Readings: p.Readings, Treated: p.Treated}, policy)
+	if err != nil {
+		t.Fatalf("%s: %v", words, err)
+	}
+	return j
+}
+
+func exactly() screening.Policy {
+	p := screening.DefaultPolicy()
+	p.Rule = screening.SimpleAcceptance
+	p.Meters = map[string]screening.Meter{"": screening.ExactMeter()}
+	return p
+}
+
+func texts(j screening.Judgement) string {
+	var b strings.Builder
+	for _, r := range j.Reasons {
+		b.WriteString(r.Code + ": " + r.Text + "\n")
+	}
+	for _, s := range j.Next {
+		b.WriteString(s.Code + ": " + s.Text + "\n")
+	}
+	return b.String()
+}
+
+var verdictCases = []struct {
+	name, words string
+	verdict     screening.Verdict
+	says        string
+	as          string // of RegradedAs; "" where there must be none
+}{
+	{"a good 5 % film part", "4k7 5% metal-film resistance=4.68k", screening.Accept, "new part", ""},
+	{"10 Ω at 1 % is more than two wires can prove", "10R 1% metal-film resistance=10.05", screening.Accept, "not provable with this meter (needs ±", "±5 % proven; ±1 %"},
+	{"close to 5 %: kept at 10 %", "4k7 5% resistance=4.91k", screening.Accept, "", "±10 % proven; ±5 %"},
+	{"film 7 % high is kept as measured", "4k7 5% metal-film resistance=5.03k", screening.Regrade, "fails", "as measured, 5.03 kΩ ±2 %"},
+	{"unknown technology 7 % high: told of drying", "4k7 5% resistance=5.03k", screening.Regrade, "if it is carbon composition, dry it", "as measured, 5.03 kΩ"},
+	{"low composition is kept at a wider tolerance", "4k7 5% cc resistance=4.3k", screening.Regrade, "out of circuit", "±10 %: it reads 4.3 kΩ, −8.5 %"},
+	{"low composition beyond 20 % as measured", "1k 5% cc resistance=760", screening.Regrade, "", "as measured, 760 Ω ±10 %"},
+	{"composition 12 % high is dried first", "4k7 5% cc resistance=5.26k", screening.Treat, "drying out in use may drop it", "±20 %"},
+	{"dried before and still high: a failure", "4k7 5% cc resistance=5.26k treated=1", screening.Regrade, "MIL-R-39008C 6.9", "±20 %"},
+	{"composition 60 % high is beyond drying", "4k7 5% cc resistance=7.5k", screening.Reject, "too high to be moisture alone", ""},
+	{"composition open", "4k7 5% cc resistance=OL", screening.Reject, "reads open", ""},
+	{"film open", "4k7 5% metal-film resistance=OL", screening.Reject, "reads open", ""},
+	{"film 30 % off", "4k7 5% metal-film resistance=6.1k", screening.Reject, "fails", ""},
+	{"a short", "4k7 5% resistance=0.3", screening.Reject, "fails", ""},
+	{"no reading", "4k7 5%", screening.Undecided, "MEASURE resistance", ""},
+	{"OL says nothing of 4.7 MΩ", "4M7 5% resistance=OL", screening.Undecided, "only bounds", ""},
+	{"film with no tolerance printed: 5 % is from memory and cannot fail it", "4k7 metal-film resistance=5.1k", screening.Accept, "from memory", "±10 % proven; ±5 % is only taken for granted"},
+	{"film with no tolerance, 40 % off: confirm", "4k7 metal-film resistance=6.6k", screening.Undecided, "CONFIRM the figure", ""},
+	{"no tolerance and no technology: 20 %, as no band means", "4k7 resistance=5.4k", screening.Accept, "no tolerance band is ±20 %", ""},
+	{"carbon composition without a band, 25 % low", "4k7 cc resistance=3.5k", screening.Regrade, "", "as measured, 3.5"},
+	{"across the mains", "4k7 5% resistance=4.7k seen=mains", screening.Barred, "across the mains", ""},
+	{"cracked", "4k7 5% resistance=4.7k seen=cracked", screening.Barred, "cracked", ""},
+	{"charred", "4k7 5% resistance=4.7k seen=burnt", screening.Reject, "overheated", ""},
+}
+
+func TestVerdicts(t *testing.T) {
+	seen := map[screening.Verdict]bool{}
+	for _, tt := range verdictCases {
+		t.Run(tt.name, func(t *testing.T) {
+			j := judge(t, tt.words, screening.DefaultPolicy())
+			seen[j.Verdict] = true
+			if j.Verdict != tt.verdict {
+				t.Errorf("%s: %s, want %s\n%s", tt.words, j.Verdict, tt.verdict, texts(j))
+			}
+			if !strings.Contains(texts(j), tt.says) {
+				t.Errorf("%s: nothing says %q:\n%s", tt.words, tt.says, texts(j))
+			}
+			as := ""
+			if j.RegradedAs != nil {
+				as = j.RegradedAs.Text
+			}
+			if tt.as == "" && as != "" || !strings.Contains(as, tt.as) {
+				t.Errorf("%s: as %q, want %q", tt.words, as, tt.as)
+			}
+			if len(j.Untested) == 0 || !strings.Contains(j.Untested[0], "rated power") {
+				t.Errorf("%s: nothing says that power is not tested: %v", tt.words, j.Untested)
+			}
+		})
+	}
+	for _, v := range screening.Verdicts() {
+		if !seen[v] {
+			t.Errorf("no case gives %s", v)
+		}
+	}
+}
+
+// Tolerance bands with an exact meter: the claim's own figures.
+func TestBandsIncludeTheirEdges(t *testing.T) {
+	for _, tt := range []struct {
+		words string
+		pass  bool
+	}{
+		{"4k7 5% resistance=4.465k", true},
+		{"4k7 5% resistance=4.464k", false},
+		{"4k7 5% resistance=4.935k", true},
+		{"4k7 5% resistance=4.936k", false},
+		{"100R J resistance=105", true},
+		{"100R G resistance=102.1", false},
+		{"100R K resistance=110", true},
+		{"100R M resistance=80", true},
+		{"100R M resistance=79.9", false},
+		{"rated:resistance=90..110 resistance=111", false},
+		{"rated:resistance=90..110 resistance=110", true},
+	} {
+		j := judge(t, tt.words, exactly())
+		want := screening.Pass
+		if !tt.pass {
+			want = screening.Fail
+		}
+		if got := j.Findings[0].Outcome; got != want {
+			t.Errorf("%s: %s, want %s", tt.words, got, want)
+		}
+	}
+}
+
+// Letter-and-digit values of IEC 60062 and GOST IEC 60062-2014 (published); k10, M10 and K15 are European and Soviet print (Grieder, shemu.ru).
+func TestPrintedValues(t *testing.T) {
+	for text, want := range map[string]float64{
+		"R47": 0.47, "4R7": 4.7, "470R": 470, "4K7": 4700, "47K3": 47300, "4M7": 4.7e6, "15M0": 15e6, "k10": 100, "M10": 100e3, "K15": 150,
+	} {
+		v, err := quantity.Parse(text, quantity.Ohm)
+		if err != nil || math.Abs(v.Number/want-1) > 1e-12 {
+			t.Errorf("%s is %v (%v), want %v Ω", text, v.Number, err, want)
+		}
+	}
+}
+
+func TestClaimsThatCannotBe(t *testing.T) {
+	for claim, want := range map[string]string{
+		"rated:resistance=0":               "no tolerance band",
+		"4k7 rated:tolerance=-150%..-100%": "no tolerance of a resistor",
+	} {
+		p, err := entry.Words(Book(), strings.Fields(claim))
+		if err != nil {
+			continue // refused even earlier
+		}
+		if _, err := screening.Judge(Book(), screening.Part{Claim: p.Claim}, screening.DefaultPolicy()); err == nil || !strings.Contains(err.Error(), want) {
+			t.Errorf("%s: %v, want %q", claim, err, want)
+		}
+	}
+	odd := screening.Claim{}.WithRating(screening.NominalRating(screening.Resistance, 100)).WithTrait(screening.TraitTechnology, "wood")
+	if _, _, err := complete(odd); err == nil || !strings.Contains(err.Error(), `"wood" is not known; one of carbon-composition`) {
+		t.Errorf("wood: %v", err)
+	}
+}
+
+func TestCompleteIsIdempotent(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		c := screening.Claim{}.WithRating(screening.NominalRating(screening.Resistance, rapid.Float64Range(0.01, 1e8).Draw(t, "ohms")))
+		if rapid.Bool().Draw(t, "tolerance") {
+			x := rapid.SampledFrom(ladder).Draw(t, "percent")
+			c = c.WithRating(screening.RangeRating(screening.Tolerance, -x, x))
+		}
+		names := []string{""}
+		for _, tech := range load().technologies {
+			names = append(names, tech.name)
+		}
+		c = c.WithTrait(screening.TraitTechnology, rapid.SampledFrom(names).Draw(t, "technology"))
+		once, _, err := complete(c)
+		twice, _, err2 := complete(once)
+		if err != nil || err2 != nil || len(once.Ratings) != len(twice.Ratings) || !slices.Equal(once.Traits, twice.Traits) {
+			t.Fatalf("%v, %v: %v then %v", err, err2, once, twice)
+		}
+		for i := range once.Ratings {
+			if once.Ratings[i].String() != twice.Ratings[i].String() {
+				t.Fatalf("%v then %v", once.Ratings[i], twice.Ratings[i])
+			}
+		}
+	})
+}
+
+// A meter, however poor, never rejects a part that is exactly what it claims, as long as its error stays inside 95 % of its specification:
+// the half-width of a rectangular distribution is √3·u, and beyond 1.645·u the normal one that decides speaks of 0.95.
+func TestAPerfectPartIsNeverRejected(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		nominal := rapid.SampledFrom(e24[:]).Draw(t, "value") * math.Pow10(rapid.IntRange(0, 6).Draw(t, "decade"))
+		accuracy := rapid.Float64Range(0.001, 0.5).Draw(t, "accuracy")
+		meter := screening.Meter{Name: "poor", ByUnit: map[quantity.Unit]screening.Accuracy{quantity.Ohm: {Relative: accuracy}}}
+		policy := screening.DefaultPolicy()
+		policy.Meters = map[string]screening.Meter{"": meter}
+		off := rapid.Float64Range(-0.95, 0.95).Draw(t, "error")
+		part := screening.Part{
+			Claim: screening.Claim{}.WithRating(screening.NominalRating(screening.Resistance, nominal)).
+				WithRating(screening.RangeRating(screening.Tolerance, -0.01, 0.01)),
+			Readings: []screening.Reading{{Of: screening.Resistance.Name, Unit: quantity.Ohm, Value: nominal / (1 - accuracy*off)}},
+		}
+		j, err := screening.Judge(Book(), part, policy)
+		if err != nil || j.Verdict == screening.Reject {
+			t.Fatalf("%v Ω with ±%.3g: %v, %v\n%s", nominal, accuracy, j.Verdict, err, texts(j))
+		}
+	})
+}
+
+func BenchmarkJudge(b *testing.B) {
+	book, policy := Book(), screening.DefaultPolicy()
+	for _, bench := range []struct{ name, words string }{
+		{"accept", "4k7 5% metal-film resistance=4.68k"}, {"regrade", "4k7 5% metal-film resistance=5.03k"},
+	} {
+		p, err := entry.Words(book, strings.Fields(bench.words))
+		if err != nil {
+			b.Fatal(err)
+		}
+		part := screening.Part{Claim: p.Claim, Readings: p.Readings}
+		b.Run(bench.name, func(b *testing.B) {
+			b.ReportAllocs()
+			for b.Loop() {
+				if _, err := screening.Judge(book, part, policy); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}
