@@ -2,7 +2,6 @@ package screening
 
 import (
 	"math"
-	"slices"
 
 	"gonum.org/v1/gonum/stat/distuv"
 
@@ -33,52 +32,52 @@ func ConformanceProbability(x, u, low, high float64) (below, above float64) {
 	return below, above
 }
 
-// find holds one limit against the best evidence the part has for it: a reading whose condition fits, the latest first; else a reading
-// that a stated rule brings over; else, where the limit takes one, a rating.
-func (j *judging) find(part Part, l Limit) Finding {
-	f := Finding{
-		Limit: l, Need: l.Need, By: l.Evidence, Probability: math.NaN(), Margin: math.NaN(),
-		Wants: Gap{Of: l.On, Section: l.Section, At: l.At},
+// find holds one limit, for one section, against the best evidence the part has for it: a reading whose condition fits, the latest first;
+// else a reading that a stated rule brings over; else, where the limit takes one, a rating. It fills in f.
+func (j *judging) find(part *Part, l *Limit, section string, f *Finding) {
+	*f = Finding{
+		Limit: *l, Need: l.Need, By: l.Evidence, Probability: math.NaN(), Margin: math.NaN(),
+		Wants: Gap{Of: l.On, Section: section, At: l.At},
 	}
+	f.Limit.Section = section
 	var fit Fit
 	if field := j.book.bench(l.On); field != nil {
 		fit = field.Fit
 	}
 	if l.Evidence != ByRating {
-		for i := range slices.Backward(part.Readings) {
+		for i := len(part.Readings) - 1; i >= 0; i-- {
 			r := &part.Readings[i]
-			if r.Of != l.On || r.Section != l.Section {
+			if r.Of != l.On || r.Section != section {
 				continue
 			}
 			if _, _, fits := fit.Misfit(&r.At, &l.At); fits {
 				f.Reading = r
-				j.hold(&f, *r)
+				j.hold(f, r)
 				break
 			}
 			if f.Outcome == Missing {
-				j.tryConversion(part, &f, fit, r)
+				j.tryConversion(part, f, fit, r)
 			}
 		}
 	}
 	if f.Outcome == Missing && l.Evidence != ByReading {
-		j.holdRating(part, &f)
+		j.holdRating(part, f)
 	}
 	if f.Outcome == Missing && f.Why == "" {
 		f.Why = "not measured"
 	}
-	return f
 }
 
 // tryConversion brings a reading to the limit's condition by the rulebook's rule. Where no rule applies the finding stays missing and says
 // which condition is off.
-func (j *judging) tryConversion(part Part, f *Finding, fit Fit, r *Reading) {
+func (j *judging) tryConversion(part *Part, f *Finding, fit Fit, r *Reading) {
 	why := ""
 	if j.book.Convert != nil {
-		c := j.book.Convert(part, *r, f.Limit)
+		c := j.book.Convert(*part, *r, f.Limit)
 		if c.OK {
 			held := *f
 			held.Reading, held.Converted = r, &c
-			j.hold(&held, c.Reading)
+			j.hold(&held, &c.Reading)
 			if held.Outcome == Pass && c.NeverPasses {
 				held.Outcome = Missing
 				held.Why = "a value converted this way can refute but not prove: " + c.Rule
@@ -107,7 +106,7 @@ func misfitText(fit Fit, r *Reading, l *Limit) string {
 }
 
 // hold decides one limit by one reading that fits it.
-func (j *judging) hold(f *Finding, r Reading) {
+func (j *judging) hold(f *Finding, r *Reading) {
 	l := &f.Limit
 	f.By = ByReading
 	f.Outcome, f.Why = Missing, ""
@@ -186,7 +185,7 @@ func (j *judging) decide(f *Finding, p, below, above float64) {
 
 // accuracyNeeded returns the relative half-width of a rectangular meter specification with which a repeat of the same reading would be
 // decided: u = distance to the nearest bound over the normal quantile of the policy's threshold, times √3.
-func (j *judging) accuracyNeeded(f *Finding, r Reading) float64 {
+func (j *judging) accuracyNeeded(f *Finding, r *Reading) float64 {
 	if r.Value == 0 {
 		return 0
 	}
@@ -207,7 +206,7 @@ func (j *judging) accuracyNeeded(f *Finding, r Reading) float64 {
 }
 
 // holdRating lets a rating answer: its whole band must lie inside. A measured value may refute a rating, never replace it.
-func (j *judging) holdRating(part Part, f *Finding) {
+func (j *judging) holdRating(part *Part, f *Finding) {
 	rating, ok := part.Claim.Rating(f.Limit.On, f.Limit.Section)
 	if !ok {
 		f.Why = "not claimed"

@@ -110,16 +110,26 @@ func (j *judging) findings(part Part) ([]Finding, []Reason, error) {
 	if err != nil {
 		return nil, nil, err
 	}
-	findings := make([]Finding, 0, len(limits))
+	counting := 0
+	for i := range limits {
+		if j.policy.counts(part.Kind, &limits[i]) {
+			counting++
+		}
+	}
+	findings := make([]Finding, 0, counting)
 	for i := range limits {
 		l := &limits[i]
 		if !j.policy.counts(part.Kind, l) {
 			continue
 		}
-		for _, section := range sectionsFor(part, l) {
-			sectioned := *l
-			sectioned.Section = section
-			findings = append(findings, j.find(part, sectioned))
+		sections := measuredSections(&part, l)
+		for n := range max(1, len(sections)) {
+			section := l.Section
+			if sections != nil {
+				section = sections[n]
+			}
+			findings = append(findings, Finding{})
+			j.find(&part, l, section, &findings[len(findings)-1])
 		}
 	}
 	if j.book.Adjust == nil {
@@ -129,19 +139,17 @@ func (j *judging) findings(part Part) ([]Finding, []Reason, error) {
 	return findings, reasons, nil
 }
 
-// sectionsFor lists the sections that a limit is held against: its own, or of a limit for the whole part every section that was measured.
-func sectionsFor(part Part, l *Limit) []string {
+// measuredSections lists, for a limit on the whole part, the sections that were measured; nil where there are none or the limit has its own.
+func measuredSections(part *Part, l *Limit) []string {
 	if l.Section != "" {
-		return []string{l.Section}
+		return nil
 	}
 	var sections []string
-	for _, r := range part.Readings {
+	for i := range part.Readings {
+		r := &part.Readings[i]
 		if r.Of == l.On && r.Section != "" && !slices.Contains(sections, r.Section) {
 			sections = append(sections, r.Section)
 		}
-	}
-	if sections == nil {
-		return []string{""}
 	}
 	return sections
 }

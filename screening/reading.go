@@ -83,24 +83,27 @@ type Part struct {
 
 // Current returns the readings that stand: of each characteristic, section and condition the last one taken.
 func (p Part) Current() []Reading {
-	var standing []Reading
-	for _, r := range p.Readings {
-		i := slices.IndexFunc(standing, func(s Reading) bool { return s.Of == r.Of && s.Section == r.Section && s.At == r.At })
-		if i >= 0 {
-			standing[i] = r
-			continue
+	standing := make([]Reading, 0, len(p.Readings)+2) // room for what the judge derives
+next:
+	for i := range p.Readings {
+		r := &p.Readings[i]
+		for k := range standing {
+			if s := &standing[k]; s.Of == r.Of && s.Section == r.Section && s.At == r.At {
+				*s = *r
+				continue next
+			}
 		}
-		standing = append(standing, r)
+		standing = append(standing, *r)
 	}
 	return standing
 }
 
 // Reading returns the last reading taken of a characteristic that holds for a section (the section's own, else the whole part's).
 func (p Part) Reading(of Characteristic, section string) (Reading, bool) {
-	for _, want := range []string{section, ""} {
-		for _, r := range slices.Backward(p.Readings) {
-			if r.Of == of && r.Section == want {
-				return r, true
+	for _, want := range [...]string{section, ""} {
+		for i := len(p.Readings) - 1; i >= 0; i-- {
+			if r := &p.Readings[i]; r.Of == of && r.Section == want {
+				return *r, true
 			}
 		}
 	}

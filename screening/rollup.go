@@ -10,6 +10,7 @@ type criterionState struct {
 	section   string
 	need      Need
 	outcome   Outcome
+	graded    bool       // it has a limit at this grade
 	findings  []*Finding // the limits that count at this grade
 }
 
@@ -21,36 +22,40 @@ func (c *criterionState) blocks() bool {
 // criteriaAt sums findings up by criterion and section at a grade. A criterion that has no limit at the grade takes those of the grade
 // above: what no maker relaxes stays as it is.
 func criteriaAt(findings []Finding, grade Grade) []criterionState {
-	var states []criterionState
+	states := make([]criterionState, 0, 8)
 	for i := range findings {
 		f := &findings[i]
-		at := slices.IndexFunc(states, func(c criterionState) bool {
-			return c.criterion == f.Limit.Criterion && c.section == f.Limit.Section
-		})
-		if at < 0 {
+		s := stateOf(states, f)
+		if s == nil {
 			states = append(states, criterionState{criterion: f.Limit.Criterion, section: f.Limit.Section, need: f.Need})
-			at = len(states) - 1
+			s = &states[len(states)-1]
 		}
-		states[at].need = min(states[at].need, f.Need)
-		if f.Limit.Grade == AnyGrade || f.Limit.Grade == grade {
-			states[at].findings = append(states[at].findings, f)
-		}
+		s.need = min(s.need, f.Need)
+		s.graded = s.graded || f.Limit.Grade == AnyGrade || f.Limit.Grade == grade
 	}
+	room := make([]*Finding, 0, len(findings))
 	for i := range states {
-		s := &states[i]
-		if len(s.findings) == 0 {
-			for k := range findings {
-				f := &findings[k]
-				if f.Limit.Criterion == s.criterion && f.Limit.Section == s.section {
-					s.findings = append(s.findings, f)
-				}
+		s, start := &states[i], len(room)
+		for k := range findings {
+			f := &findings[k]
+			if f.Limit.Criterion == s.criterion && f.Limit.Section == s.section &&
+				(!s.graded || f.Limit.Grade == AnyGrade || f.Limit.Grade == grade) {
+				room = append(room, f)
+				s.outcome = worseAlternative(s.outcome, f.Outcome)
 			}
 		}
-		for _, f := range s.findings {
-			s.outcome = worseAlternative(s.outcome, f.Outcome)
-		}
+		s.findings = room[start:len(room):len(room)]
 	}
 	return states
+}
+
+func stateOf(states []criterionState, f *Finding) *criterionState {
+	for i := range states {
+		if s := &states[i]; s.criterion == f.Limit.Criterion && s.section == f.Limit.Section {
+			return s
+		}
+	}
+	return nil
 }
 
 // worseAlternative combines alternatives of one criterion: any failure fails it, else any pass answers it, else it is close, else missing.

@@ -39,7 +39,7 @@ func Answer(q screening.Question, text string) (screening.Reading, error) {
 		return screening.Reading{}, err
 	}
 	p := parser{}
-	r, err := p.reading(t, list)
+	r, err := p.reading(&t, list)
 	if err != nil {
 		return screening.Reading{}, err
 	}
@@ -58,7 +58,7 @@ func AnswerClaim(book *screening.Rulebook, q screening.Question, text string) (s
 	if q.Field.Trait {
 		t.what = toTrait
 	}
-	err = p.assign(t, value, value)
+	err = p.assign(&t, value, value)
 	return p.parsed.Claim, err
 }
 

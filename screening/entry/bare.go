@@ -29,7 +29,7 @@ func (t taking) meaning(word string) string {
 func (p *parser) bare(word string) error {
 	if f, ok := p.book.ClaimField(screening.TraitType); ok && f.AcceptText != nil {
 		if text, ok := f.AcceptText(word); ok {
-			return p.addTrait(f, text, word)
+			return p.addTrait(&f, text, word)
 		}
 	}
 	var meanings []string
@@ -57,7 +57,7 @@ func (p *parser) bare(word string) error {
 	case 1:
 		t := takings[0]
 		if t.field.Trait {
-			return p.addTrait(t.field, t.text, word)
+			return p.addTrait(&t.field, t.text, word)
 		}
 		return p.addRating(t.rating, word)
 	}

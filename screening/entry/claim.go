@@ -13,8 +13,8 @@ import (
 const maxTraitRunes = 80
 
 // rating reads the value of a rating: x, L..H, L.., ..H, and for a tolerance the percents of either side.
-func (p *parser) rating(t target, value string) (screening.Rating, error) {
-	f := t.field
+func (p *parser) rating(t *target, value string) (screening.Rating, error) {
+	f := &t.field
 	r := screening.Rating{Of: f.Name, Section: t.section, At: t.at, Unit: f.Unit, Nominal: math.NaN(), Typed: value}
 	if f.AcceptRange != nil {
 		if low, high, ok := f.AcceptRange(value); ok {
@@ -79,7 +79,7 @@ func (p *parser) bound(d screening.Definition, text string, open float64) (float
 }
 
 // traitText turns what was typed for a trait into its canonical text. A trait with listed words and nothing else takes only these.
-func traitText(f screening.Field, value string) (string, error) {
+func traitText(f *screening.Field, value string) (string, error) {
 	for _, w := range f.Words {
 		if strings.EqualFold(w.Word, value) || strings.EqualFold(w.Text, value) {
 			return w.Text, nil
@@ -117,16 +117,16 @@ func (p *parser) addRating(r screening.Rating, typed string) error {
 		}
 	}
 	p.parsed.Claim = p.parsed.Claim.WithRating(r)
-	p.echo(typed, ratingText(p.book, r))
+	p.echo(typed, func() string { return ratingText(p.book, r) })
 	return nil
 }
 
-func (p *parser) addTrait(f screening.Field, text, typed string) error {
+func (p *parser) addTrait(f *screening.Field, text, typed string) error {
 	if old := p.parsed.Claim.Trait(string(f.Name)); old != "" && old != text {
 		return problem(string(f.Name), "is claimed twice: %s, then %s", shown(old), shown(text))
 	}
 	p.parsed.Claim = p.parsed.Claim.WithTrait(string(f.Name), text)
-	p.echo(typed, f.Label+" "+clean(text))
+	p.echo(typed, func() string { return f.Label + " " + clean(text) })
 	return nil
 }
 

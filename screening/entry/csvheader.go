@@ -43,16 +43,16 @@ func sniff(line string, known func(string) bool) byte {
 	for _, delimiter := range []byte{',', ';', '\t'} {
 		r := records{delimiter: delimiter, in: nil}
 		cells, err := r.header(line)
+		score := len(cells)
 		if err != nil {
-			continue
+			score = MaxColumns // too many columns, most likely: say so
 		}
-		score := 0
 		for _, cell := range cells {
 			if known(cell) {
 				score += MaxColumns
 			}
 		}
-		if score += len(cells); score > bestScore {
+		if score > bestScore {
 			best, bestScore = delimiter, score
 		}
 	}

@@ -8,9 +8,10 @@ import (
 	"goodbin/screening/quantity"
 )
 
-// number reads one value of a characteristic. Where the file's delimiter leaves the comma to be nothing but a decimal comma, it is one.
+// number reads one value of a characteristic. A comma is a decimal comma where the file's delimiter leaves it to be nothing else, and after a
+// lone zero, which begins no thousands: 0,061.
 func (p *parser) number(d screening.Definition, text string) (quantity.Value, error) {
-	if p.decimalComma && strings.Count(text, ",") == 1 && !strings.Contains(text, ".") {
+	if (p.decimalComma || zeroBeforeComma(text)) && strings.Count(text, ",") == 1 && !strings.Contains(text, ".") {
 		text = strings.Replace(text, ",", ".", 1)
 	}
 	v, err := quantity.Parse(text, d.Unit)
@@ -23,6 +24,11 @@ func (p *parser) number(d screening.Definition, text string) (quantity.Value, er
 	return v, nil
 }
 
+func zeroBeforeComma(text string) bool {
+	before, _, _ := strings.Cut(strings.TrimLeft(text, "<>=≤≥+- "), ",")
+	return before == "0"
+}
+
 // named says of which characteristic a value is wrong. A value of another unit is the commonest slip: the error names what it is and what
 // it should be.
 func named(d screening.Definition, err error) error {
@@ -33,7 +39,11 @@ func named(d screening.Definition, err error) error {
 	if len(q.Meanings) > 0 {
 		return &Error{Of: string(d.Name), Problem: shown(q.Text) + " " + q.Problem, Meanings: q.Meanings}
 	}
-	return problem(string(d.Name), "%s %s", shown(q.Text), strings.Replace(q.Problem, "; want ", "; "+string(d.Name)+" is ", 1))
+	said := q.Problem
+	if !strings.Contains(d.Unit.Noun(), string(d.Name)) {
+		said = strings.Replace(said, "; want ", "; "+string(d.Name)+" is ", 1)
+	}
+	return problem(string(d.Name), "%s %s", shown(q.Text), said)
 }
 
 // plain reads a value that is neither a bound nor over-range.

@@ -9,7 +9,7 @@ import (
 )
 
 // reading reads the value of a reading: x, ..x, x.., <x, >x, OL, or repeats.
-func (p *parser) reading(t target, text string) (screening.Reading, error) {
+func (p *parser) reading(t *target, text string) (screening.Reading, error) {
 	r := screening.Reading{Of: t.field.Name, Section: t.section, At: t.at, Unit: t.field.Unit, Typed: text}
 	if isOver(text) {
 		over := t.field.Over
@@ -24,13 +24,16 @@ func (p *parser) reading(t target, text string) (screening.Reading, error) {
 	if err != nil {
 		return r, err
 	}
+	if len(items) == 1 {
+		return p.single(&t.field, r, items[0])
+	}
 	series := make([]screening.Reading, 0, len(items))
 	for _, item := range items {
 		one := r
-		if one, err = p.single(t.field, one, item); err != nil {
+		if one, err = p.single(&t.field, one, item); err != nil {
 			return r, err
 		}
-		if len(items) > 1 && one.Sense != quantity.Exactly {
+		if one.Sense != quantity.Exactly {
 			return r, problem(string(t.field.Name), "%s is a bound, and repeats are values", shown(item))
 		}
 		series = append(series, one)
@@ -41,7 +44,7 @@ func (p *parser) reading(t target, text string) (screening.Reading, error) {
 }
 
 // single reads one value with its sense.
-func (p *parser) single(f screening.Field, r screening.Reading, text string) (screening.Reading, error) {
+func (p *parser) single(f *screening.Field, r screening.Reading, text string) (screening.Reading, error) {
 	value, sense := text, quantity.Exactly
 	if v, ok := strings.CutPrefix(value, ".."); ok {
 		value, sense = v, quantity.AtMost
@@ -63,7 +66,7 @@ func (p *parser) single(f screening.Field, r screening.Reading, text string) (sc
 		sense = n.Sense
 	}
 	r.Value, r.Sense, r.Step = n.Number, sense, n.Step
-	plausible, err := screening.Plausible(f, r)
+	plausible, err := screening.Plausible(*f, r)
 	if err != nil {
 		return r, problem(string(f.Name), "%s: %s", shown(text), err)
 	}

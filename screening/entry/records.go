@@ -37,7 +37,6 @@ type records struct {
 	line      int      // number of the last line read, from 1
 	pending   []string // lines read ahead while a quote was open, to be read again
 	fields    []string
-	err       error // what ended the input before its end
 }
 
 func newRecords(in io.Reader) *records {

@@ -42,6 +42,7 @@ type parser struct {
 	parsed Parsed
 	// decimalComma is set where the file's delimiter leaves the comma to be nothing but a decimal comma.
 	decimalComma bool
+	quiet        bool // no echo
 }
 
 // word takes one word.
@@ -58,7 +59,7 @@ func (p *parser) word(word string) error {
 	if err != nil {
 		return err
 	}
-	return p.assign(t, word[i+1:], word)
+	return p.assign(&t, word[i+1:], word)
 }
 
 // tidy trims a word and makes one sign of the minus signs that people paste.
@@ -184,7 +185,7 @@ func kindWithArticle(k screening.Kind) string {
 }
 
 // assign gives a target its value.
-func (p *parser) assign(t target, value, typed string) error {
+func (p *parser) assign(t *target, value, typed string) error {
 	value = strings.TrimSpace(value)
 	if value == "" {
 		return problem(t.name, "the value is missing")
@@ -196,7 +197,7 @@ func (p *parser) assign(t target, value, typed string) error {
 			return err
 		}
 		p.parsed.Readings = append(p.parsed.Readings, r)
-		p.echo(typed, readingText(t.field, r))
+		p.echo(typed, func() string { return readingText(t.field, r) })
 		return nil
 	case toRating:
 		r, err := p.rating(t, value)
@@ -205,11 +206,11 @@ func (p *parser) assign(t target, value, typed string) error {
 		}
 		return p.addRating(r, typed)
 	case toTrait:
-		text, err := traitText(t.field, value)
+		text, err := traitText(&t.field, value)
 		if err != nil {
 			return err
 		}
-		return p.addTrait(t.field, text, typed)
+		return p.addTrait(&t.field, text, typed)
 	case toSeen:
 		return p.seen(value, typed)
 	}
@@ -218,7 +219,7 @@ func (p *parser) assign(t target, value, typed string) error {
 		return problem(t.name, "%s is no count; write how often the part was treated: treated=1", shown(value))
 	}
 	p.parsed.Treated = n
-	p.echo(typed, "treated "+strconv.Itoa(n)+" times before")
+	p.echo(typed, func() string { return "treated " + strconv.Itoa(n) + " times before" })
 	return nil
 }
 
@@ -230,7 +231,7 @@ func (p *parser) seen(value, typed string) error {
 			for _, c := range p.book.Look {
 				p.parsed.Look = append(p.parsed.Look, screening.Observation{Check: c.Name})
 			}
-			p.echo(typed, "looked at, and sound")
+			p.echo(typed, func() string { return "looked at, and sound" })
 			continue
 		}
 		c, ok := checkOf(p.book, word)
@@ -238,7 +239,7 @@ func (p *parser) seen(value, typed string) error {
 			return p.unknownSight(word)
 		}
 		p.parsed.Look = append(p.parsed.Look, screening.Observation{Check: c.Name, Fault: true})
-		p.echo(typed, "seen: "+word)
+		p.echo(typed, func() string { return "seen: " + word })
 	}
 	return nil
 }
@@ -270,6 +271,10 @@ func (p *parser) unknownSight(word string) error {
 	return e.hint("write %s", orList(words))
 }
 
-func (p *parser) echo(typed, meaning string) {
-	p.parsed.Echo = append(p.parsed.Echo, clean(typed)+": "+meaning)
+// echo says what a word was taken as. The rows of a file are not echoed, and the text is made only where it is.
+func (p *parser) echo(typed string, meaning func() string) {
+	if p.quiet {
+		return
+	}
+	p.parsed.Echo = append(p.parsed.Echo, clean(typed)+": "+meaning())
 }

@@ -24,12 +24,16 @@ func (e *Error) Error() string {
 
 const quotedRunes = 40
 
-// Quote returns text in double quotes, fit for a screen: control and escape characters are left out and it is cut to 40 characters.
+// Quote returns text in double quotes, fit for a screen: control and escape characters are left out, every sort of space is an ordinary
+// one, and it is cut to 40 characters.
 func Quote(text string) string {
 	var b strings.Builder
 	b.WriteByte('"')
 	n := 0
 	for _, r := range text {
+		if unicode.Is(unicode.Zs, r) {
+			r = ' '
+		}
 		if !unicode.IsPrint(r) || r == unicode.ReplacementChar {
 			continue
 		}

@@ -3,134 +3,194 @@ package quantity
 import (
 	"math"
 	"strconv"
-	"strings"
 )
 
-type siPrefix struct {
-	exponent int
-	letter   string
-}
-
-// prefixes are those that each sort of unit is printed with, the largest first. Capacitances have neither milli nor kilo: the trade prints
-// 2200 µF.
-var (
-	allPrefixes   = []siPrefix{{9, "G"}, {6, "M"}, {3, "k"}, {0, ""}, {-3, "m"}, {-6, "µ"}, {-9, "n"}, {-12, "p"}}
-	faradPrefixes = []siPrefix{{0, ""}, {-6, "µ"}, {-9, "n"}, {-12, "p"}}
-	smallPrefixes = []siPrefix{{0, ""}, {-3, "m"}, {-6, "µ"}, {-9, "n"}, {-12, "p"}}
+const (
+	// shortDigits are what Short rounds to: with 13 significant digits a value reads back within 5·10⁻¹³ of itself.
+	shortDigits = 13
+	// mostDigits are those that every float64 holds.
+	mostDigits = 15
 )
-
-const shortDigits = 12
 
 // Format prints x (SI) in engineering notation with this many significant digits: 770e-6 A with 3 is "770 µA". With digits ≤ 0 it is the
-// shortest text that reads back to 12 significant digits. NaN prints as "–".
+// shortest text that reads back to 12 significant digits. Capacitances have neither milli nor kilo (2200 µF), plain numbers and
+// temperatures no prefix, ratios print in percent, whole minutes as minutes. NaN prints as "–", an infinity as "∞" or "-∞".
 func Format(x float64, unit Unit, digits int) string {
-	switch {
-	case math.IsNaN(x):
-		return "–"
-	case math.IsInf(x, 1):
-		return "∞"
-	case math.IsInf(x, -1):
-		return "-∞"
-	}
-	switch unit {
-	case One, Celsius:
-		return join(number(x, digits), "", unit)
-	case Ratio:
-		return join(number(x*100, digits), "", unit)
-	case Second:
-		if m := x / 60; math.Abs(m) >= 1 && m == math.Trunc(m) && digits <= 0 {
-			return number(m, 0) + " min"
-		}
-	}
-	p := choosePrefix(x, unit, digits)
-	return join(number(shift(x, -p.exponent), digits), p.letter, unit)
+	var buf [bufferSize]byte
+	return string(appendFormat(buf[:0], x, unit, digits, &printedSigns))
 }
 
-// FormatASCII is [Format] in ASCII: "u" for µ, "ohm" for Ω, "C" for °C, "inf" for ∞.
+// FormatASCII is [Format] in ASCII: "u" for µ, "ohm" for Ω, "C" for °C, "inf" for ∞, "-" for NaN.
 func FormatASCII(x float64, unit Unit, digits int) string {
-	return asciiText.Replace(Format(x, unit, digits))
+	var buf [bufferSize]byte
+	return string(appendFormat(buf[:0], x, unit, digits, &asciiSigns))
 }
-
-var asciiText = strings.NewReplacer("µ", "u", "Ω", "ohm", "°C", "C", "∞", "inf", "–", "-", "≤", "<=", "≥", ">=", "±", "+-")
 
 // Short is [Format] with the shortest text that [Parse] reads back to 12 significant digits.
 func Short(x float64, unit Unit) string { return Format(x, unit, 0) }
 
-// String prints a value with the digits that its step justifies and with its sense: "> 400 V", "2010 µF", "OL".
-func (v Value) String() string {
-	if v.Over {
-		return "OL"
-	}
-	digits := 0
-	if v.Step > 0 && v.Number != 0 {
-		digits = max(1, int(math.Floor(math.Log10(math.Abs(v.Number))+1e-9))-int(math.Floor(math.Log10(v.Step)+1e-9))+1)
-	}
-	text := Format(v.Number, v.Unit, min(digits, shortDigits))
-	switch v.Sense {
-	case AtLeast:
-		return "> " + text
-	case AtMost:
-		return "< " + text
-	}
-	return text
+// bufferSize holds any value that a bench sees, so that printing allocates the string only.
+const bufferSize = 48
+
+// signs are the characters outside digits and plain letters.
+type signs struct {
+	ascii                    bool
+	micro, unknown, infinity string
 }
 
-func join(number, prefix string, unit Unit) string {
-	if prefix == "" && unit == One {
-		return number
+var (
+	printedSigns = signs{micro: "µ", unknown: "–", infinity: "∞"}
+	asciiSigns   = signs{ascii: true, micro: "u", unknown: "-", infinity: "inf"}
+)
+
+func appendFormat(b []byte, x float64, unit Unit, digits int, g *signs) []byte {
+	switch {
+	case math.IsNaN(x):
+		return append(b, g.unknown...)
+	case math.IsInf(x, 1):
+		return append(b, g.infinity...)
+	case math.IsInf(x, -1):
+		return append(append(b, '-'), g.infinity...)
 	}
-	return number + " " + prefix + unit.Symbol()
+	if unit == Second && wholeMinutes(x) {
+		return append(appendPlaced(b, round(x/60, 0), 0), " min"...)
+	}
+	d := round(x, digits)
+	p := choosePrefix(&d, unit)
+	return appendUnit(appendPlaced(b, d, p), p, unit, g)
 }
 
-func shift(x float64, e int) float64 {
-	if e < 0 {
-		return x / math.Pow10(-e)
-	}
-	return x * math.Pow10(e)
+func wholeMinutes(x float64) bool { return math.Abs(x) >= 60 && math.Mod(x, 60) == 0 }
+
+// decimal is a number rounded to n significant digits: d.ddd·10^exponent. Laying the digits out, instead of scaling the number, keeps
+// every printed digit right.
+type decimal struct {
+	digits   [mostDigits]byte
+	n        int
+	exponent int
+	negative bool
 }
 
-// choosePrefix takes the largest prefix that leaves one digit or more before the decimal sign, after rounding.
-func choosePrefix(x float64, unit Unit, digits int) siPrefix {
-	list := allPrefixes
-	switch unit {
-	case Farad:
-		list = faradPrefixes
-	case Second, Metre, Coulomb:
-		list = smallPrefixes
-	}
-	if x == 0 {
-		return siPrefix{}
-	}
+// round rounds to this many significant digits; with digits ≤ 0 to shortDigits without their trailing zeros.
+func round(x float64, digits int) decimal {
+	want := min(digits, mostDigits)
 	if digits <= 0 {
-		digits = shortDigits
+		want = shortDigits
 	}
-	x = math.Abs(rounded(x, digits))
-	for _, p := range list {
-		if shift(x, -p.exponent) >= 1-1e-14 {
-			return p
+	d := decimal{negative: x < 0}
+	if x == 0 {
+		d.digits[0], d.n = '0', 1
+		return d
+	}
+	var buf [32]byte
+	text := strconv.AppendFloat(buf[:0], math.Abs(x), 'e', want-1, 64) // d.ddde±xx
+	i := 0
+	for ; text[i] != 'e'; i++ {
+		if text[i] != '.' {
+			d.digits[d.n] = text[i]
+			d.n++
 		}
 	}
-	return list[len(list)-1]
+	for _, c := range text[i+2:] {
+		d.exponent = d.exponent*10 + int(c-'0')
+	}
+	if text[i+1] == '-' {
+		d.exponent = -d.exponent
+	}
+	if digits <= 0 {
+		for d.n > 1 && d.digits[d.n-1] == '0' {
+			d.n--
+		}
+	}
+	return d
 }
 
-func rounded(x float64, digits int) float64 {
-	r, _ := strconv.ParseFloat(strconv.FormatFloat(x, 'e', digits-1, 64), 64)
-	return r
+// choosePrefix returns the power of ten of the largest prefix that leaves a digit before the decimal sign.
+func choosePrefix(d *decimal, unit Unit) int {
+	if d.digits[0] == '0' {
+		return ratioExponent(unit)
+	}
+	p := 9
+	for p > -12 && (p > d.exponent || !prints(p, unit)) {
+		p -= 3
+	}
+	if !prints(p, unit) {
+		return ratioExponent(unit)
+	}
+	return p
 }
 
-// number prints without exponent and without a negative zero.
-func number(x float64, digits int) string {
-	if x == 0 {
-		return "0"
+// prints reports whether values of a unit are printed with the prefix 10^p.
+func prints(p int, unit Unit) bool {
+	switch {
+	case unit >= units || unit == One || unit == Celsius || unit == Ratio:
+		return false
+	case p == 0:
+		return true
+	case unit == Farad && p == -3:
+		return false // the trade prints 2200 µF
+	case p == 3 && (unit == Metre || unit == Coulomb):
+		return false
 	}
-	shortest := digits <= 0
-	if shortest {
-		digits = shortDigits
+	return prefixRange[unit].low <= p && p <= prefixRange[unit].high
+}
+
+// Beyond these powers of ten a number is printed as 1.5e-12 instead of in a row of zeros.
+const longestZeros, longestNumber = -7, 15
+
+// appendPlaced prints d/10^p.
+func appendPlaced(b []byte, d decimal, p int) []byte {
+	if d.negative {
+		b = append(b, '-')
 	}
-	x = rounded(x, digits)
-	if shortest {
-		return strconv.FormatFloat(x, 'f', -1, 64)
+	digits := d.digits[:d.n]
+	whole := d.exponent - p + 1 // digits before the decimal sign
+	if d.digits[0] == '0' {
+		whole = 1
 	}
-	decimals := digits - 1 - int(math.Floor(math.Log10(math.Abs(x))+1e-12))
-	return strconv.FormatFloat(x, 'f', max(decimals, 0), 64)
+	if whole-1 < longestZeros || whole-1 > longestNumber {
+		b = appendSplit(b, digits, 1)
+		return strconv.AppendInt(append(b, 'e'), int64(whole-1), 10)
+	}
+	return appendSplit(b, digits, whole)
+}
+
+// appendSplit prints digits with the decimal sign after this many of them.
+func appendSplit(b, digits []byte, whole int) []byte {
+	if whole <= 0 {
+		b = append(b, '0', '.')
+		for ; whole < 0; whole++ {
+			b = append(b, '0')
+		}
+		return append(b, digits...)
+	}
+	if whole >= len(digits) {
+		b = append(b, digits...)
+		for range whole - len(digits) {
+			b = append(b, '0')
+		}
+		return b
+	}
+	b = append(b, digits[:whole]...)
+	b = append(b, '.')
+	return append(b, digits[whole:]...)
+}
+
+func appendUnit(b []byte, p int, unit Unit, g *signs) []byte {
+	symbol := unit.Symbol()
+	if g.ascii {
+		symbol = unit.ASCII()
+	}
+	if symbol == "" {
+		return b
+	}
+	b = append(b, ' ')
+	switch {
+	case p == ratioExponent(unit):
+	case p == -6:
+		b = append(b, g.micro...)
+	default:
+		b = append(b, "pnum kMG"[(p+12)/3])
+	}
+	return append(b, symbol...)
 }

@@ -2,24 +2,30 @@ package quantity
 
 import "strings"
 
-// matched is what the letters after a number mean in one unit.
+// matched is what the letters of a number mean in one unit.
 type matched struct {
-	ok        bool
-	spelt     bool    // the unit itself was written
-	exponent  int     // power of ten
-	factor    float64 // 60 for minutes, else 1
-	ambiguous string  // "" or which ambiguity
+	ok       bool
+	spelt    bool    // the unit itself was written
+	exponent int     // power of ten
+	factor   float64 // 60 for minutes, else 1
 }
 
-// unitWords are the spellings of a unit, the prefix before them. Old print has its own words with the prefix in them.
+// scale is what one typed unit is worth, in SI.
+func (m matched) scale() float64 { return scaled(m.factor, m.exponent) }
+
+func means(exponent int, spelt bool) matched {
+	return matched{ok: true, spelt: spelt, exponent: exponent, factor: 1}
+}
+
+// unitWords are the spellings of a unit that follow a prefix.
 var unitWords = [units][]string{
 	Farad:   {"F", "f"},
-	Ohm:     {"Ω", "\u2126", "ohms", "ohm", "Ohm", "OHM", "R"},
+	Ohm:     {"Ω", "\u2126", "ohms", "ohm", "Ohms", "Ohm", "OHMS", "OHM", "R"},
 	Volt:    {"V", "v"},
 	Ampere:  {"A", "a"},
 	Hertz:   {"Hz", "hz", "HZ"},
 	Second:  {"s", "sec"},
-	Celsius: {"°C", "C", "degC", "°c"},
+	Celsius: {"°C", "°c", "ºC", "℃", "degC", "C"},
 	Watt:    {"W", "w"},
 	Henry:   {"H"},
 	Ratio:   {"%"},
@@ -27,19 +33,54 @@ var unitWords = [units][]string{
 	Coulomb: {"C"},
 }
 
-// oldPrint holds the words of old print that carry their prefix, by lower case.
-var oldPrint = [...]struct {
+// printWord is a word that carries its prefix in it, as old print and old hands write it in any case of letter.
+type printWord struct {
 	word     string
 	exponent int
-}{
-	{"mfd", -6}, {"mfd.", -6}, {"mmf", -12}, {"mmfd", -12}, {"uuf", -12}, {"µµf", -12}, {"μμf", -12},
 }
 
-// match finds what a suffix means in a unit. code says that the suffix's letter stood for the decimal sign.
-func match(suffix string, unit Unit, code bool) matched {
+var (
+	faradPrint = [...]printWord{
+		{"mfd", -6}, {"mfd.", -6}, {"mmf", -12}, {"mmfd", -12}, {"uuf", -12},
+		{"μμf", -12}, // EqualFold takes U+00B5 and U+03BC for the same letter
+		{"uf", -6}, {"nf", -9}, {"pf", -12},
+	}
+	ohmPrint = [...]printWord{{"meg", 6}, {"megohm", 6}, {"megohms", 6}}
+)
+
+func printed(list []printWord, word string) matched {
+	for i := range list {
+		if strings.EqualFold(list[i].word, word) {
+			return means(list[i].exponent, true)
+		}
+	}
+	return matched{}
+}
+
+// match finds what the letters of a number mean in a unit: the letter that stands for the decimal sign, if any, and the suffix.
+func match(letter, suffix string, unit Unit) matched {
+	if letter != "" {
+		return matchLetter(letter, suffix, unit)
+	}
+	if suffix == "" {
+		return means(ratioExponent(unit), false)
+	}
+	if unit == Metre && suffix == "m" {
+		return means(0, true) // Short prints metres so; with a prefix m is milli here too
+	}
+	if e, ok := prefix(suffix, unit); ok {
+		return means(e, false)
+	}
 	switch unit {
 	case Farad:
-		if m := matchFarad(suffix, code); m.ok || m.ambiguous != "" {
+		if oldMicroOrMilli(suffix) {
+			return matched{}
+		}
+		if m := printed(faradPrint[:], suffix); m.ok {
+			return m
+		}
+	case Ohm:
+		if m := printed(ohmPrint[:], suffix); m.ok {
 			return m
 		}
 	case Second:
@@ -49,110 +90,119 @@ func match(suffix string, unit Unit, code bool) matched {
 		case "h":
 			return matched{ok: true, spelt: true, factor: 3600}
 		}
-	case Metre:
-		if suffix == "m" {
-			return matched{ok: true, spelt: true, factor: 1}
-		}
-	case Ratio:
-		if suffix == "%" {
-			return matched{ok: true, spelt: true, exponent: -2, factor: 1}
-		}
-		return matched{ok: suffix == "", exponent: -2, factor: 1}
 	}
-	if unit == Ohm && suffix == "L" && code {
-		return matched{ok: true, exponent: -3, factor: 1}
-	}
-	if e, ok := prefix(suffix, unit); ok {
-		return matched{ok: true, exponent: e, factor: 1}
-	}
-	for _, word := range unitWords[min(unit, units-1)] {
+	for _, word := range unitWords[unit] {
 		if head, ok := strings.CutSuffix(suffix, word); ok {
 			if e, ok := prefix(strings.TrimSpace(head), unit); ok {
-				return matched{ok: true, spelt: true, exponent: e, factor: 1}
+				return means(e+ratioExponent(unit), true)
 			}
 		}
 	}
 	return matched{}
 }
 
-// matchFarad knows the old print and the letters that mean something else on a capacitor.
-func matchFarad(suffix string, code bool) matched {
-	for _, p := range oldPrint {
-		if strings.EqualFold(suffix, p.word) {
-			return matched{ok: true, spelt: true, exponent: p.exponent, factor: 1}
+// ratioExponent is the power of ten in which people write a unit's numbers: a ratio is typed and printed in percent.
+func ratioExponent(unit Unit) int {
+	if unit == Ratio {
+		return -2
+	}
+	return 0
+}
+
+// letterUnits are the letters that stand for a unit instead of a prefix, with their power of ten (IEC 60062: R and L for ohms, F for
+// farads; V by trade).
+var letterUnits = [...]struct {
+	letter   string
+	unit     Unit
+	exponent int
+}{{"R", Ohm, 0}, {"L", Ohm, -3}, {"F", Farad, 0}, {"V", Volt, 0}}
+
+// matchLetter reads 4k7, 4k7 ohm, R47: the letter is prefix or unit, and after the digits the unit's word may follow.
+func matchLetter(letter, suffix string, unit Unit) matched {
+	for _, l := range letterUnits {
+		if l.letter == letter {
+			ok := l.unit == unit && (suffix == "" || unit == Ohm && suffix != "R" && isWord(suffix, Ohm))
+			return matched{ok: ok, spelt: true, exponent: l.exponent, factor: 1}
 		}
 	}
-	switch {
-	case suffix == "MF" || suffix == "mf" || suffix == "Mf":
-		return matched{ambiguous: suffix, spelt: true}
-	case suffix == "K" && !code, suffix == "M" && !code:
-		return matched{ambiguous: suffix}
+	e, ok := prefix(letter, unit)
+	if !ok || suffix != "" && !isWord(suffix, unit) {
+		return matched{}
 	}
-	return matched{}
+	return means(e, suffix != "")
+}
+
+func isWord(word string, unit Unit) bool {
+	for _, w := range unitWords[unit] {
+		if w == word {
+			return true
+		}
+	}
+	return false
+}
+
+// letterUnit is what a value means by trade when no unit is typed: IEC 60062 has k, M, G, T for ohms only and p, n, µ, m in the place of
+// the decimal sign for farads only. A prefix m after a number, and T, say nothing by themselves.
+func letterUnit(letter, suffix string) Unit {
+	switch letter + suffix {
+	case "k", "K", "M", "G":
+		return Ohm
+	case "p", "n", "u", "µ", "μ":
+		return Farad
+	}
+	switch letter {
+	case "T":
+		return Ohm
+	case "m":
+		return Farad
+	}
+	return One
+}
+
+// prefixRange holds the powers of ten, from lowest to highest prefix, that a unit takes when read. Farads take no kilo and no mega: K and M
+// after a capacitor's number are tolerance letters. A time in kiloseconds is a slip.
+var prefixRange = [units]struct{ low, high int }{
+	One:     {-12, 9},
+	Farad:   {-12, -3},
+	Ohm:     {-12, 12},
+	Volt:    {-12, 9},
+	Ampere:  {-12, 9},
+	Hertz:   {-3, 9},
+	Second:  {-12, -3},
+	Watt:    {-12, 9},
+	Henry:   {-12, 9},
+	Metre:   {-12, 3},
+	Coulomb: {-12, 3},
 }
 
 // prefix returns the power of ten of an SI prefix that the unit takes; "" is 0.
 func prefix(p string, unit Unit) (int, bool) {
+	e := 0
 	switch p {
 	case "":
 		return 0, true
-	case "p", "n", "u", "µ", "μ", "m", "k", "K", "M", "G", "T":
+	case "p":
+		e = -12
+	case "n":
+		e = -9
+	case "u", "µ", "μ":
+		e = -6
+	case "m":
+		e = -3
+	case "k", "K":
+		e = 3
+	case "M":
+		e = 6
+	case "G":
+		e = 9
+	case "T":
+		e = 12
 	default:
 		return 0, false
 	}
-	if unit == Celsius || unit == Ratio {
-		return 0, false
-	}
-	small := unit != Hertz || p == "m"
-	switch p {
-	case "p":
-		return -12, small
-	case "n":
-		return -9, small
-	case "u", "µ", "μ":
-		return -6, small
-	case "m":
-		return -3, true
-	case "k", "K":
-		return 3, unit != Farad && unit != Second
-	case "M":
-		return 6, unit != Farad && unit != Second && unit != Metre && unit != Coulomb
-	case "G":
-		return 9, unit == Ohm || unit == Hertz
-	}
-	return 12, unit == Ohm
+	r := prefixRange[unit]
+	return e, r.low <= e && e <= r.high
 }
 
-// refusal says why a suffix does not fit the unit that was wanted.
-func (s *scanned) refusal(text string, unit Unit, m matched) error {
-	e := &Error{Text: text, Unit: unit}
-	number, _ := strings.CutSuffix(strings.TrimSpace(text), s.suffix)
-	number = strings.TrimSpace(number)
-	switch m.ambiguous {
-	case "MF", "mf", "Mf":
-		e.Problem = "is ambiguous"
-		e.Meanings = []string{number + " microfarad in old print (write " + number + "uF)", number + " millifarad (write " + number + "mF)"}
-		return e
-	case "K":
-		e.Problem = "is ambiguous on a capacitor"
-		e.Meanings = []string{number + " pF with the tolerance letter K, ±10 %", number + " thousand pF in old print (write " + number + "nF)"}
-		return e
-	case "M":
-		e.Problem = "is not a capacitance: M after a capacitor's number is the tolerance letter ±20 %; write the unit, such as " + number + "uF"
-		return e
-	}
-	for u := Farad; u < units; u++ {
-		if u == unit {
-			continue
-		}
-		if other := match(s.suffix, u, s.code); other.ok && other.spelt {
-			e.Problem = "is " + u.Noun() + "; want " + unit.Noun() + " such as " + unit.Example()
-			return e
-		}
-	}
-	e.Problem = "is not " + unit.Noun() + " such as " + unit.Example()
-	if s.suffix != "" {
-		e.Problem += "; " + Quote(s.suffix) + " is not understood"
-	}
-	return e
-}
+// oldMicroOrMilli reports the spellings that are microfarads in old print and millifarads to everybody else.
+func oldMicroOrMilli(suffix string) bool { return suffix == "MF" || suffix == "mf" || suffix == "Mf" }

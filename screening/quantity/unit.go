@@ -70,13 +70,14 @@ const (
 )
 
 // String returns "exactly", "at least" or "at most".
-func (s Sense) String() string { return [...]string{"exactly", "at least", "at most"}[min(int(s), 2)] }
-
-// Value is one number as read.
-type Value struct {
-	Number float64 // SI; 0 where Over
-	Unit   Unit
-	Sense  Sense
-	Step   float64 // value of one unit in the last typed digit: what the counts of a meter's accuracy refer to
-	Over   bool    // the meter showed over-range (OL); what that proves depends on what was measured
+func (s Sense) String() string {
+	switch s {
+	case Exactly:
+		return "exactly"
+	case AtLeast:
+		return "at least"
+	case AtMost:
+		return "at most"
+	}
+	return "in no known sense"
 }
