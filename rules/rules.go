@@ -8,6 +8,7 @@ import (
 	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
 	"goodbin/rules/resistor"
+	"goodbin/rules/zener"
 	"goodbin/screening"
 )
 
@@ -16,6 +17,7 @@ func All() screening.Kinds {
 	return screening.Kinds{
 		electrolytic.Book(),
 		diode.Book(),
+		zener.Book(),
 		bipolar.Book(),
 		resistor.Book(),
 	}

@@ -120,7 +120,7 @@ func (j *judging) hold(f *Finding, r *Reading) {
 			j.holdSimply(f, r.Value)
 			break
 		}
-		j.decide(f, f.Probability, below, above)
+		j.decide(f, r, below, above)
 	case quantity.AtMost:
 		// The true value is no more than x: it can clear the upper bound and refute the lower one.
 		j.holdOneSided(f, 1-above, below, Below, math.IsInf(l.Low, -1) || l.Low <= 0 && j.nonNegative(l))
@@ -165,7 +165,13 @@ func (j *judging) holdOneSided(f *Finding, clear, refuted float64, side Side, op
 // nonNegative reports whether the limit's characteristic cannot be negative, so that a lower bound at or below zero is no bound.
 func (j *judging) nonNegative(l *Limit) bool { return l.Unit != quantity.Celsius }
 
-func (j *judging) decide(f *Finding, p, below, above float64) {
+// decide passes or fails a limit by probability. A meter that keeps its specification is never further off than that, so a reading fails a
+// part only where the bound lies beyond the specification too: a poor meter never rejects a perfect part.
+func (j *judging) decide(f *Finding, r *Reading, below, above float64) {
+	p, spec := f.Probability, r.Spec
+	if f.Converted != nil {
+		spec = 0
+	}
 	if below > above {
 		f.Side = Below
 	} else if above > 0 {
@@ -174,9 +180,9 @@ func (j *judging) decide(f *Finding, p, below, above float64) {
 	switch {
 	case p >= j.policy.threshold(&f.Limit):
 		f.Outcome, f.NearLimit = Pass, p < j.policy.Accept
-	case below >= j.policy.Reject:
+	case below >= j.policy.Reject && f.Limit.Low-r.Value > spec:
 		f.Outcome, f.Side = Fail, Below
-	case above >= j.policy.Reject:
+	case above >= j.policy.Reject && r.Value-f.Limit.High > spec:
 		f.Outcome, f.Side = Fail, Above
 	default:
 		f.Outcome = Close

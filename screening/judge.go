@@ -87,7 +87,7 @@ func (j *judging) prepare(part Part) []Reading {
 		if !ok {
 			meter = AssumedMeter()
 		}
-		r.U = meter.Uncertainty(*r)
+		r.U, r.Spec = meter.Uncertainty(*r), meter.HalfWidth(*r)
 		r.Assumed = meter.Assumed
 	}
 	return readings

@@ -73,16 +73,24 @@ func (m *Meter) accuracy(of Characteristic, unit quantity.Unit) Accuracy {
 	return m.ByUnit[unit]
 }
 
-// Uncertainty returns the standard uncertainty of a reading taken with this meter, SI: the specification as a rectangular distribution
-// of half-width a, u = a/√3, combined with the scatter of repeats s/√n (JCGM 100, 4.2.3, 4.3.7). Repeats shrink only the scatter; the
-// specification is common to all of them. The half-width is never less than half of the last typed digit. Of an exact meter it is 0.
-func (m *Meter) Uncertainty(r Reading) float64 {
+// HalfWidth returns how far a meter that keeps its specification can be off at this reading, SI: never less than half of the last typed
+// digit, 0 for an exact meter.
+func (m *Meter) HalfWidth(r Reading) float64 {
 	a := m.accuracy(r.Of, r.Unit)
 	if a == (Accuracy{}) {
 		return 0
 	}
-	half := math.Max(a.Relative*math.Abs(r.Value)+a.Counts*r.Step+a.Absolute, r.Step/2)
-	u := half / math.Sqrt(3)
+	return math.Max(a.Relative*math.Abs(r.Value)+a.Counts*r.Step+a.Absolute, r.Step/2)
+}
+
+// Uncertainty returns the standard uncertainty of a reading taken with this meter, SI: the specification as a rectangular distribution
+// of half-width a, u = a/√3, combined with the scatter of repeats s/√n (JCGM 100, 4.2.3, 4.3.7). Repeats shrink only the scatter; the
+// specification is common to all of them. Of an exact meter it is 0.
+func (m *Meter) Uncertainty(r Reading) float64 {
+	u := m.HalfWidth(r) / math.Sqrt(3)
+	if u == 0 {
+		return 0
+	}
 	if n := len(r.Repeats); n > 1 {
 		u = math.Hypot(u, r.Spread()/math.Sqrt(float64(n)))
 	}

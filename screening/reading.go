@@ -23,6 +23,7 @@ type Reading struct {
 
 	// What the judge adds.
 	U         float64   // standard uncertainty, SI
+	Spec      float64   // how far the meter may be off while it keeps its specification, SI; 0 where U is not a meter's
 	Assumed   bool      // U rests on the assumed meter
 	AssumedAt Condition // the part of At that is the field's default, not typed
 	Rule      string    // how it was derived or converted; "" for a reading as taken

@@ -3,6 +3,7 @@ package diode
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"goodbin/rules/types"
@@ -80,13 +81,18 @@ func contradicts(c screening.Claim, row types.Row) error {
 // withRow adds to a claim what the row says and the claim does not.
 func withRow(c screening.Claim, row types.Row) screening.Claim {
 	own := c
+	c.Ratings = slices.Grow(slices.Clone(c.Ratings), len(row.Ratings))
 	for _, r := range row.Ratings {
 		if _, claimed := own.Rating(r.Of, ""); !claimed {
-			c = c.WithRating(r)
+			c.Ratings = append(c.Ratings, r)
 		}
 	}
+	c.Traits = slices.Grow(slices.Clone(c.Traits), len(row.Traits)+1)
 	for _, t := range row.Traits {
-		if old := c.Trait(t.Name); old == "" || old == unknown || t.Name == screening.TraitType {
+		switch old := c.Trait(t.Name); {
+		case old == "":
+			c.Traits = append(c.Traits, t)
+		case old == unknown || t.Name == screening.TraitType && old != t.Text:
 			c = c.WithTrait(t.Name, t.Text)
 		}
 	}

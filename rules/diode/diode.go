@@ -87,7 +87,9 @@ func claims() []screening.Field {
 			Definition: trait(TraitDual, "two diodes in one case"), Trait: true, Example: "dual",
 			Help: "dual, common-cathode, common-anode or series; measure both: vf/1=… vf/2=…",
 			Words: []screening.Word{
-				{Word: "dual", Text: "dual"}, {Word: "common-cathode", Text: "common cathode"}, {Word: "common-anode", Text: "common anode"},
+				{Word: "dual", Text: "dual"},
+				{Word: "common-cathode", Text: "common cathode"},
+				{Word: "common-anode", Text: "common anode"},
 				{Word: "series", Text: "in series"},
 			},
 		},

@@ -1,0 +1,190 @@
+package zener
+
+import (
+	"fmt"
+	"math"
+
+	"goodbin/screening"
+	"goodbin/screening/quantity"
+)
+
+// ladder is the tolerances that Zeners are sold in. As measured nothing closer than asMeasured is claimed: the voltage moves with
+// temperature by up to 0.12 %/K, and a salvaged part's slope is not known (house).
+var ladder = []float64{0.02, 0.05, 0.10, 0.20}
+
+const asMeasuredTolerance = 0.05
+
+// adjust leaves the voltage open where the claim says nothing to hold it against, and says what a failure looks like.
+func adjust(part screening.Part, findings []screening.Finding) ([]screening.Finding, []screening.Reason) {
+	var reasons []screening.Reason
+	for i := range findings {
+		f := &findings[i]
+		if f.Limit.Criterion != voltageCriterion {
+			continue
+		}
+		if f.Limit.Note == noClaim || f.Limit.Note == noCurrent {
+			f.Outcome, f.Probability, f.Margin, f.Unconfirmed, f.Why = screening.Missing, math.NaN(), math.NaN(), false, f.Limit.Note
+			if f.Reading != nil && !f.Reading.At.Has(screening.Current) {
+				f.Why = "the current of the reading is not stated: vz@5mA=…"
+			}
+		}
+		if f.Reading == nil {
+			continue
+		}
+		if f.Outcome == screening.Missing {
+			text := f.Why
+			if f.Converted != nil {
+				text = f.Converted.Rule
+			}
+			reasons = append(reasons, note("%s", text))
+		}
+		if text := failWords(f); text != "" {
+			reasons = append(reasons, note("%s", text))
+		}
+		if text := overPower(part.Claim, f.Reading); text != "" {
+			reasons = append(reasons, note("%s", text))
+		}
+	}
+	return findings, reasons
+}
+
+func failWords(f *screening.Finding) string {
+	e := f.Evidence()
+	switch {
+	case f.Outcome != screening.Fail || e == nil:
+		return ""
+	case e.Value < shortedBelow:
+		return "shorted, or turned round: reversed it drops like any silicon diode"
+	case f.Side == screening.Below:
+		return "below its band it is damaged or soft; if the marking was misread, judge it without a claim"
+	}
+	return "above its band it is not what it says; if the marking was misread, judge it without a claim"
+}
+
+// shortedBelow is a voltage in V below which nothing is a Zener: one forward junction (house).
+const shortedBelow = 1.0
+
+// overPower says where the reading itself was taken above the rated power.
+func overPower(c screening.Claim, r *screening.Reading) string {
+	p, claimed := c.Nominal(screening.Ptot.Name, "")
+	i, stated := r.At.Get(screening.Current)
+	if !claimed || !stated || i*r.Value <= p {
+		return ""
+	}
+	return fmt.Sprintf("that reading put %s into a part of %s", quantity.Format(i*r.Value, quantity.Watt, 2), quantity.Format(p, quantity.Watt, 0))
+}
+
+// lesser answers a voltage too near its edge with a wider tolerance, and one that cannot be held against the claim (none, no test current,
+// taken far from it) with the voltage as measured, at the current at which it was measured.
+func lesser(part screening.Part, findings []screening.Finding) []screening.Lesser {
+	var answers []screening.Lesser
+	for i := range findings {
+		f := &findings[i]
+		if f.Limit.Criterion != voltageCriterion || f.Reading == nil || f.Reading.Sense != quantity.Exactly {
+			continue
+		}
+		switch {
+		case f.Outcome == screening.Close && !f.Unconfirmed:
+			answers = append(answers, wider(part.Claim, f)...)
+		case f.Outcome == screening.Missing:
+			answers = append(answers, asMeasured(part.Claim, f)...)
+		}
+	}
+	return answers
+}
+
+func wider(c screening.Claim, f *screening.Finding) []screening.Lesser {
+	vz, ok := c.Rating(VZ.Name, "")
+	if !ok || !vz.HasNominal() {
+		return nil
+	}
+	had := math.Max(f.Limit.High/vz.Nominal-1, 1-f.Limit.Low/vz.Nominal)
+	var answers []screening.Lesser
+	for _, t := range ladder {
+		if t <= had {
+			continue
+		}
+		text := fmt.Sprintf("±%.0f %% proven; %s to %s not provable with this meter", 100*t, volts(f.Limit.Low), volts(f.Limit.High))
+		if f.Wants.Accuracy > 0 {
+			text += " (needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2) + ")"
+		}
+		answers = append(answers, screening.Lesser{
+			Claim: claimOf(c, vz.Nominal, t, 0), Answers: voltageCriterion, Tolerance: true, Text: text, Source: houseSource,
+		})
+	}
+	return answers
+}
+
+var houseSource = screening.Source{Document: "taken at what was measured", Status: screening.House}
+
+// claimOf is the claim with a voltage of explicit bounds, which the type's row does not replace, and where current is not 0 a test current.
+func claimOf(c screening.Claim, nominal, tolerance, current float64) screening.Claim {
+	c.Ratings = without(without(c.Ratings, VZ.Name), screening.Tolerance.Name)
+	vz := screening.NominalRating(VZ, nominal)
+	vz.Low, vz.High = nominal*(1-tolerance), nominal*(1+tolerance)
+	vz.Typed, vz.Source = fmt.Sprintf("%s ±%.0f %%", volts(nominal), 100*tolerance), houseSource
+	c.Ratings = append([]screening.Rating{vz}, c.Ratings...)
+	if current > 0 {
+		c.Ratings = without(c.Ratings, IZT.Name)
+		izt := screening.NominalRating(IZT, current)
+		izt.Typed = amperes(current)
+		c.Ratings = append(c.Ratings, izt)
+	}
+	return c
+}
+
+// asMeasured keeps the part at its measured voltage and current. Its power stays what was claimed; where nothing was, the smallest for its
+// body must be assumed.
+func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
+	r := f.Reading
+	i, stated := r.At.Get(screening.Current)
+	if !stated || i <= 0 || r.Value < shortedBelow {
+		return nil
+	}
+	nominal := honest(r.Value, r.U)
+	for _, t := range ladder {
+		if t < asMeasuredTolerance {
+			continue
+		}
+		below, above := screening.ConformanceProbability(r.Value, r.U, nominal*(1-t), nominal*(1+t))
+		if 1-below-above < 0.95 {
+			continue
+		}
+		text := fmt.Sprintf("as measured, %s ±%.0f %% at %s", volts(nominal), 100*t, amperes(i))
+		if _, known := c.Nominal(screening.Ptot.Name, ""); !known {
+			text += "; power unknown: assume the smallest for this body"
+		}
+		return []screening.Lesser{{
+			Claim: claimOf(c, nominal, t, i), Answers: voltageCriterion, Text: text, FromMissing: true, Source: houseSource,
+		}}
+	}
+	return nil
+}
+
+// honest rounds x to the decimal place of its standard uncertainty's first digit; to three digits where there is none.
+func honest(x, u float64) float64 {
+	place := math.Floor(math.Log10(math.Abs(x))) - 2
+	if u > 0 {
+		place = math.Max(place, math.Floor(math.Log10(u)))
+	}
+	if place < 0 {
+		scale := math.Pow10(int(-place))
+		return math.Round(x*scale) / scale
+	}
+	scale := math.Pow10(int(place))
+	return math.Round(x/scale) * scale
+}
+
+func untested(part screening.Part, findings []screening.Finding) []string {
+	power := "power (unknown: assume the smallest for this body)"
+	if p, ok := part.Claim.Rating(screening.Ptot.Name, ""); ok {
+		power = "power (rated " + p.String() + ")"
+	}
+	lines := []string{power}
+	for i := range findings {
+		if f := &findings[i]; f.Limit.Criterion == slopeCriterion && f.Outcome == screening.Missing {
+			lines = append(lines, "slope resistance at "+f.Limit.At.String())
+		}
+	}
+	return lines
+}
