@@ -179,29 +179,46 @@ func (c Claim) WithTrait(name, text string) Claim {
 // IsZero reports whether nothing is claimed.
 func (c Claim) IsZero() bool { return len(c.Ratings) == 0 && len(c.Traits) == 0 }
 
-// String prints what the part itself claims in one line, numbers first: "2200 µF 35 V ±20 % 1974". Ratings that a table supplied are left
-// out.
+// String prints what the part itself claims in one line, numbers first: "2200 µF 35 V ±20 % 1974", of a can with sections "32+32 µF 350 V".
+// Ratings that a table supplied are left out.
 func (c Claim) String() string {
 	var words []string
-	for i := 0; i < len(c.Ratings); i++ {
-		r := c.Ratings[i]
-		if r.Typed == "" && r.Source.Status != NoStatus {
-			continue
-		}
-		if r.Section == "" {
+	for i, r := range c.Ratings {
+		switch {
+		case r.Typed == "" && r.Source.Status != NoStatus:
+		case r.Section == "":
 			words = append(words, r.String())
-			continue
+		case !slices.ContainsFunc(c.Ratings[:i], func(o Rating) bool { return o.Of == r.Of && o.Section != "" }):
+			words = append(words, c.bySection(r.Of))
 		}
-		// Sections of one characteristic read as on the can: "8 µF + 8 µF".
-		run := []string{r.String()}
-		for i+1 < len(c.Ratings) && c.Ratings[i+1].Of == r.Of && c.Ratings[i+1].Section != "" {
-			i++
-			run = append(run, c.Ratings[i].String())
-		}
-		words = append(words, strings.Join(run, " + "))
 	}
 	for _, t := range c.Traits {
 		words = append(words, t.Text)
 	}
 	return strings.Join(slices.DeleteFunc(words, func(w string) bool { return w == "" }), " ")
+}
+
+// bySection prints the ratings that sections have of one characteristic as on the can: "32+32 µF", "8+16 µF", and once what is the same
+// for all, as a voltage mostly is.
+func (c Claim) bySection(of Characteristic) string {
+	var texts []string
+	for _, r := range c.Ratings {
+		if r.Of == of && r.Section != "" {
+			texts = append(texts, r.String())
+		}
+	}
+	if of != Capacitance.Name && len(slices.Compact(slices.Clone(texts))) == 1 {
+		return texts[0]
+	}
+	last := texts[len(texts)-1]
+	if _, unit, ok := strings.Cut(last, " "); ok {
+		for i, text := range texts[:len(texts)-1] {
+			number, same := strings.CutSuffix(text, " "+unit)
+			if !same {
+				return strings.Join(texts, " + ")
+			}
+			texts[i] = number
+		}
+	}
+	return strings.Join(texts, "+")
 }

@@ -88,16 +88,19 @@ func (j *judging) tryConversion(part *Part, f *Finding, fit Fit, r *Reading) {
 		why = c.Why
 	}
 	if f.Why == "" {
+		v, absent, _ := fit.Misfit(&r.At, &f.Limit.At)
+		if absent {
+			f.Unstated = v
+		}
 		if why == "" {
-			why = misfitText(fit, r, &f.Limit)
+			why = misfitText(v, absent, r, &f.Limit)
 		}
 		f.Reading, f.Why = r, why
 	}
 }
 
 // misfitText says which condition of a reading is off, or not stated.
-func misfitText(fit Fit, r *Reading, l *Limit) string {
-	v, absent, _ := fit.Misfit(&r.At, &l.At)
+func misfitText(v Variable, absent bool, r *Reading, l *Limit) string {
 	if absent {
 		want, _ := l.At.Get(v)
 		return "the " + v.String() + " of the reading is not stated; the limit holds at " + quantity.Format(want, v.Unit(), 0)

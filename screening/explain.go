@@ -9,13 +9,12 @@ import (
 	"goodbin/screening/quantity"
 )
 
-// explain adds the reasons, what was not tested and the next steps.
+// explain adds the reasons, the decisive ones first and the notes last, what was not tested, and the next steps.
 func (j *judging) explain(r *Judgement, states []criterionState) {
+	notes := r.Reasons
+	r.Reasons = nil
 	for _, s := range r.Stops {
 		r.Reasons = append(r.Reasons, Reason{Code: CodeStop, Text: s.Reason})
-	}
-	for _, s := range states {
-		j.explainCriterion(r, s)
 	}
 	if r.Verdict == Accept && r.RegradedAs == nil {
 		text := "every required reading passes"
@@ -24,13 +23,16 @@ func (j *judging) explain(r *Judgement, states []criterionState) {
 		}
 		r.Reasons = append(r.Reasons, Reason{Code: CodePasses, Text: text})
 	}
-	if l := r.RegradedAs; l != nil {
-		code := CodeLesserClaim
-		if r.Verdict == Accept {
-			code = CodeToleranceProven
-		}
-		r.Reasons = append(r.Reasons, Reason{Code: code, Text: l.Text})
+	if r.Verdict == Accept && r.RegradedAs != nil {
+		r.Reasons = append(r.Reasons, Reason{Code: CodeToleranceProven, Text: r.RegradedAs.Text})
 	}
+	for _, s := range states {
+		j.explainCriterion(r, s)
+	}
+	if r.Verdict != Accept && r.RegradedAs != nil {
+		r.Reasons = append(r.Reasons, Reason{Code: CodeLesserClaim, Text: r.RegradedAs.Text})
+	}
+	r.Reasons = append(r.Reasons, notes...)
 	j.nextSteps(r, states)
 }
 
@@ -52,9 +54,17 @@ func (j *judging) explainCriterion(r *Judgement, s criterionState) {
 			})
 		}
 	}
-	if s.need != Required && s.outcome == Missing && len(s.findings) > 0 {
-		r.NotTested = append(r.NotTested, s.findings[0].Wants)
+	if s.outcome != Missing || len(s.findings) == 0 || r.Verdict == Reject || r.Verdict == Barred {
+		return
 	}
+	first := s.findings[0]
+	if s.need != Required {
+		r.NotTested = append(r.NotTested, first.Wants)
+		return
+	}
+	r.Reasons = append(r.Reasons, Reason{
+		Code: CodeMeasure, Of: first.Limit.On, Text: j.name(first.Limit.On, first.Limit.Section) + ": " + first.Why,
+	})
 }
 
 // failText says what was read and what was allowed: "ESR reads 2.40 Ω; at most 151 mΩ at 120 Hz".
@@ -112,7 +122,9 @@ func (j *judging) nextSteps(r *Judgement, states []criterionState) {
 	case Accept, Regrade:
 		r.Next = append(r.Next, Step{Code: CodeStore, Text: "STORE it with its id"})
 	case Reject:
-		r.Next = append(r.Next, Step{Code: CodeScrap, Text: "SCRAP it, or mark it so that it is not used"})
+		if len(r.Stops) == 0 {
+			r.Next = append(r.Next, Step{Code: CodeScrap, Text: "SCRAP it, or mark it so that it is not used"})
+		}
 	case Undecided:
 		r.Next = j.settle(r, states)
 	case Treat:
@@ -172,6 +184,10 @@ func (j *judging) settle(r *Judgement, states []criterionState) []Step {
 func (j *judging) settleStep(s criterionState, f *Finding) Step {
 	name := j.name(f.Limit.On, f.Limit.Section)
 	switch {
+	case s.outcome == Missing && f.Unstated != NoVariable:
+		return Step{Code: CodeMeasure, Text: "STATE the " + f.Unstated.String() + " of the reading: " + name, Gap: f.Wants}
+	case s.outcome == Missing && f.Reading == nil && j.ask(f.Limit.On) != "":
+		return Step{Code: CodeMeasure, Text: j.ask(f.Limit.On), Gap: f.Wants}
 	case s.outcome == Missing:
 		text := "MEASURE " + name
 		if !f.Limit.At.IsZero() {
@@ -190,6 +206,13 @@ func (j *judging) settleStep(s criterionState, f *Finding) Step {
 		text += ": needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2)
 	}
 	return Step{Code: CodeRepeat, Text: text, Gap: f.Wants}
+}
+
+func (j *judging) ask(of Characteristic) string {
+	if f := j.book.bench(of); f != nil {
+		return f.Ask
+	}
+	return ""
 }
 
 func (j *judging) effort(f *Finding) int64 { return j.effortOf(f.Limit.On) }

@@ -37,7 +37,7 @@ func Judge(book *Rulebook, part Part, policy Policy) (Judgement, error) {
 		Reasons: append(notes, adjusted...),
 	}
 	j.rollUp(&result)
-	if book.Untested != nil {
+	if book.Untested != nil && result.Verdict != Reject && result.Verdict != Barred {
 		result.Untested = book.Untested(part, findings)
 	}
 	if book.Cautions != nil {

@@ -133,13 +133,14 @@ type Finding struct {
 	// Converted is the reading brought to the limit's condition; nil where it was compared as it stands.
 	Converted   *Conversion
 	Outcome     Outcome
-	Side        Side    // the side on which it fails, or is nearest to failing
-	Probability float64 // of conformance; NaN where undefined
-	Margin      float64 // distance to the nearest bound over the width (two bounds) or over the bound (one); negative outside, NaN undefined
-	NearLimit   bool    // passed at the soft probability only
-	Unconfirmed bool    // would have failed, were the figure's status better
-	Wants       Gap     // for Missing and Close: what would settle it
-	Why         string  // in words, for Missing and Close
+	Side        Side     // the side on which it fails, or is nearest to failing
+	Probability float64  // of conformance; NaN where undefined
+	Margin      float64  // distance to the nearest bound over the width (two bounds) or over the bound (one); negative outside, NaN undefined
+	NearLimit   bool     // passed at the soft probability only
+	Unconfirmed bool     // would have failed, were the figure's status better
+	Wants       Gap      // for Missing and Close: what would settle it
+	Unstated    Variable // for Missing: the condition that the reading would have to state
+	Why         string   // in words, for Missing and Close
 }
 
 // Gap says what to measure, at which condition, and how well.

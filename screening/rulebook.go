@@ -56,6 +56,7 @@ type Field struct {
 	PerPart  bool   // never per section: temperature, remaining volts
 	Help     string // one line: how it is printed or measured
 	Example  string // what to type: "2200uF", "npn"
+	Ask      string // the next step that asks for it, where "MEASURE" and its label would be odd: "TURN THE PROBES and read again"
 
 	// Words are the bare words that a trait takes, folded to lower case, and the text each stands for.
 	Words []Word

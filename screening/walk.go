@@ -205,7 +205,9 @@ func (w *Walk) claimQuestions() []Question {
 		if !f.Trait {
 			_, answered = w.judged.Claim.Rating(f.Name, w.judged.Claim.Sections()[0])
 		}
-		qs = append(qs, Question{Ask: AskClaim, Field: f, Answered: answered})
+		q := Question{Ask: AskClaim, Field: f, Answered: answered}
+		q.Skipped = w.skipped[q.Key()]
+		qs = append(qs, q)
 	}
 	return qs
 }

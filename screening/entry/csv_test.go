@@ -52,11 +52,11 @@ func TestCSV(t *testing.T) {
 		},
 		{
 			"a unit in brackets is that of bare numbers", "kind,\"leakage@35V,2min [uA]\"\ncan,45\ncan,0.045mA\ncan,<0.1\n",
-			"2: can - [] leakage=45 µA@35 V, after 2 min\n3: can - [] leakage=45 µA@35 V, after 2 min\n4: can - [] leakage=< 100 nA@35 V, after 2 min",
+			"2: can - [] leakage=45 µA@35 V, after 2 min\n3: can - [] leakage=45 µA@35 V, after 2 min\n4: can - [] leakage=< 0.1 µA@35 V, after 2 min",
 		},
 		{"byte order mark and line ends of Windows", "\ufeffkind,capacitance\r\ncan,2010uF\r\n", "2: can - [] capacitance=2010 µF"},
 		{"semicolons leave the comma to decimals", "kind;esr;claim\ncan;1,061;2200uF\n", "2: can - [2200 µF] esr=1.061 Ω"},
-		{"tabs", "kind\tesr\ncan\t0.5\n", "2: can - [] esr=500 mΩ"},
+		{"tabs", "kind\tesr\ncan\t0.5\n", "2: can - [] esr=0.5 Ω"},
 		{"no line end at the end", "kind,esr\ncan,1", "2: can - [] esr=1 Ω"},
 		{"empty lines and empty cells", "\n\nkind,esr,capacitance\n\ncan,,1uF\n,,\n", "5: can - [] capacitance=1 µF\nline 6, column 1 (kind): the kind is missing"},
 		{"a quoted cell over two lines", "kind,note,esr\ncan,\"two\nlines\",1\ncan,,2\n", "2: can - [] esr=1 Ω\n4: can - [] esr=2 Ω"},

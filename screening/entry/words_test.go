@@ -21,49 +21,51 @@ func bookOf(t testing.TB, kind screening.Kind) *screening.Rulebook {
 	return b
 }
 
+var at = screening.At
+
+var readingTests = []struct {
+	name, kind, word string
+	want             screening.Reading
+}{
+	{"a value with prefix and unit", "can", "capacitance=2010uF", screening.Reading{Of: "capacitance", Value: 2010e-6, Step: 1e-6}},
+	{"the prefix alone implies the field's unit", "can", "esr@120Hz=61m", screening.Reading{Of: "esr", Value: 0.061, Step: 1e-3, At: at(screening.Frequency, 120)}},
+	{
+		"conditions follow their units", "can", "leakage@35V,2min=45uA",
+		screening.Reading{Of: "leakage", Value: 45e-6, Step: 1e-6, At: at(screening.Voltage, 35).With(screening.After, 120)},
+	},
+	{
+		"named conditions hold an equals sign, and the last one separates", "transistor", "hfe@ic=10mA,vce=1V=180",
+		screening.Reading{Of: "hfe", Value: 180, Step: 1, At: at(screening.IC, 0.01).With(screening.VCE, 1)},
+	},
+	{
+		"what bare volts and amperes mean is the characteristic's", "transistor", "hfe@10mA,1V=180",
+		screening.Reading{Of: "hfe", Value: 180, Step: 1, At: at(screening.IC, 0.01).With(screening.VCE, 1)},
+	},
+	{
+		"named conditions serve where bare ones are refused", "transistor", "vce-sat@ic=10mA,ib=1mA=0.2V",
+		screening.Reading{Of: "vce-sat", Value: 0.2, Step: 0.1, At: at(screening.IC, 0.01).With(screening.IB, 0.001)},
+	},
+	{"..x is at most", "can", "leakage=..0.1uA", screening.Reading{Of: "leakage", Value: 1e-7, Step: 1e-7, Sense: quantity.AtMost}},
+	{"x.. is at least", "can", "capacitance=2200uF..", screening.Reading{Of: "capacitance", Value: 2200e-6, Step: 1e-6, Sense: quantity.AtLeast}},
+	{"<x is at most", "can", "leakage=<0.1uA", screening.Reading{Of: "leakage", Value: 1e-7, Step: 1e-7, Sense: quantity.AtMost}},
+	{"OL proves what the definition says", "transistor", "blocking=OL", screening.Reading{Of: "blocking", Value: 2e6, Sense: quantity.AtLeast, Over: true}},
+	{"a decimal comma", "can", "esr=0,061", screening.Reading{Of: "esr", Value: 0.061, Step: 1e-3}},
+	{"°C needs no degree sign", "can", "temperature=24C", screening.Reading{Of: "temperature", Value: 24, Step: 1}},
+	{"temperature is known to every kind", "transistor", "temperature=24", screening.Reading{Of: "temperature", Value: 24, Step: 1}},
+	{"a section", "can", "capacitance/2=8.2uF", screening.Reading{Of: "capacitance", Section: "2", Value: 8.2e-6, Step: 1e-7}},
+	{"zero is a value, and DC a condition", "can", "esr@0Hz=0.00", screening.Reading{Of: "esr", Step: 0.01, At: at(screening.Frequency, 0)}},
+	{"a negative reading within two digits is zero", "can", "leakage=-0.01uA", screening.Reading{Of: "leakage", Step: 1e-8}},
+	{
+		"repeats", "transistor", "hfe=180, 182, 181",
+		screening.Reading{Of: "hfe", Value: 181, Step: 1, Repeats: []float64{180, 182, 181}},
+	},
+	{"repeats without spaces", "transistor", "hfe=180,182,181", screening.Reading{Of: "hfe", Value: 181, Step: 1, Repeats: []float64{180, 182, 181}}},
+	{"repeats share the last one's unit", "can", "capacitance=47, 48 uF", screening.Reading{Of: "capacitance", Value: 47.5e-6, Step: 1e-6, Repeats: []float64{47e-6, 48e-6}}},
+	{"repeats with decimal commas are separated by ;", "can", "esr=0,5;0,7", screening.Reading{Of: "esr", Value: 0.6, Step: 0.1, Repeats: []float64{0.5, 0.7}}},
+}
+
 func TestReadings(t *testing.T) {
-	at := screening.At
-	tests := []struct {
-		name, kind, word string
-		want             screening.Reading
-	}{
-		{"a value with prefix and unit", "can", "capacitance=2010uF", screening.Reading{Of: "capacitance", Value: 2010e-6, Step: 1e-6}},
-		{"the prefix alone implies the field's unit", "can", "esr@120Hz=61m", screening.Reading{Of: "esr", Value: 0.061, Step: 1e-3, At: at(screening.Frequency, 120)}},
-		{
-			"conditions follow their units", "can", "leakage@35V,2min=45uA",
-			screening.Reading{Of: "leakage", Value: 45e-6, Step: 1e-6, At: at(screening.Voltage, 35).With(screening.After, 120)},
-		},
-		{
-			"named conditions hold an equals sign, and the last one separates", "transistor", "hfe@ic=10mA,vce=1V=180",
-			screening.Reading{Of: "hfe", Value: 180, Step: 1, At: at(screening.IC, 0.01).With(screening.VCE, 1)},
-		},
-		{
-			"what bare volts and amperes mean is the characteristic's", "transistor", "hfe@10mA,1V=180",
-			screening.Reading{Of: "hfe", Value: 180, Step: 1, At: at(screening.IC, 0.01).With(screening.VCE, 1)},
-		},
-		{
-			"named conditions serve where bare ones are refused", "transistor", "vce-sat@ic=10mA,ib=1mA=0.2V",
-			screening.Reading{Of: "vce-sat", Value: 0.2, Step: 0.1, At: at(screening.IC, 0.01).With(screening.IB, 0.001)},
-		},
-		{"..x is at most", "can", "leakage=..0.1uA", screening.Reading{Of: "leakage", Value: 1e-7, Step: 1e-7, Sense: quantity.AtMost}},
-		{"x.. is at least", "can", "capacitance=2200uF..", screening.Reading{Of: "capacitance", Value: 2200e-6, Step: 1e-6, Sense: quantity.AtLeast}},
-		{"<x is at most", "can", "leakage=<0.1uA", screening.Reading{Of: "leakage", Value: 1e-7, Step: 1e-7, Sense: quantity.AtMost}},
-		{"OL proves what the definition says", "transistor", "blocking=OL", screening.Reading{Of: "blocking", Value: 2e6, Sense: quantity.AtLeast, Over: true}},
-		{"a decimal comma", "can", "esr=0,061", screening.Reading{Of: "esr", Value: 0.061, Step: 1e-3}},
-		{"°C needs no degree sign", "can", "temperature=24C", screening.Reading{Of: "temperature", Value: 24, Step: 1}},
-		{"temperature is known to every kind", "transistor", "temperature=24", screening.Reading{Of: "temperature", Value: 24, Step: 1}},
-		{"a section", "can", "capacitance/2=8.2uF", screening.Reading{Of: "capacitance", Section: "2", Value: 8.2e-6, Step: 1e-7}},
-		{"zero is a value, and DC a condition", "can", "esr@0Hz=0.00", screening.Reading{Of: "esr", Step: 0.01, At: at(screening.Frequency, 0)}},
-		{"a negative reading within two digits is zero", "can", "leakage=-0.01uA", screening.Reading{Of: "leakage", Step: 1e-8}},
-		{
-			"repeats", "transistor", "hfe=180, 182, 181",
-			screening.Reading{Of: "hfe", Value: 181, Step: 1, Repeats: []float64{180, 182, 181}},
-		},
-		{"repeats without spaces", "transistor", "hfe=180,182,181", screening.Reading{Of: "hfe", Value: 181, Step: 1, Repeats: []float64{180, 182, 181}}},
-		{"repeats share the last one's unit", "can", "capacitance=47, 48 uF", screening.Reading{Of: "capacitance", Value: 47.5e-6, Step: 1e-6, Repeats: []float64{47e-6, 48e-6}}},
-		{"repeats with decimal commas are separated by ;", "can", "esr=0,5;0,7", screening.Reading{Of: "esr", Value: 0.6, Step: 0.1, Repeats: []float64{0.5, 0.7}}},
-	}
-	for _, tt := range tests {
+	for _, tt := range readingTests {
 		t.Run(tt.name, func(t *testing.T) {
 			book := bookOf(t, screening.Kind(tt.kind))
 			parsed, err := Words(book, []string{tt.word})
@@ -97,9 +99,9 @@ func TestClaims(t *testing.T) {
 		{"old print", "can", ".05MFD 600V", "50 nF 600 V"},
 		{"capacitance and voltage as on a can", "can", "100/25", "100 µF 25 V"},
 		{"with units", "can", "100uF/25V", "100 µF 25 V"},
-		{"sections", "can", "8+8/450", "8 µF 450 V 8 µF 450 V"},
-		{"sections with voltages of their own", "can", "50/350+25/25", "50 µF 350 V 25 µF 25 V"},
-		{"sections that are alike", "can", "2x50/300", "50 µF 300 V 50 µF 300 V"},
+		{"sections", "can", "8+8/450", "8+8 µF 450 V"},
+		{"sections with voltages of their own", "can", "50/350+25/25", "50+25 µF 350+25 V"},
+		{"sections that are alike", "can", "2x50/300", "50+50 µF 300 V"},
 		{"a year is a date where the kind has one", "can", "100/25 1974", "100 µF 25 V 1974"},
 		{"a decade", "can", "197x", "197x"},
 		{"a word of a trait", "can", "AXIAL", "axial"},

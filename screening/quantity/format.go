@@ -105,19 +105,21 @@ func round(x float64, digits int) decimal {
 	return d
 }
 
-// choosePrefix returns the power of ten of the largest prefix that leaves a digit before the decimal sign.
+// choosePrefix returns the power of ten of the largest prefix that leaves a digit before the decimal sign, or else of the smallest.
 func choosePrefix(d *decimal, unit Unit) int {
 	if d.digits[0] == '0' {
 		return ratioExponent(unit)
 	}
-	p := 9
-	for p > -12 && (p > d.exponent || !prints(p, unit)) {
-		p -= 3
+	lowest := ratioExponent(unit)
+	for p := 9; p >= -12; p -= 3 {
+		if prints(p, unit) {
+			if p <= d.exponent {
+				return p
+			}
+			lowest = p
+		}
 	}
-	if !prints(p, unit) {
-		return ratioExponent(unit)
-	}
-	return p
+	return lowest
 }
 
 // prints reports whether values of a unit are printed with the prefix 10^p.

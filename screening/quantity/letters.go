@@ -41,9 +41,15 @@ type printWord struct {
 
 var (
 	faradPrint = [...]printWord{
-		{"mfd", -6}, {"mfd.", -6}, {"mmf", -12}, {"mmfd", -12}, {"uuf", -12},
+		{"mfd", -6},
+		{"mfd.", -6},
+		{"mmf", -12},
+		{"mmfd", -12},
+		{"uuf", -12},
 		{"μμf", -12}, // EqualFold takes U+00B5 and U+03BC for the same letter
-		{"uf", -6}, {"nf", -9}, {"pf", -12},
+		{"uf", -6},
+		{"nf", -9},
+		{"pf", -12},
 	}
 	ohmPrint = [...]printWord{{"meg", 6}, {"megohm", 6}, {"megohms", 6}}
 )

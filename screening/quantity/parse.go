@@ -60,6 +60,9 @@ func ParseAny(text string) ([]Value, error) {
 	}
 	var found []Value
 	for _, unit := range usualFirst {
+		if unit == Metre && s.letter == "" && s.suffix == "m" {
+			continue // m is milli
+		}
 		m := match(s.letter, s.suffix, unit)
 		if m.ok && (m.spelt || unit == letterUnit(s.letter, s.suffix)) {
 			found = append(found, s.value(m, unit))
@@ -102,7 +105,7 @@ func ParseRange(text string, unit Unit) (low, high float64, err error) {
 			return 0, 0, err
 		}
 	}
-	if left != "" && right != "" && s.bare() && low != 0 && of != to && of.scale() != to.scale() {
+	if left != "" && right != "" && s.bare() && low != 0 && of.scale() != to.scale() {
 		shared := s.value(to, unit).Number
 		return refuse("is ambiguous", Short(low, unit)+" to "+Short(high, unit), Short(shared, unit)+" to "+Short(high, unit))
 	}

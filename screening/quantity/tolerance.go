@@ -26,21 +26,22 @@ func ParseTolerance(text string) (low, high float64, err error) {
 	if at < 0 {
 		return refuse("gives one side only; write both, as in +80-20%")
 	}
-	first, second := strings.TrimRight(body[:at+1], "/ %"), strings.TrimSpace(body[at+1:])
-	a, _, _, errA := parseExact(first, Ratio)
-	b, _, _, errB := parseExact(second, Ratio)
+	first := strings.TrimSpace(strings.TrimSuffix(strings.TrimSpace(body[:at+1]), "/"))
+	first, second := strings.TrimSpace(strings.TrimSuffix(first, "%")), strings.TrimSpace(body[at+1:])
+	a, errA := percent(first)
+	b, errB := percent(second)
 	if errA != nil || errB != nil {
 		return refuse("is not a tolerance such as +80-20% or -10/+50%")
 	}
 	low, high = min(a, b), max(a, b)
-	if low > 0 || high < 0 || first[0] == second[0] || low <= -1 {
+	if low > 0 || high < 0 || low == high || first[0] == second[0] || low <= -1 {
 		return refuse("is not a tolerance: one side lies below and one above the nominal")
 	}
 	return low, high, nil
 }
 
 func symmetric(text, body string) (low, high float64, err error) {
-	x, _, _, err := parseExact(body, Ratio)
+	x, err := percent(body)
 	if err != nil {
 		return 0, 0, &Error{Text: text, Unit: Ratio, Problem: "is not a tolerance such as 20%"}
 	}
@@ -48,4 +49,13 @@ func symmetric(text, body string) (low, high float64, err error) {
 		return 0, 0, &Error{Text: text, Unit: Ratio, Problem: "is not a tolerance between 0 and 100 %"}
 	}
 	return -x, x, nil
+}
+
+// percent reads one side of a tolerance, whose percent sign is already off.
+func percent(text string) (float64, error) {
+	x, s, _, err := parseExact(text, Ratio)
+	if err == nil && s.suffix != "" {
+		err = &Error{Text: text, Unit: Ratio, Problem: "has two percent signs"}
+	}
+	return x, err
 }

@@ -50,8 +50,9 @@ func roundTo(x float64, last int) decimal {
 	}
 	exponent := round(x, mostDigits).exponent
 	d := round(x, max(1, exponent-last+1))
-	if d.exponent > exponent { // 9.996 became 10.00
-		d = round(x, max(1, d.exponent-last+1))
+	if d.exponent > exponent && exponent >= last && d.n < mostDigits {
+		d.digits[d.n] = '0' // 9.996 became 10.0, and the place asked for is one further
+		d.n++
 	}
 	return d
 }

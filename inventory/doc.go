@@ -1,0 +1,35 @@
+// Package inventory is the workbook: one bbolt file that holds every lot, every judged part with its readings, places, counts, history and
+// the way back (undo). It knows nothing of rulebooks or screens.
+//
+// # What is durable when
+//
+// A call that changes the workbook returns after the change is on the disk (one transaction, one fsync); what it returned an error for did
+// not happen at all. A killed process loses nothing that was acknowledged. The position (see [Workbook.SetPosition]) is the exception: it
+// travels with the next change or with Close.
+//
+// # Layout, schema 1
+//
+// All integers in keys are big-endian, so that keys sort as numbers do. "Sealed" values are a version byte, a CRC-32C (Castagnoli) of what
+// follows, and the payload; see codec.go. Top-level buckets:
+//
+//	meta             format → "goodbin workbook"; schema → uint32; made → sealed time; position → sealed position
+//	lot              lot uint32 → sealed lot (CBOR, integer keys)
+//	part             lot uint32, number uint32 → sealed part (CBOR, integer keys)
+//	row              the part's key → sealed row: what a list of parts shows and filters by, derived from part and lot
+//	part_by_value    kind 0x00 characteristic 0x00 origin, float64, the part's key → verdict byte; of parts in stock: every nominal of the
+//	                 claim they are held to (origin 'c') and every reading that stands and is exact (origin 'm')
+//	journal          sequence uint64 → sealed entry: when, what in words, and the records as they were before (CBOR, integer keys)
+//	journal_by_part  the part's key (number 0 for the lot itself), sequence uint64 → empty
+//
+// float64 in keys: the bits, all inverted where negative, else the top bit set; −0 is folded to 0 and NaN has no key. Characteristics,
+// variables, units, verdicts and every other enumeration are stored by name, so that renumbering one in code never breaks a file.
+//
+// part and lot are the truth; row, part_by_value and journal_by_part are derived and [Workbook.Reindex] rebuilds them.
+//
+// # Undo
+//
+// Every action of the person writes one journal entry in the same transaction. [Workbook.Undo] takes the last one back, [Workbook.Redo] does
+// it again; both survive a restart. [UndoLevels] entries keep what undo needs; older ones remain as history. A new action forgets what was
+// undone. Not undone, because they are not actions on what the person entered: a backup and an export (files outside the workbook), a
+// re-judging under new tables (undo would bring the older verdict back as stale), the position, and a repair of the indexes.
+package inventory

@@ -1,0 +1,82 @@
+package inventory
+
+import (
+	"compress/gzip"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+	"testing"
+
+	bolt "go.etcd.io/bbolt"
+
+	"goodbin/screening"
+)
+
+func TestMigrationsRunInOrderEachOnceAfterACopy(t *testing.T) {
+	w := newWorkbook(t)
+	addLot(t, w)
+	must0(t, w.Close())
+	db, err := openBolt(w.Path(), Options{Timeout: DefaultTimeout})
+	must0(t, err)
+	var ran []uint32
+	step := func(from uint32, err error) migration {
+		return migration{from, fmt.Sprintf("step %d", from), func(tx *bolt.Tx) error { ran = append(ran, from); return err }}
+	}
+	failing := errors.New("no")
+	if err := migrate(db, w.Path(), 4, []migration{step(0, nil), step(1, failing), step(2, nil)}); !errors.Is(err, failing) {
+		t.Errorf("a step that fails: %v", err)
+	}
+	if err := migrate(db, w.Path(), 4, []migration{step(0, nil), step(2, nil)}); !errors.Is(err, ErrCorrupt) {
+		t.Errorf("a gap in the steps: %v", err)
+	}
+	if err := migrate(db, w.Path(), 4, []migration{step(1, nil), step(2, nil), step(3, nil)}); err != nil {
+		t.Error(err)
+	}
+	if got := fmt.Sprint(ran); got != "[1 1 2 3]" {
+		t.Errorf("steps ran from %s", got)
+	}
+	must0(t, db.Close())
+	if report, err := Verify(fmt.Sprintf("%s.schema-1", w.Path())); err != nil || report.Lots != 1 {
+		t.Errorf("the copy from before: %+v, %v", report, err)
+	}
+	if _, err := Open(w.Path(), Options{}); !errors.Is(err, ErrNewer) {
+		t.Errorf("a file brought to schema 4: %v", err)
+	}
+	must0(t, os.Rename(fmt.Sprintf("%s.schema-1", w.Path()), w.Path()))
+}
+
+// testdata/schema-1.goodbin.gz was written when schema 1 was new: a lot and a part with every field filled.
+func TestAWorkbookOfEverySchemaOpens(t *testing.T) {
+	for schema := 1; schema <= schemaVersion; schema++ {
+		packed, err := os.Open(fmt.Sprintf("testdata/schema-%d.goodbin.gz", schema))
+		must0(t, err)
+		defer packed.Close()
+		unpacked, err := gzip.NewReader(packed)
+		must0(t, err)
+		file, err := io.ReadAll(unpacked)
+		must0(t, err)
+		path := filepath.Join(t.TempDir(), "old")
+		must0(t, os.WriteFile(path, file, 0o600))
+		w := mustOpen(t, path, Options{})
+		p, err := w.GetPart(ID{12, 7})
+		if err != nil || len(p.Part.Readings) != 2 || len(p.Part.Claim.Ratings) != 2 {
+			t.Fatalf("schema %d: %+v, %v", schema, p, err)
+		}
+		r := p.Part.Readings[1]
+		after, _ := r.At.Get(screening.After)
+		got := fmt.Sprintf("%s, %s, %s of %.4g %s after %.4g s, %d repeats, %s, %s, %s", p.Part.Claim.Ratings[0].Section, r.Of, r.Sense, r.Value,
+			r.Unit.Symbol(), after, len(r.Repeats), p.Outcome.Verdict, p.Outcome.AsClaim.Traits[0].Name, p.Count)
+		if want := "text 11, text 69, at least of 23.67 F after 12.14 s, 2 repeats, accept, text 127, about 144"; got != want {
+			t.Errorf("schema %d: the part reads\n%s\nwant\n%s", schema, got, want)
+		}
+		if w.Position().Part != p.ID {
+			t.Errorf("schema %d: position %+v", schema, w.Position())
+		}
+		if done, err := w.Redo(); err != nil || done.Action != "took 1: receiver" {
+			t.Errorf("schema %d: redo %v, %v", schema, done, err)
+		}
+		closeAndVerify(t, w)
+	}
+}
