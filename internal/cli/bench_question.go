@@ -1,0 +1,205 @@
+package cli
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"strings"
+
+	"goodbin/screening"
+	"goodbin/screening/entry"
+	"goodbin/screening/quantity"
+)
+
+// question asks one question of the walk until it is answered, skipped, or a command leads elsewhere.
+func (l *lines) question(ctx context.Context, q screening.Question) error {
+	return l.answer(ctx, prompt(q), func(text string) error {
+		if text == "" || text == "+" {
+			return l.skip(q)
+		}
+		if q.Ask == screening.AskLook {
+			if fault, ok := yesOrNo(text); ok {
+				return l.look(q, fault)
+			}
+		}
+		if err := l.command(ctx, q, text); !errors.Is(err, errAnswer) {
+			return err
+		}
+		switch q.Ask {
+		case screening.AskLook:
+			return again("%q is neither yes nor no: y or 1 where it is so, n or 0 where it is not", text)
+		case screening.AskClaim:
+			return l.claim(q, text)
+		}
+		return l.reading(ctx, q, text)
+	})
+}
+
+// prompt words a question, with the unit in which a bare number counts.
+func prompt(q screening.Question) string {
+	switch q.Ask {
+	case screening.AskLook:
+		return q.Check.Question + " (y/n)"
+	case screening.AskClaim:
+		return q.Field.Label + " as printed, such as " + q.Field.Example
+	}
+	text := q.Field.Label
+	if q.Section != "" {
+		text += " of section " + q.Section
+	}
+	if !q.At.IsZero() {
+		text += " at " + q.At.String()
+	}
+	if unit := entry.PromptUnit(q); unit != "" {
+		text += ", " + unit
+	}
+	if q.Why != "" && q.Why != "not measured" {
+		text += " (" + q.Why + ")"
+	}
+	return text
+}
+
+func yesOrNo(text string) (yes, ok bool) {
+	switch strings.ToLower(text) {
+	case "y", "yes", "1":
+		return true, true
+	case "n", "no", "0":
+		return false, true
+	}
+	return false, false
+}
+
+// skip leaves a question for later. The volts remaining are never skipped: the part would be touched unasked.
+func (l *lines) skip(q screening.Question) error {
+	switch q.Ask {
+	case screening.AskGate:
+		return again("the volts that remain are measured before the part is touched; type 0 where nothing is left")
+	case screening.AskClaim:
+		return again("nothing can be judged without it; n goes to the next part")
+	}
+	l.walk.Skip(q)
+	l.part.Skipped = append(l.part.Skipped, q.Key())
+	return l.say("skipped")
+}
+
+func (l *lines) look(q screening.Question, fault bool) error {
+	l.walk.See(q.Check.Name, fault)
+	if fault {
+		return l.save("seen: " + q.Check.Name)
+	}
+	return l.save("looked for " + q.Check.Name + ": no")
+}
+
+// claim adds one rating or trait that was missing; the part then has a claim of its own.
+func (l *lines) claim(q screening.Question, text string) error {
+	more, err := entry.AnswerClaim(l.book, q, text)
+	if err != nil {
+		return refusal(err)
+	}
+	claim := l.walk.Part().Claim
+	for _, r := range more.Ratings {
+		claim = claim.WithRating(r)
+	}
+	for _, t := range more.Traits {
+		claim = claim.WithTrait(t.Name, t.Text)
+	}
+	header := l.part.Header
+	if header == "" {
+		header = l.lot.Header
+	}
+	name := string(q.Field.Name)
+	if !q.Field.Trait {
+		name = "rated:" + name
+	}
+	l.part.Header = strings.TrimSpace(fmt.Sprintf("%s %s=%s", header, name, text))
+	l.walk.SetClaim(claim)
+	return l.save(q.Field.Label + " " + clean(text) + " claimed")
+}
+
+// reading takes one reading. One that looks like a slip of a power of ten is asked about before it is kept.
+func (l *lines) reading(ctx context.Context, q screening.Question, text string) error {
+	r, err := entry.Answer(q, text)
+	if err != nil {
+		return refusal(err)
+	}
+	if alarm, slip := screening.PowerOfTen(l.book, l.walk.Part(), r); slip {
+		if r, err = l.confirm(ctx, r, alarm); err != nil {
+			return err
+		}
+	}
+	if l.repeating {
+		r = l.joined(r)
+	}
+	err = l.walk.Record(r)
+	if err != nil && !errors.Is(err, screening.ErrStillLive) {
+		return refusal(err)
+	}
+	if q.Ask == screening.AskReading {
+		l.last = q
+	}
+	if saveErr := l.save(q.Field.Label + " " + entry.Value(r)); saveErr != nil {
+		return saveErr
+	}
+	if err != nil {
+		return l.say("DANGER: the part still carries %s. Do not touch it; discharge it again, then measure the volts that remain", entry.Value(r))
+	}
+	return nil
+}
+
+// confirm asks what a reading was meant to be: as typed, the value that lies in the band, or typed again.
+func (l *lines) confirm(ctx context.Context, r screening.Reading, alarm screening.Alarm) (screening.Reading, error) {
+	meant := quantity.Format(alarm.Suggested, r.Unit, 3)
+	text, err := l.ask(ctx, entry.Value(r)+" lies far off what the part claims; is "+meant+" meant? (y: "+meant+", k: keep "+entry.Value(r)+
+		" as read, Enter: type it again)")
+	if err != nil {
+		return r, err
+	}
+	switch strings.ToLower(text) {
+	case "y", "yes":
+		factor := alarm.Suggested / r.Value
+		r.Value, r.Step = alarm.Suggested, r.Step*factor
+		for i := range r.Repeats {
+			r.Repeats[i] *= factor
+		}
+		return r, nil
+	case "k", "keep":
+		return r, nil
+	case "q", "quit":
+		return r, errQuit
+	}
+	return r, again("type it again")
+}
+
+// helpFor is the help at a prompt: what can be typed, what is asked, and how to measure it.
+func (l *lines) helpFor(q screening.Question) string {
+	var b strings.Builder
+	b.WriteString(linesHelp)
+	switch q.Ask {
+	case screening.AskLook:
+		b.WriteString("\n" + q.Check.Question + " " + q.Check.Help)
+	case screening.AskClaim, screening.AskReading, screening.AskGate:
+		fmt.Fprintf(&b, "\n%s: %s", q.Field.Label, q.Field.Help)
+	}
+	if q.Limit == nil {
+		return b.String()
+	}
+	fmt.Fprintf(&b, "\nlimit: %s; %s", screening.Allowed(*q.Limit), q.Limit.Source)
+	if formula := q.Limit.FormulaText(); formula != "" {
+		b.WriteString("\n" + formula)
+	}
+	if l.book.Recipes == nil {
+		return b.String()
+	}
+	j, err := l.walk.Judgement()
+	if err != nil {
+		return b.String()
+	}
+	for _, r := range l.book.Recipes(j.Part, *q.Limit) {
+		b.WriteString("\n" + r.Title)
+		for _, line := range r.Lines {
+			b.WriteString("\n  " + line)
+		}
+		b.WriteString("\n  source: " + r.Source.String())
+	}
+	return b.String()
+}

@@ -1,0 +1,146 @@
+package endtoend_test
+
+import (
+	"fmt"
+	"os/exec"
+	"path/filepath"
+	"strings"
+	"testing"
+	"time"
+)
+
+// terminal is a real one: tmux on a socket of its own.
+type terminal struct {
+	t      *testing.T
+	socket string
+}
+
+// openTerminal runs a shell command in a terminal of a size. The test is skipped where tmux is not installed: only a terminal shows these
+// things, and everything else about the pages is tested without one.
+func openTerminal(t *testing.T, width, height int, command string) *terminal {
+	t.Helper()
+	if _, err := exec.LookPath("tmux"); err != nil {
+		t.Skip("tmux is not installed; the pages are tested in a real terminal only where it is")
+	}
+	term := &terminal{t, filepath.Join(t.TempDir(), "tmux")}
+	t.Cleanup(func() { _ = exec.Command("tmux", "-S", term.socket, "kill-server").Run() })
+	term.tmux("-f", "/dev/null", "new-session", "-d", "-x", fmt.Sprint(width), "-y", fmt.Sprint(height), command+"; echo; echo left with $?; sleep 60")
+	return term
+}
+
+func (term *terminal) tmux(args ...string) string {
+	term.t.Helper()
+	out, err := exec.Command("tmux", append([]string{"-S", term.socket}, args...)...).CombinedOutput()
+	if err != nil {
+		term.t.Fatalf("tmux %v: %v\n%s", args, err, out)
+	}
+	return string(out)
+}
+
+func (term *terminal) screen() string { return term.tmux("capture-pane", "-p") }
+
+// await polls until the screen shows a text.
+func (term *terminal) await(text string) string {
+	term.t.Helper()
+	for end := time.Now().Add(20 * time.Second); time.Now().Before(end); time.Sleep(30 * time.Millisecond) {
+		if s := term.screen(); strings.Contains(s, text) {
+			return s
+		}
+	}
+	term.t.Fatalf("the screen never shows %q:\n%s", text, term.screen())
+	return ""
+}
+
+func (term *terminal) keys(keys ...string) { term.tmux(append([]string{"send-keys", "--"}, keys...)...) }
+func (term *terminal) text(text string)    { term.tmux("send-keys", "-l", "--", text) }
+
+// enter types a text and Enter.
+func (term *terminal) enter(text string) {
+	if text != "" {
+		term.text(text)
+	}
+	term.keys("Enter")
+}
+
+// The same part is measured on the page at three sizes, in grey and in ASCII, and in linear mode through a pipe: the verdict is the same.
+func TestPageAndLinearModeSayTheSame(t *testing.T) {
+	program := buildProgram(t)
+	faces := []struct {
+		name          string
+		width, height int
+		env, flags    string
+	}{
+		{"80×24", 80, 24, "", ""},
+		{"120×40", 120, 40, "", ""},
+		{"60×20", 60, 20, "", ""},
+		{"80×24 without colour", 80, 24, "NO_COLOR=1", ""},
+		{"80×24 in ASCII", 80, 24, "", "--ascii"},
+	}
+	for _, face := range faces {
+		t.Run(face.name, func(t *testing.T) {
+			workbook := filepath.Join(t.TempDir(), "page.goodbin")
+			term := openTerminal(t, face.width, face.height,
+				fmt.Sprintf("env TERM=xterm-256color %s %s %s --workbook %s", face.env, program, face.flags, workbook))
+			term.await("New lot")
+			term.enter("resistor")
+			term.enter("4k7 5%")
+			term.enter("tray A")
+			term.enter("")
+			term.enter("")
+			term.enter("")
+			term.await("1-01")
+			term.await("across the mains")
+			term.enter("00")
+			term.await("resistance")
+			term.enter("4.71")
+			s := term.await("accept")
+			if face.flags == "--ascii" {
+				for _, r := range s {
+					if r > 126 {
+						t.Errorf("%q on an ASCII screen:\n%s", r, s)
+						break
+					}
+				}
+			}
+			term.await("1-02")
+			term.keys("C-c")
+			term.await("left with 0")
+			out, err := exec.Command(program, "stock", "--workbook", workbook).CombinedOutput()
+			if err != nil || !strings.Contains(string(out), "1-01") || !strings.Contains(string(out), "accept") {
+				t.Errorf("stock after the page: %v\n%s", err, out)
+			}
+		})
+	}
+	lines := exec.Command(program, "bench", "--lines", "--workbook", filepath.Join(t.TempDir(), "lines.goodbin"))
+	lines.Stdin = strings.NewReader("resistor\n4k7 5%\ntray A\n\nn\nn\n4.71\nq\n")
+	out, err := lines.CombinedOutput()
+	if err != nil || !strings.Contains(string(out), "1-01: ACCEPT") {
+		t.Errorf("linear mode: %v\n%s", err, out)
+	}
+}
+
+// A window that is closed or a program that is killed leaves the workbook as it was acknowledged; reopening lands on the same part.
+func TestReopeningLandsOnTheSamePart(t *testing.T) {
+	program, workbook := buildProgram(t), filepath.Join(t.TempDir(), "again.goodbin")
+	command := "env TERM=xterm-256color " + program + " --workbook " + workbook
+	first := openTerminal(t, 80, 24, command)
+	first.await("New lot")
+	for _, text := range []string{"resistor", "10k 5%", "tray B", "", "", ""} {
+		first.enter(text)
+	}
+	first.await("across the mains")
+	first.enter("00")
+	first.await("resistance")
+	first.enter("9.98")
+	first.await("1-02")
+	first.tmux("kill-server")
+
+	again := openTerminal(t, 80, 24, command)
+	s := again.await("1-02")
+	if !strings.Contains(s, "1-01") || !strings.Contains(s, "accept") {
+		t.Errorf("the first part is not there:\n%s", s)
+	}
+	if cursor := strings.TrimSpace(again.tmux("display-message", "-p", "#{cursor_flag} #{cursor_y}")); !strings.HasPrefix(cursor, "1 ") {
+		t.Errorf("the real cursor is not shown: %q", cursor)
+	}
+}
