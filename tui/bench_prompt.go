@@ -1,0 +1,286 @@
+package tui
+
+import (
+	"fmt"
+	"strconv"
+	"strings"
+
+	"goodbin/screening"
+	"goodbin/screening/entry"
+	"goodbin/screening/quantity"
+)
+
+// promptHeight is how many lines the prompt takes at least, so that what stands below it does not jump about.
+const promptHeight = 4
+
+// drawPrompt writes the question, the field, what was understood, and the cautions of this step. It returns the place of the cursor.
+func (g *grid) drawPrompt(w, most int) ([]string, spot) {
+	t := g.d.t
+	q, open := g.question()
+	lines := g.questionLines(q, open, w)
+	field, at := g.fieldLine(q, open, w)
+	at.y = len(lines)
+	lines = append(lines, field)
+	lines = append(lines, g.underField(q, open, w)...)
+	for len(lines) < promptHeight {
+		lines = append(lines, "")
+	}
+	warnings := t.cautionLines(g.cautions(q, open), " ", w)
+	if room := max(0, most-len(lines)); len(warnings) > room {
+		warnings = warnings[:room]
+		if room > 0 {
+			warnings[room-1] = t.danger.paint(fit(" "+t.g.more+" the rest of this warning: F6", w, t.g.more))
+		}
+	}
+	if len(warnings) > 0 && lines[len(lines)-1] == "" {
+		lines = lines[:len(lines)-1]
+	}
+	return append(lines, warnings...), at
+}
+
+// cautionLines words cautions in full, the gravest first.
+func (t *theme) cautionLines(cautions []screening.Caution, indent string, w int) []string {
+	var lines []string
+	for _, level := range []screening.Level{screening.Danger, screening.Notice} {
+		for _, c := range cautions {
+			if c.Level != level {
+				continue
+			}
+			for _, l := range wrapHang(indent+strings.ToUpper(level.String())+" ", t.clean(c.Text), w-1, 0, "") {
+				if level == screening.Danger {
+					lines = append(lines, t.danger.paint(fit(l, w, t.g.more)))
+				} else {
+					lines = append(lines, t.note.paint(fit(l, w, t.g.more)))
+				}
+			}
+		}
+	}
+	return lines
+}
+
+// questionLines words the question.
+func (g *grid) questionLines(q screening.Question, open bool, w int) []string {
+	t := g.d.t
+	head := " " + g.idText() + "  "
+	text, right := g.questionText(q, open)
+	right = t.clean(right)
+	var lines []string
+	for i, l := range wrapHang(head, t.clean(text), w-width(right)-2, 3, t.g.more) {
+		if i == 0 {
+			lines = append(lines, between(t.strong.paint(l), t.faint.paint(right)+" ", w, t.g.more))
+		} else {
+			lines = append(lines, t.strong.paint(l))
+		}
+	}
+	return lines
+}
+
+// questionText is the question in words, and what stands at the right of it.
+func (g *grid) questionText(q screening.Question, open bool) (text, right string) {
+	if !open {
+		v, _ := g.walk.Judgement()
+		return "is done: " + v.Verdict.String() + ". Enter goes on, Left and Right correct, / asks for more", ""
+	}
+	switch {
+	case g.flight != nil:
+		return "saving", ""
+	case keyOf(q) == rowClaim:
+		return "what does it claim?", ""
+	}
+	switch q.Ask {
+	case screening.AskClaim:
+		return "the claim lacks the " + q.Field.Label, ""
+	case screening.AskGate:
+		return "volts across it now, before it is touched?", "first of all"
+	case screening.AskLook:
+		return q.Check.Question, "look"
+	}
+	text = q.Field.Label
+	if q.Section != "" {
+		text += " of section " + q.Section
+	}
+	if !q.At.IsZero() {
+		text += " at " + q.At.String()
+	}
+	switch {
+	case g.again:
+		return text + ", once more", "a series"
+	case q.Answered:
+		return text, "correcting"
+	}
+	done, all := g.progress()
+	return text, q.Need.String() + ", " + strconv.Itoa(done+1) + " of " + strconv.Itoa(all)
+}
+
+// progress counts the readings that are answered, and those that are asked.
+func (g *grid) progress() (done, all int) {
+	for _, q := range g.walk.Questions() {
+		if q.Ask == screening.AskReading {
+			all++
+			if q.Answered {
+				done++
+			}
+		}
+	}
+	return min(done, max(0, all-1)), all
+}
+
+// fieldLine draws the field with its unit, and what the text in it is understood as.
+func (g *grid) fieldLine(q screening.Question, open bool, w int) (string, spot) {
+	t := g.d.t
+	const left = 3
+	unit := g.unit(q, open)
+	long := q.Ask == screening.AskClaim || strings.Contains(g.in.String(), "=")
+	fieldW := 22
+	if long || w < 70 {
+		fieldW = max(10, min(w-left-width(unit)-3, 60))
+	}
+	if !long {
+		fieldW = min(fieldW, 26)
+	}
+	text, cursor := g.in.draw(t, fieldW)
+	line := " " + t.g.marker + " " + t.field.paint(text) + " " + unit
+	used := left + fieldW + 1 + width(unit)
+	if room := w - used - 4; room > 8 && g.problem == nil && g.alarm == nil {
+		line += "   " + t.note.paint(fit(g.echo(q, open), room, t.g.more))
+	}
+	return line, spot{x: left + cursor}
+}
+
+// unit is what a bare number counts in.
+func (g *grid) unit(q screening.Question, open bool) string {
+	if !open {
+		return ""
+	}
+	switch q.Ask {
+	case screening.AskReading:
+		return g.d.t.clean(entry.PromptUnit(q))
+	case screening.AskGate:
+		return "V"
+	case screening.AskLook:
+		if g.looksLeft() > 1 {
+			return "0 no   1 yes   00 no to all looks"
+		}
+		return "0 no   1 yes"
+	}
+	return ""
+}
+
+// looksLeft counts the looks that are not answered.
+func (g *grid) looksLeft() int {
+	n := 0
+	for _, q := range g.walk.Questions() {
+		if q.Ask == screening.AskLook && !q.Answered {
+			n++
+		}
+	}
+	return n
+}
+
+// echo is what the text in the field would do.
+func (g *grid) echo(q screening.Question, open bool) string {
+	t := g.d.t
+	text := strings.TrimSpace(g.in.String())
+	switch text {
+	case "":
+		return ""
+	case "+":
+		return "Enter skips this question"
+	case "*":
+		if keyOf(q) == rowClaim {
+			return t.clean("Enter: the same as above, " + g.claimAbove())
+		}
+		return "Enter measures the last one again"
+	case "/":
+		return "Enter asks for more of this part"
+	case "-":
+		return "Enter takes the last answer back"
+	}
+	if q.Ask == screening.AskClaim && keyOf(q) != rowClaim {
+		c, err := entry.AnswerClaim(g.book, q, text)
+		if err != nil {
+			return ""
+		}
+		return t.clean("= " + c.String())
+	}
+	if strings.Contains(text, "=") || q.Ask == screening.AskClaim {
+		parsed, err := entry.Words(g.book, strings.Fields(text))
+		if err != nil || len(parsed.Echo) == 0 {
+			return ""
+		}
+		return t.clean(strings.Join(parsed.Echo, "; "))
+	}
+	if !open || q.Ask == screening.AskLook {
+		return ""
+	}
+	if r, err := entry.Answer(q, text); err == nil {
+		echo := "= " + entry.Value(r)
+		if !r.At.IsZero() && r.At != q.At {
+			echo += " at " + r.At.String()
+		}
+		return t.clean(echo)
+	}
+	return ""
+}
+
+// underField is the line under the field: what was wrong, the alarm, or how it is measured.
+func (g *grid) underField(q screening.Question, open bool, w int) []string {
+	t := g.d.t
+	paintAll := func(k ink, text string, limit int) []string {
+		lines := wrapHang("   ", t.clean(text), w-1, limit, t.g.more)
+		for i := range lines {
+			lines[i] = k.paint(lines[i])
+		}
+		return lines
+	}
+	switch {
+	case g.problem != nil:
+		return paintAll(t.error, errorText(g.problem), 3)
+	case g.alarm != nil:
+		return paintAll(t.error, alarmText(q, g.alarm), 3)
+	case !open:
+		return nil
+	case keyOf(q) == rowClaim:
+		return paintAll(t.faint, "as printed on it: 100/25 1974, 8+8/450; * is the same as above, + is nothing", 2)
+	case q.Ask == screening.AskLook && q.Check.Help != "":
+		return paintAll(t.faint, q.Check.Help, 2)
+	case q.Ask == screening.AskClaim:
+		return paintAll(t.faint, strings.TrimSpace(q.Field.Help+" such as "+q.Field.Example), 2)
+	case q.Ask == screening.AskGate:
+		return paintAll(t.faint, fmt.Sprintf("at most %d V may remain; measure again after discharging", screening.SafeVoltage), 2)
+	case q.Why != "" && q.Why != "not measured":
+		return paintAll(t.label, q.Why, 2)
+	}
+	return paintAll(t.faint, q.Field.Help, 2)
+}
+
+// alarmText asks whether a reading that looks like a slip is meant.
+func alarmText(q screening.Question, a *alarmState) string {
+	unit := q.Field.Unit
+	return fmt.Sprintf("%s would be far out of %s to %s; was %s meant? Enter keeps %s, or type it again",
+		entry.Value(a.read), quantity.Format(a.alarm.Low, unit, 3), quantity.Format(a.alarm.High, unit, 3),
+		quantity.Format(a.alarm.Suggested, unit, 3), entry.Value(a.read))
+}
+
+// cautions are the warnings of this step: before the part is touched, and around a test under voltage.
+func (g *grid) cautions(q screening.Question, open bool) []screening.Caution {
+	if !open {
+		return nil
+	}
+	switch q.Ask {
+	case screening.AskGate:
+		return q.Cautions
+	case screening.AskReading:
+		if len(q.Cautions) > 0 {
+			return q.Cautions
+		}
+		if q.Field.UnderVoltage && g.book.Cautions != nil {
+			j, err := g.walk.Judgement()
+			if err != nil {
+				return nil
+			}
+			return g.book.Cautions(j.Part, screening.AtMeasure)
+		}
+	}
+	return nil
+}

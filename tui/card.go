@@ -1,0 +1,338 @@
+package tui
+
+import (
+	"cmp"
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+
+	"goodbin/inventory"
+	"goodbin/screening"
+	"goodbin/screening/entry"
+	"goodbin/screening/quantity"
+)
+
+// cardData is what is shown of one part: its verdict with the reasons, and each limit with the reading on it.
+type cardData struct {
+	id        string
+	book      *screening.Rulebook
+	part      inventory.Part
+	judged    screening.Judgement
+	err       error
+	open      bool                // something is still asked
+	asked     *screening.Question // the reading asked now
+	allKey    string              // the key that shows everything of the part
+	answered  int
+	questions int
+}
+
+// largeFrom is the height of a card from which the verdict is written in large letters.
+const largeFrom = 16
+
+// card shows a part in at most h lines of w cells.
+func (t *theme) card(c cardData, w, h int) []string {
+	if w < 8 || h < 1 {
+		return nil
+	}
+	lines := []string{t.strong.paint(fit(c.id+"  "+t.clean(c.judged.Part.Claim.String()), w, t.g.more))}
+	switch {
+	case c.err != nil:
+		for _, l := range wrap(t.clean(errorText(c.err)+"; F9 corrects what it claims"), w) {
+			lines = append(lines, t.error.paint(l))
+		}
+		return lines
+	case c.open:
+		lines = append(lines, t.openLines(c, w)...)
+	default:
+		lines = append(lines, t.verdictLines(c, w, h)...)
+	}
+	return append(lines, t.findingLines(c, w, h-len(lines))...)
+}
+
+// openLines say how far a part is that is still being measured.
+func (t *theme) openLines(c cardData, w int) []string {
+	text := strconv.Itoa(c.answered) + " of " + strconv.Itoa(c.questions) + " readings; no verdict yet"
+	var lines []string
+	lines = append(lines, t.faint.paint(fit(text, w, t.g.more)))
+	for _, r := range c.judged.Reasons {
+		if r.Code == screening.CodeFails || r.Code == screening.CodeUntreated || r.Code == screening.CodeStop {
+			lines = append(lines, t.error.paint(fit(t.clean(r.Text), w, t.g.more)))
+		}
+	}
+	return lines
+}
+
+// verdictLines are the verdict, large and in words, why, what was not tested, and what to do now.
+func (t *theme) verdictLines(c cardData, w, h int) []string {
+	j := c.judged
+	beside := c.id + " " + j.Verdict.String()
+	if g := j.Grade.String(); g != "" {
+		beside += ", " + g
+	}
+	if j.RegradedAs != nil {
+		beside += ", as " + t.clean(j.RegradedAs.Text)
+	}
+	lines := t.banner(j.Verdict, beside, w, h >= largeFrom)
+	most := 2
+	if h < largeFrom {
+		most = 1
+	}
+	if j.RegradedAs != nil && h < largeFrom {
+		lines = append(lines, fit("as "+t.clean(j.RegradedAs.Text), w, t.g.more))
+	}
+	for i, r := range weighty(j.Reasons) {
+		if i == most+1 {
+			break
+		}
+		lines = append(lines, wrapHang("", t.clean(r.Text), w, most, t.g.more)...)
+	}
+	if untested := c.notTested(); untested != "" {
+		for _, l := range wrapHang("not tested: ", t.clean(untested), w, 2, t.g.more) {
+			lines = append(lines, t.label.paint(l))
+		}
+	}
+	for _, s := range j.Next[:min(len(j.Next), most)] {
+		for _, l := range wrapHang(t.g.marker+" ", t.clean(s.Text), w, most, t.g.more) {
+			lines = append(lines, t.strong.paint(l))
+		}
+	}
+	if j.Assumed && h >= largeFrom {
+		lines = append(lines, t.faint.paint(fit("no meter named: its accuracy is assumed", w, t.g.more)))
+	}
+	warnings := t.cautionLines(j.Cautions, "", w)
+	if room := max(2, h/4); len(warnings) > room {
+		warnings = append(warnings[:room-1:room-1], t.danger.paint(fit(t.g.more+" the rest of this warning: "+c.allKey, w, t.g.more)))
+	}
+	lines = append(lines, warnings...)
+	return append(lines, "")
+}
+
+// weighty puts the reasons that decide before those that only comment.
+func weighty(reasons []screening.Reason) []screening.Reason {
+	var first, rest []screening.Reason
+	for _, r := range reasons {
+		switch r.Code {
+		case screening.CodeNote, screening.CodeAssumed:
+			rest = append(rest, r)
+		default:
+			first = append(first, r)
+		}
+	}
+	return append(first, rest...)
+}
+
+// notTested lists what was wanted and not measured, and what the evidence leaves unproven.
+func (c *cardData) notTested() string {
+	var gaps []string
+	for _, g := range c.judged.NotTested {
+		text := c.nameOf(g.Of, g.Section)
+		if !g.At.IsZero() {
+			text += " at " + g.At.String()
+		}
+		gaps = append(gaps, text)
+	}
+	return strings.Join(append(gaps, c.judged.Untested...), "; ")
+}
+
+// nameOf words a characteristic: by its label where its rulebook is known, else by the word of the command line.
+func (c *cardData) nameOf(of screening.Characteristic, section string) string {
+	name := strings.ReplaceAll(string(of), "-", " ")
+	if c.book != nil {
+		name = c.book.Definition(of).Label
+	}
+	if section != "" {
+		name += " of section " + section
+	}
+	return name
+}
+
+// headlines chooses one finding per criterion and section: what decides it, at the grade reached.
+func headlines(j screening.Judgement, asked *screening.Question) []screening.Finding {
+	var heads []screening.Finding
+	rank := func(f *screening.Finding) int {
+		r := [...]int{screening.Missing: 0, screening.Close: 2, screening.Pass: 4, screening.Fail: 6}[f.Outcome]
+		if f.Limit.Grade == j.Grade || f.Limit.Grade == screening.AnyGrade || j.Grade == screening.AnyGrade && f.Limit.Grade == screening.Serviceable {
+			r++
+		}
+		return r
+	}
+	for i := range j.Findings {
+		f := &j.Findings[i]
+		at := -1
+		for k := range heads {
+			if heads[k].Limit.Criterion == f.Limit.Criterion && heads[k].Limit.Section == f.Limit.Section {
+				at = k
+			}
+		}
+		switch {
+		case at < 0:
+			heads = append(heads, *f)
+		case rank(f) > rank(&heads[at]):
+			heads[at] = *f
+		}
+	}
+	slices.SortStableFunc(heads, func(a, b screening.Finding) int { return cmp.Compare(urgency(a), urgency(b)) })
+	if asked != nil && asked.Limit != nil {
+		for k := range heads {
+			if heads[k].Limit.Criterion == asked.Limit.Criterion && heads[k].Limit.Section == asked.Limit.Section {
+				chosen := heads[k]
+				return append([]screening.Finding{chosen}, append(heads[:k:k], heads[k+1:]...)...)
+			}
+		}
+	}
+	return heads
+}
+
+// urgency orders findings: what fails or is too near to call comes first.
+func urgency(f screening.Finding) int {
+	switch f.Outcome {
+	case screening.Fail:
+		return 0
+	case screening.Close:
+		return 1
+	}
+	return 2
+}
+
+// findingLines shows the findings in at most h lines: all in full where there is room, else the first one in full and the others in as
+// many lines as are left for each.
+func (t *theme) findingLines(c cardData, w, h int) []string {
+	heads := headlines(c.judged, c.asked)
+	if len(heads) == 0 || h <= 0 {
+		return nil
+	}
+	full := make([][]string, len(heads))
+	total := -1
+	for i := range heads {
+		full[i] = t.finding(&c, &heads[i], w)
+		total += len(full[i]) + 1
+	}
+	var lines []string
+	for i := range heads {
+		others := len(heads) - 1
+		switch {
+		case total <= h:
+			lines = append(append(lines, full[i]...), "")
+		case i == 0 && len(full[0])+others <= h:
+			lines = append(lines, full[0]...)
+		case i > 0 && len(lines)+2*(len(heads)-i) <= h || i == 0 && 2*len(heads) <= h:
+			lines = append(lines, full[i][:2]...)
+		default:
+			lines = append(lines, t.findingLine(&heads[i], w))
+		}
+	}
+	return lines[:min(len(lines), h)]
+}
+
+// finding shows one limit in full: what was read, the scale, the rule with its numbers, the source.
+func (t *theme) finding(c *cardData, f *screening.Finding, w int) []string {
+	name, read := t.clean(c.nameOf(f.Limit.On, f.Limit.Section)), t.clean(readingText(f))
+	if width(name)+width(read)+width(outcomeText(f))+3 > w {
+		name = t.clean(findingName(f))
+	}
+	lines := []string{
+		between(t.strong.paint(name)+"  "+read, t.outcomeInk(f.Outcome).paint(outcomeText(f)), w, t.g.more),
+	}
+	if !math.IsInf(f.Limit.Low, -1) || !math.IsInf(f.Limit.High, 1) {
+		lines = append(lines, t.outcomeInk(f.Outcome).paint(t.labelledScale(f.Limit, f.Evidence(), w)))
+	}
+	rule := screening.Allowed(f.Limit)
+	if formula := f.Limit.FormulaText(); formula != "" {
+		rule = formula
+	}
+	lines = append(lines, wrapHang("  ", t.clean(rule), w, 2, t.g.more)...)
+	if f.Converted != nil {
+		lines = append(lines, wrapHang("  ", t.clean("brought over: "+f.Converted.Rule), w, 2, t.g.more)...)
+	}
+	if f.Why != "" && f.Why != "not measured" {
+		for _, l := range wrapHang("  ", t.clean(f.Why), w, 2, t.g.more) {
+			lines = append(lines, t.label.paint(l))
+		}
+	}
+	source := f.Limit.Source.String()
+	if g := f.Limit.Grade.String(); g != "" {
+		source = g + ": " + source
+	}
+	for _, l := range wrapHang("  ", t.clean(source), w, 2, t.g.more) {
+		lines = append(lines, t.faint.paint(l))
+	}
+	return lines
+}
+
+// findingLine shows one limit in a line: its name, what was read, a small scale, the outcome.
+func (t *theme) findingLine(f *screening.Finding, w int) string {
+	const nameW, valueW, outcomeW = 13, 9, 8
+	name := fit(t.clean(findingName(f)), nameW, t.g.more) + " "
+	value := "none"
+	if e := f.Evidence(); e != nil {
+		value = t.clean(entry.Value(*e))
+	}
+	line := name + fitRight(value, valueW, t.g.more) + " "
+	if room := w - nameW - valueW - outcomeW - 3; room >= 8 {
+		line += t.scale(f.Limit, f.Evidence(), room) + " "
+	}
+	return t.outcomeInk(f.Outcome).paint(fit(line+outcomeText(f), w, t.g.more))
+}
+
+func findingName(f *screening.Finding) string {
+	name := strings.ReplaceAll(string(f.Limit.On), "-", " ")
+	if f.Limit.Section != "" {
+		name += " " + f.Limit.Section
+	}
+	return name
+}
+
+func readingText(f *screening.Finding) string {
+	e := f.Evidence()
+	if e == nil {
+		if f.By == screening.ByRating && f.Outcome == screening.Pass {
+			return "claimed"
+		}
+		return ""
+	}
+	text := entry.Value(*e)
+	if e.U > 0 {
+		text += " ± " + quantity.Format(coverage*e.U, e.Unit, 2)
+	}
+	return text
+}
+
+func outcomeText(f *screening.Finding) string {
+	switch {
+	case f.Outcome == screening.Pass && f.NearLimit:
+		return "near limit"
+	case f.Outcome == screening.Missing && f.Need != screening.Required:
+		return "optional"
+	case f.Unconfirmed:
+		return "unconfirmed"
+	}
+	return f.Outcome.String()
+}
+
+// allOf shows everything that is known of a part: the verdict, every reason, every limit.
+func (t *theme) allOf(c cardData, w int) []string {
+	if c.err != nil {
+		return wrap(t.clean(errorText(c.err)), w)
+	}
+	j := c.judged
+	lines := append([]string{t.strong.paint(t.clean(j.Part.Claim.String()))}, t.banner(j.Verdict, c.id+" "+j.Grade.String(), w, false)...)
+	add := func(prefix, text string) { lines = append(lines, wrapHang(prefix, t.clean(text), w, 0, "")...) }
+	for _, r := range weighty(j.Reasons) {
+		add(t.g.bullet+" ", r.Text)
+	}
+	if untested := c.notTested(); untested != "" {
+		add("not tested: ", untested)
+	}
+	for _, s := range j.Next {
+		add(t.g.marker+" ", s.Text)
+	}
+	for _, caution := range j.Cautions {
+		add(strings.ToUpper(caution.Level.String())+": ", caution.Text+" ["+caution.Source.String()+"]")
+	}
+	lines = append(lines, "", t.faint.paint(fit(t.clean("The parentheses on a scale span ±2 standard uncertainties, about 95 %."), w, t.g.more)), "")
+	for i := range j.Findings {
+		lines = append(append(lines, t.finding(&c, &j.Findings[i], w)...), "")
+	}
+	return lines
+}
