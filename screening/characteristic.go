@@ -63,7 +63,7 @@ var (
 	// Ptot is a rating only: the power that the part claims to dissipate, at the mounting its sheet states.
 	Ptot = Definition{Name: "ptot", Symbol: "Ptot", Label: "rated dissipation", Unit: quantity.Watt}
 	// Temperature is the ambient of the whole set of readings, in °C.
-	Temperature = Definition{Name: "temperature", Symbol: "ϑ", Label: "temperature of the part", Unit: quantity.Celsius}
+	Temperature = Definition{Name: "temperature", Symbol: "TA", Label: "temperature of the part", Unit: quantity.Celsius}
 	// RemainingVoltage is what stands across a part after it was discharged: the gate before it is touched.
 	RemainingVoltage = Definition{Name: "remaining-voltage", Symbol: "U", Label: "volts remaining on the part", Unit: quantity.Volt}
 )

@@ -70,54 +70,88 @@ func VariableNamed(name string) (Variable, bool) {
 	return NoVariable, false
 }
 
+// MaxConditions is how many variables one condition can state: more than any data sheet does for one value.
+const MaxConditions = 7
+
 // Condition is what a value holds at. A variable that is absent is not zero: DC, 0 V and 0 °C are values. The zero Condition holds at
-// nothing in particular. It is comparable.
+// nothing in particular. It is comparable, small, and states its variables in their order.
 type Condition struct {
-	has    uint16
-	values [variables]float64
+	n      uint8
+	which  [MaxConditions]Variable
+	values [MaxConditions]float64
 }
 
 // At builds a condition of one variable; chain With for more.
 func At(v Variable, x float64) Condition { return Condition{}.With(v, x) }
 
-// With returns the condition with v set to x (SI). NoVariable and NaN leave it as it is.
+// With returns the condition with v set to x (SI). NoVariable, NaN and a variable beyond MaxConditions leave it as it is.
 func (c Condition) With(v Variable, x float64) Condition {
 	if v == NoVariable || v >= variables || math.IsNaN(x) {
 		return c
 	}
-	c.has |= 1 << v
-	c.values[v] = x
+	i := c.find(v)
+	if i < int(c.n) && c.which[i] == v {
+		c.values[i] = x
+		return c
+	}
+	if c.n == MaxConditions {
+		return c
+	}
+	copy(c.which[i+1:], c.which[i:c.n])
+	copy(c.values[i+1:], c.values[i:c.n])
+	c.which[i], c.values[i] = v, x
+	c.n++
 	return c
+}
+
+// find returns where v stands, or would stand.
+func (c *Condition) find(v Variable) int {
+	i := 0
+	for i < int(c.n) && c.which[i] < v {
+		i++
+	}
+	return i
 }
 
 // Without returns the condition with v absent.
 func (c Condition) Without(v Variable) Condition {
-	if v < variables {
-		c.has &^= 1 << v
-		c.values[v] = 0
+	i := c.find(v)
+	if i == int(c.n) || c.which[i] != v {
+		return c
 	}
+	c.n--
+	copy(c.which[i:], c.which[i+1:])
+	copy(c.values[i:], c.values[i+1:])
+	c.which[c.n], c.values[c.n] = NoVariable, 0
 	return c
 }
 
-// Get returns the value of v and whether it is present.
-func (c Condition) Get(v Variable) (float64, bool) {
-	if v >= variables || c.has&(1<<v) == 0 {
+// get is Get without the copy.
+func (c *Condition) get(v Variable) (float64, bool) {
+	i := c.find(v)
+	if i == int(c.n) || c.which[i] != v {
 		return 0, false
 	}
-	return c.values[v], true
+	return c.values[i], true
 }
 
+// Get returns the value of v and whether it is present.
+func (c Condition) Get(v Variable) (float64, bool) { return c.get(v) }
+
 // Has reports whether v is present.
-func (c Condition) Has(v Variable) bool { return v < variables && c.has&(1<<v) != 0 }
+func (c Condition) Has(v Variable) bool {
+	_, ok := c.get(v)
+	return ok
+}
 
 // IsZero reports whether nothing is stated.
-func (c Condition) IsZero() bool { return c.has == 0 }
+func (c Condition) IsZero() bool { return c.n == 0 }
 
 // Fill returns c with what it lacks taken from d.
 func (c Condition) Fill(d Condition) Condition {
-	for v := Frequency; v < variables; v++ {
-		if x, ok := d.Get(v); ok && !c.Has(v) {
-			c = c.With(v, x)
+	for i, v := range d.which[:d.n] {
+		if _, has := c.get(v); !has {
+			c = c.With(v, d.values[i])
 		}
 	}
 	return c
@@ -125,15 +159,12 @@ func (c Condition) Fill(d Condition) Condition {
 
 // String prints the condition as people write it: "120 Hz, 35 V, after 2 min". Variables with a name of their own carry it: "IC 10 mA".
 func (c Condition) String() string {
-	if c.has == 0 {
+	if c.n == 0 {
 		return ""
 	}
 	var b strings.Builder
-	for v := Frequency; v < variables; v++ {
-		x, ok := c.Get(v)
-		if !ok {
-			continue
-		}
+	for i, v := range c.which[:c.n] {
+		x := c.values[i]
 		if b.Len() > 0 {
 			b.WriteString(", ")
 		}
@@ -165,16 +196,13 @@ var sameWithin = Span{0.98, 1.02}
 // Misfit returns the first variable at which a reading taken at `reading` cannot be compared with a limit stated at `limit` as it stands;
 // absent reports whether that variable is missing from the reading rather than off. ok is true when everything fits.
 func (f Fit) Misfit(reading, limit *Condition) (v Variable, absent, ok bool) {
-	for v := Frequency; v < variables; v++ {
-		want, stated := limit.Get(v)
-		if !stated {
-			continue
-		}
+	for i, v := range limit.which[:limit.n] {
+		want := limit.values[i]
 		span, listed := f[v]
 		if !listed {
 			span = sameWithin
 		}
-		got, present := reading.Get(v)
+		got, present := reading.get(v)
 		switch {
 		case span == Any:
 		case !present:

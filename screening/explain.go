@@ -32,8 +32,19 @@ func (j *judging) explain(r *Judgement, states []criterionState) {
 	if r.Verdict != Accept && r.RegradedAs != nil {
 		r.Reasons = append(r.Reasons, Reason{Code: CodeLesserClaim, Text: r.RegradedAs.Text})
 	}
-	r.Reasons = append(r.Reasons, notes...)
+	r.Reasons = once(append(r.Reasons, notes...))
 	j.nextSteps(r, states)
+}
+
+// once drops what was said before: two criteria may wait for one reading.
+func once[T comparable](all []T) []T {
+	kept := all[:0]
+	for _, x := range all {
+		if !slices.Contains(kept, x) {
+			kept = append(kept, x)
+		}
+	}
+	return kept
 }
 
 func (j *judging) explainCriterion(r *Judgement, s criterionState) {
@@ -59,8 +70,13 @@ func (j *judging) explainCriterion(r *Judgement, s criterionState) {
 	}
 	first := s.findings[0]
 	if s.need != Required {
-		r.NotTested = append(r.NotTested, first.Wants)
+		if first.Wants.Of != "" { // the rulebook emptied it to word it itself
+			r.NotTested = append(r.NotTested, first.Wants)
+		}
 		return
+	}
+	if i := slices.IndexFunc(s.findings, func(f *Finding) bool { return f.Reading != nil }); i >= 0 {
+		first = s.findings[i] // why a reading does not count says more than that its alternative was not taken
 	}
 	r.Reasons = append(r.Reasons, Reason{
 		Code: CodeMeasure, Of: first.Limit.On, Text: j.name(first.Limit.On, first.Limit.Section) + ": " + first.Why,
@@ -170,15 +186,17 @@ func (j *judging) settle(r *Judgement, states []criterionState) []Step {
 		if s.need != Required || s.outcome == Pass || s.outcome == Fail {
 			continue
 		}
+		// To state a condition of what was read is quicker than any measurement.
 		quickest := slices.MinFunc(s.findings, func(a, b *Finding) int {
-			return cmp.Or(cmp.Compare(b.Outcome, a.Outcome), cmp.Compare(j.effort(a), j.effort(b)))
+			return cmp.Or(cmp.Compare(b.Outcome, a.Outcome), -cmp.Compare(min(a.Unstated, 1), min(b.Unstated, 1)),
+				cmp.Compare(j.effort(a), j.effort(b)))
 		})
 		steps = append(steps, j.settleStep(s, quickest))
 	}
 	slices.SortStableFunc(steps, func(a, b Step) int {
 		return cmp.Compare(j.effortOf(a.Gap.Of), j.effortOf(b.Gap.Of))
 	})
-	return steps
+	return once(steps)
 }
 
 func (j *judging) settleStep(s criterionState, f *Finding) Step {
@@ -187,7 +205,11 @@ func (j *judging) settleStep(s criterionState, f *Finding) Step {
 	case s.outcome == Missing && f.Unstated != NoVariable:
 		return Step{Code: CodeMeasure, Text: "STATE the " + f.Unstated.String() + " of the reading: " + name, Gap: f.Wants}
 	case s.outcome == Missing && f.Reading == nil && j.ask(f.Limit.On) != "":
-		return Step{Code: CodeMeasure, Text: j.ask(f.Limit.On), Gap: f.Wants}
+		text := j.ask(f.Limit.On)
+		if f.Limit.Section != "" {
+			text += ", section " + f.Limit.Section
+		}
+		return Step{Code: CodeMeasure, Text: text, Gap: f.Wants}
 	case s.outcome == Missing:
 		text := "MEASURE " + name
 		if !f.Limit.At.IsZero() {
@@ -212,7 +234,8 @@ func (j *judging) ask(of Characteristic) string {
 	if f := j.book.bench(of); f != nil {
 		return f.Ask
 	}
-	return ""
+	f, _ := j.book.ClaimField(of)
+	return f.Ask
 }
 
 func (j *judging) effort(f *Finding) int64 { return j.effortOf(f.Limit.On) }

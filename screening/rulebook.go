@@ -1,6 +1,7 @@
 package screening
 
 import (
+	"strings"
 	"time"
 
 	"goodbin/screening/quantity"
@@ -118,6 +119,17 @@ func fieldNamed(fields []Field, name Characteristic) (Field, bool) {
 		}
 	}
 	return Field{}, false
+}
+
+// ExampleClaim returns what a person might type for a part of this kind: "2200uF 35V".
+func (b *Rulebook) ExampleClaim() string {
+	var examples []string
+	for i := range b.Claims {
+		if f := &b.Claims[i]; f.Example != "" && (f.Required || len(examples) < 2) {
+			examples = append(examples, f.Example)
+		}
+	}
+	return strings.Join(examples, " ")
 }
 
 // bench is BenchField without the copy; nil for an unknown name.

@@ -41,8 +41,7 @@ func (b *bench) startForm(lot inventory.Lot) {
 			},
 		},
 		fieldHeader: {
-			label: "it claims", hint: "as printed, once for the whole lot: 2200uF 35V M 1974. Empty: a tin of mixed parts, each with a claim of its own",
-			check: b.understandHeader,
+			label: "it claims", hintFor: b.headerHint, check: b.understandHeader,
 		},
 		fieldPlace:   {label: "place", hint: "where it will lie: shelf B, drawer 12"},
 		fieldSource:  {label: "source", hint: "where it comes from: bequest, biscuit tin 3"},
@@ -56,6 +55,15 @@ func (b *bench) startForm(lot inventory.Lot) {
 	for i, text := range []string{string(lot.Kind), lot.Header, lot.Place, lot.Source, lot.Storage, lot.Note} {
 		b.form.fields[i].in.set(text)
 	}
+}
+
+// headerHint shows what is printed on parts of the kind that was typed.
+func (b *bench) headerHint() string {
+	example := "2200uF 35V"
+	if book, err := kindFor(b.d.kinds, b.form.text(fieldKind)); err == nil {
+		example = book.ExampleClaim()
+	}
+	return "as printed, once for the whole lot: " + example + ". Empty: a tin of mixed parts, each with a claim of its own"
 }
 
 // kindFor finds the kind of a word or of its first letters.

@@ -13,7 +13,9 @@ import (
 type formField struct {
 	label string
 	hint  string // shown while nothing is typed
-	in    input
+	// hintFor is the hint where it depends on what other fields hold. It may be nil.
+	hintFor func() string
+	in      input
 	// check says what a text was understood as, or what would be right. It may be nil: any text will do.
 	check func(text string) (echo []string, err error)
 }
@@ -100,7 +102,7 @@ func (f *form) draw(t *theme, w, h int) ([]string, spot) {
 		text, cursor := field.in.draw(t, max(1, w-formLabelW-4))
 		if i != f.at {
 			if len(field.in.text) == 0 {
-				text = t.faint.paint(fit(t.clean(field.hint), max(1, w-formLabelW-4), t.g.more))
+				text = t.faint.paint(fit(t.clean(field.hinted()), max(1, w-formLabelW-4), t.g.more))
 			}
 			lines = append(lines, marker+t.label.paint(label)+" "+text)
 			continue
@@ -115,13 +117,20 @@ func (f *form) draw(t *theme, w, h int) ([]string, spot) {
 	return block(lines, w, h, t.g.more), at
 }
 
+func (f *formField) hinted() string {
+	if f.hintFor != nil {
+		return f.hintFor()
+	}
+	return f.hint
+}
+
 // under says what the field in focus was understood as.
 func (f *form) under(t *theme, w int) []string {
 	indent := spaces(formLabelW + 3)
 	field := &f.fields[f.at]
 	echo, err := f.understood(f.at)
 	if !f.tried && (err != nil || len(field.in.text) == 0) {
-		return wrapHang(indent, t.clean(field.hint), w-1, 3, t.g.more)
+		return wrapHang(indent, t.clean(field.hinted()), w-1, 3, t.g.more)
 	}
 	if err != nil {
 		var lines []string

@@ -156,6 +156,9 @@ func (l *lines) ask(ctx context.Context, prompt string) (string, error) {
 	case <-ctx.Done():
 		return "", ctx.Err()
 	case got, ok := <-l.typed:
+		if err := ctx.Err(); err != nil {
+			return "", err // the reader ends with the context too, and either may be seen first
+		}
 		if !ok {
 			return "", errEnd
 		}

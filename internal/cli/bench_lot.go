@@ -139,7 +139,7 @@ func (l *lines) book1(name string) (*screening.Rulebook, error) {
 
 // askHeader asks what is printed on every part of the lot; nothing makes it a mixed one, whose parts are asked each.
 func (l *lines) askHeader(ctx context.Context, lot *inventory.Lot) error {
-	prompt := "what is printed on them, such as " + exampleHeader(l.book) + " (empty: they differ)"
+	prompt := "what is printed on them, such as " + l.book.ExampleClaim() + " (empty: they differ)"
 	return l.answer(ctx, prompt, func(text string) error {
 		if done, err := l.common(text, linesHelp+"\n"+claimHelp(l.book)); done || err != nil {
 			return err
@@ -175,16 +175,6 @@ func (l *lines) claimWords(text string) (entry.Parsed, error) {
 		}
 	}
 	return parsed, nil
-}
-
-func exampleHeader(book *screening.Rulebook) string {
-	var examples []string
-	for _, f := range book.Claims {
-		if f.Example != "" && (f.Required || len(examples) < 2) {
-			examples = append(examples, f.Example)
-		}
-	}
-	return strings.Join(examples, " ")
 }
 
 // claimHelp lists what the kind's claims look like.

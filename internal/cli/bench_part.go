@@ -60,7 +60,7 @@ func (l *lines) beginPart(ctx context.Context) error {
 		return err
 	}
 	if l.lot.Mixed && l.part.Header == "" {
-		err := l.answer(ctx, "what is printed on it, such as "+exampleHeader(l.book), func(text string) error {
+		err := l.answer(ctx, "what is printed on it, such as "+l.book.ExampleClaim(), func(text string) error {
 			if done, err := l.common(text, linesHelp+"\n"+claimHelp(l.book)); done || err != nil {
 				return err
 			}

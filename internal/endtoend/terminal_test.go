@@ -51,8 +51,10 @@ func (term *terminal) await(text string) string {
 	return ""
 }
 
-func (term *terminal) keys(keys ...string) { term.tmux(append([]string{"send-keys", "--"}, keys...)...) }
-func (term *terminal) text(text string)    { term.tmux("send-keys", "-l", "--", text) }
+func (term *terminal) keys(keys ...string) {
+	term.tmux(append([]string{"send-keys", "--"}, keys...)...)
+}
+func (term *terminal) text(text string) { term.tmux("send-keys", "-l", "--", text) }
 
 // enter types a text and Enter.
 func (term *terminal) enter(text string) {
