@@ -64,10 +64,17 @@ func (term *terminal) enter(text string) {
 	term.keys("Enter")
 }
 
-// The same part is measured on the page at three sizes, in grey and in ASCII, and in linear mode through a pipe: the verdict is the same.
+// sameLot is a lot of film resistors, 4k7 ±5 %: what is typed for each part and what must come of it.
+var sameLot = []struct{ reading, verdict string }{
+	{"4.71", "accept"},
+	{"5.2", "regrade"}, // out of tolerance, still of use as measured
+	{"OL", "reject"},
+}
+
+// The same lot is measured on the page at three sizes, in grey and in ASCII, and in linear mode through a pipe: the same verdicts.
 func TestPageAndLinearModeSayTheSame(t *testing.T) {
 	program := buildProgram(t)
-	faces := []struct {
+	for _, face := range []struct {
 		name          string
 		width, height int
 		env, flags    string
@@ -77,47 +84,74 @@ func TestPageAndLinearModeSayTheSame(t *testing.T) {
 		{"60×20", 60, 20, "", ""},
 		{"80×24 without colour", 80, 24, "NO_COLOR=1", ""},
 		{"80×24 in ASCII", 80, 24, "", "--ascii"},
-	}
-	for _, face := range faces {
+	} {
 		t.Run(face.name, func(t *testing.T) {
 			workbook := filepath.Join(t.TempDir(), "page.goodbin")
 			term := openTerminal(t, face.width, face.height,
 				fmt.Sprintf("env TERM=xterm-256color %s %s %s --workbook %s", face.env, program, face.flags, workbook))
 			term.await("New lot")
-			term.enter("resistor")
-			term.enter("4k7 5%")
-			term.enter("tray A")
-			term.enter("")
-			term.enter("")
-			term.enter("")
-			term.await("1-01")
-			term.await("across the mains")
-			term.enter("00")
-			term.await("resistance")
-			term.enter("4.71")
-			s := term.await("accept")
-			if face.flags == "--ascii" {
-				for _, r := range s {
-					if r > 126 {
-						t.Errorf("%q on an ASCII screen:\n%s", r, s)
-						break
-					}
+			for _, text := range []string{"resistor", "4k7 5% carbon-film", "tray A", "", "", ""} {
+				term.enter(text)
+			}
+			for i, part := range sameLot {
+				term.await(fmt.Sprintf("1-%02d", i+1))
+				term.await("across the mains")
+				term.enter("00")
+				term.await("resistance")
+				term.enter(part.reading)
+				s := term.await(part.verdict)
+				if face.flags == "--ascii" {
+					inASCII(t, s)
 				}
 			}
-			term.await("1-02")
 			term.keys("C-c")
 			term.await("left with 0")
-			out, err := exec.Command(program, "stock", "--workbook", workbook).CombinedOutput()
-			if err != nil || !strings.Contains(string(out), "1-01") || !strings.Contains(string(out), "accept") {
-				t.Errorf("stock after the page: %v\n%s", err, out)
-			}
+			stockSays(t, program, workbook)
 		})
 	}
-	lines := exec.Command(program, "bench", "--lines", "--workbook", filepath.Join(t.TempDir(), "lines.goodbin"))
-	lines.Stdin = strings.NewReader("resistor\n4k7 5%\ntray A\n\nn\nn\n4.71\nq\n")
-	out, err := lines.CombinedOutput()
-	if err != nil || !strings.Contains(string(out), "1-01: ACCEPT") {
-		t.Errorf("linear mode: %v\n%s", err, out)
+	t.Run("linear mode through a pipe", func(t *testing.T) {
+		workbook := filepath.Join(t.TempDir(), "lines.goodbin")
+		answers := "resistor\n4k7 5% carbon-film\ntray A\n\n"
+		for _, part := range sameLot {
+			answers += "n\nn\n" + part.reading + "\n\n"
+		}
+		lines := exec.Command(program, "bench", "--lines", "--workbook", workbook)
+		lines.Stdin = strings.NewReader(answers + "q\n")
+		out, err := lines.CombinedOutput()
+		if err != nil {
+			t.Errorf("linear mode: %v\n%s", err, out)
+		}
+		for i, part := range sameLot {
+			if want := fmt.Sprintf("1-%02d: %s", i+1, strings.ToUpper(part.verdict)); !strings.Contains(string(out), want) {
+				t.Errorf("linear mode never says %q:\n%s", want, out)
+			}
+		}
+		stockSays(t, program, workbook)
+	})
+}
+
+// stockSays checks the verdicts that a workbook holds.
+func stockSays(t *testing.T, program, workbook string) {
+	t.Helper()
+	out, err := exec.Command(program, "stock", "--all", "--by", "id", "--workbook", workbook).CombinedOutput()
+	rows := strings.Split(string(out), "\n")
+	if err != nil || len(rows) < len(sameLot) {
+		t.Fatalf("stock: %v\n%s", err, out)
+	}
+	for i, part := range sameLot {
+		if !strings.HasPrefix(rows[i], fmt.Sprintf("1-%02d\t%s", i+1, part.verdict)) {
+			t.Errorf("stock says %q; want %s", rows[i], part.verdict)
+		}
+	}
+}
+
+func inASCII(t *testing.T, screen string) {
+	t.Helper()
+	for _, r := range screen {
+		if r > 126 {
+			t.Errorf("%q on an ASCII screen:\n%s", r, screen)
+			return
+		}
 	}
 }
 
