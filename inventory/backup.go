@@ -23,7 +23,19 @@ func (w *Workbook) Backup(ctx context.Context, path string) error {
 	if err := recognise(path); errors.Is(err, ErrForeign) || errors.Is(err, ErrNewer) {
 		return err
 	}
-	return guard(w.path, func() error { return copyTo(ctx, w.db, path) })
+	return guard(w.path, func() error {
+		return copyTo(ctx, path, committed(w.db))
+	})
+}
+
+// committed writes the state of an open file.
+func committed(db *bolt.DB) func(io.Writer) error {
+	return func(to io.Writer) error {
+		return db.View(func(tx *bolt.Tx) error {
+			_, err := tx.WriteTo(to)
+			return err
+		})
+	}
 }
 
 func sameFile(a, b string) (bool, error) {
@@ -38,8 +50,8 @@ func sameFile(a, b string) (bool, error) {
 	return os.SameFile(first, second), nil
 }
 
-// copyTo writes a verified copy of an open file.
-func copyTo(ctx context.Context, db *bolt.DB, path string) error {
+// copyTo writes what fill writes to a file, verified before it takes the name.
+func copyTo(ctx context.Context, path string, fill func(io.Writer) error) error {
 	folder := filepath.Dir(path)
 	temp, err := os.CreateTemp(folder, "."+filepath.Base(path)+".part-*")
 	if err != nil {
@@ -47,10 +59,7 @@ func copyTo(ctx context.Context, db *bolt.DB, path string) error {
 	}
 	defer os.Remove(temp.Name())
 	to := &stoppable{ctx: ctx, to: temp}
-	err = db.View(func(tx *bolt.Tx) error {
-		_, err := tx.WriteTo(to)
-		return err
-	})
+	err = fill(to)
 	if to.failed != nil {
 		err = to.failed // bbolt words it, but does not wrap it
 	}

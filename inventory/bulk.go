@@ -9,11 +9,9 @@ import (
 	"slices"
 
 	bolt "go.etcd.io/bbolt"
-
-	"goodbin/screening"
 )
 
-// LoadStretch is how many parts Load and PutOutcomes keep in one transaction: some 40 MB of memory.
+// LoadStretch is how many parts Load keeps in one transaction: some 40 MB of memory.
 const LoadStretch = 20_000
 
 // appendFill is how full pages are made that are written once, in order.
@@ -46,31 +44,14 @@ type Loaded struct {
 // an error, the items' own or ctx's among them, the stretches before it stay and Loaded says how far it came.
 //
 // Records are written in the order of their keys, then each index in the order of its own, which is several times faster than one part
-// after the other and leaves a smaller file.
+// after the other and leaves a smaller file. While a stretch is written, the next is collected.
 func (w *Workbook) Load(ctx context.Context, items iter.Seq2[Item, error], opts LoadOptions) (Loaded, error) {
 	if opts.stretch == 0 {
 		opts.stretch = LoadStretch
 	}
-	l := &loader{w: w, opts: opts, top: map[uint32]uint32{}, next: map[uint32]uint32{}}
-	l.clear()
-	for item, err := range items {
-		if err == nil {
-			err = ctx.Err()
-		}
-		if err == nil {
-			err = l.add(item)
-		}
-		if err == nil && len(l.parts) >= opts.stretch {
-			err = l.flush()
-		}
-		if err != nil {
-			return l.done, err
-		}
-	}
-	if err := ctx.Err(); err != nil {
-		return l.done, err
-	}
-	return l.done, l.flush()
+	l := &loader{w: w, opts: opts, now: newStretch(), top: map[uint32]uint32{}, next: map[uint32]uint32{}}
+	err := l.run(ctx, items)
+	return l.done, errors.Join(err, l.wait())
 }
 
 // pendingPart is a part ready to be written.
@@ -80,23 +61,48 @@ type pendingPart struct {
 	row    *storedRow
 }
 
-// loader collects a stretch.
-type loader struct {
-	w     *Workbook
-	opts  LoadOptions
-	done  Loaded
+// stretch is what goes into one transaction.
+type stretch struct {
 	lots  []Lot
-	known map[uint32]Lot // lots of this stretch, and those looked up
+	known map[uint32]Lot // its lots, and those its parts belong to
 	parts []pendingPart
-	ids   map[ID]int        // where in parts
-	top   map[uint32]uint32 // by lot: the largest number given in this load
-	next  map[uint32]uint32 // by lot: the next free number, once asked for
-	last  uint32            // the largest lot number, once asked for
+	ids   map[ID]int // where in parts
 }
 
-func (l *loader) clear() {
-	l.lots, l.parts = nil, make([]pendingPart, 0, 1024)
-	l.known, l.ids = map[uint32]Lot{}, map[ID]int{}
+func newStretch() *stretch { return &stretch{known: map[uint32]Lot{}, ids: map[ID]int{}} }
+
+// loader collects stretches.
+type loader struct {
+	w       *Workbook
+	opts    LoadOptions
+	done    Loaded
+	now     *stretch          // being collected
+	writing *stretch          // being written; nil: none
+	written chan error        // says when it is
+	top     map[uint32]uint32 // by lot: the largest number given in this load
+	next    map[uint32]uint32 // by lot: the next free number, once asked for
+	last    uint32            // the largest lot number
+}
+
+func (l *loader) run(ctx context.Context, items iter.Seq2[Item, error]) error {
+	for item, err := range items {
+		if err == nil {
+			err = ctx.Err()
+		}
+		if err == nil {
+			err = l.add(item)
+		}
+		if err == nil && len(l.now.parts) >= l.opts.stretch {
+			err = l.flush()
+		}
+		if err != nil {
+			return err
+		}
+	}
+	if err := ctx.Err(); err != nil {
+		return err
+	}
+	return l.flush()
 }
 
 func (l *loader) add(item Item) error {
@@ -120,35 +126,47 @@ func (l *loader) addLot(lot *Lot) error {
 	if err != nil {
 		return err
 	}
-	if _, twice := l.known[lot.ID]; twice {
+	if l.coming(lot.ID) {
 		return fail(ErrHeld, fmt.Sprintf("lot %d comes twice", lot.ID))
 	}
 	l.last = max(l.last, lot.ID)
-	l.known[lot.ID] = *lot
-	l.lots = append(l.lots, *lot)
+	l.now.known[lot.ID] = *lot
+	l.now.lots = append(l.now.lots, *lot)
 	return nil
 }
 
-// look reads what a part needs from the file: its lot, and whether it is already kept.
+// coming reports whether a lot is among those about to be written.
+func (l *loader) coming(lot uint32) bool {
+	is := func(other Lot) bool { return other.ID == lot }
+	return slices.ContainsFunc(l.now.lots, is) || l.writing != nil && slices.ContainsFunc(l.writing.lots, is)
+}
+
+// look reads what a part needs from the file: its lot, the next number where it has none, and whether it is already kept.
 func (l *loader) look(p *Part) (held bool, err error) {
-	err = l.w.view(func(tx *bolt.Tx) error {
-		if _, known := l.known[p.ID.Lot]; !known {
-			lot, err := (&change{tx: tx, lots: l.known}).lot(p.ID.Lot)
-			if err != nil {
-				return err
-			}
-			l.known[lot.ID] = lot
+	lot := p.ID.Lot
+	if _, known := l.now.known[lot]; !known && l.writing != nil {
+		if before, ok := l.writing.known[lot]; ok {
+			l.now.known[lot] = before
 		}
-		if p.ID.IsLot() && l.next[p.ID.Lot] == 0 {
-			next, err := nextNumber(tx, p.ID.Lot)
+	}
+	err = l.w.view(func(tx *bolt.Tx) error {
+		if _, err := (&change{tx: tx, lots: l.now.known}).lot(lot); err != nil {
+			return err
+		}
+		if p.ID.IsLot() && l.next[lot] == 0 {
+			next, err := nextNumber(tx, lot)
 			if err != nil {
 				return err
 			}
-			l.next[p.ID.Lot] = max(next, l.top[p.ID.Lot]+1)
+			l.next[lot] = max(next, l.top[lot]+1)
 		}
 		held = !p.ID.IsLot() && tx.Bucket(bucketPart).Get(idKey(p.ID)) != nil
 		return nil
 	})
+	if l.writing != nil {
+		_, comes := l.writing.ids[p.ID]
+		held = held || comes
+	}
 	return held, err
 }
 
@@ -160,7 +178,7 @@ func (l *loader) addPart(p *Part) error {
 	if p.ID.IsLot() {
 		p.ID.Number = l.next[p.ID.Lot]
 	}
-	at, twice := l.ids[p.ID]
+	at, twice := l.now.ids[p.ID]
 	if (held || twice) && !l.opts.Again {
 		if l.opts.Held == nil {
 			return fail(ErrHeld, fmt.Sprintf("part %s is already kept; choose another number, or say that it is to be replaced", p.ID))
@@ -168,7 +186,7 @@ func (l *loader) addPart(p *Part) error {
 		l.done.Held++
 		return l.opts.Held(p.ID)
 	}
-	lot := l.known[p.ID.Lot]
+	lot := l.now.known[p.ID.Lot]
 	if err := preparePart(p, lot); err != nil {
 		return err
 	}
@@ -183,22 +201,52 @@ func (l *loader) addPart(p *Part) error {
 	}
 	pending := pendingPart{p.ID, sealed, newRow(*p, lot)}
 	if twice {
-		l.parts[at] = pending
+		l.now.parts[at] = pending
 		return nil
 	}
-	l.ids[p.ID] = len(l.parts)
-	l.parts = append(l.parts, pending)
+	l.now.ids[p.ID] = len(l.now.parts)
+	l.now.parts = append(l.now.parts, pending)
 	return nil
 }
 
-// flush writes the stretch.
+// flush begins to write the stretch, after the one before is written.
 func (l *loader) flush() error {
-	if len(l.lots) == 0 && len(l.parts) == 0 {
+	if err := l.wait(); err != nil {
+		return err
+	}
+	s := l.now
+	if len(s.lots) == 0 && len(s.parts) == 0 {
 		return nil
 	}
-	slices.SortFunc(l.parts, func(a, b pendingPart) int { return a.id.Compare(b.id) })
-	err := l.w.update(func(c *change) error {
-		for _, lot := range l.lots {
+	l.now, l.writing, l.written = newStretch(), s, make(chan error, 1)
+	go func() { l.written <- l.w.writeStretch(s, l.opts) }()
+	return nil
+}
+
+// wait ends when nothing is being written any more.
+func (l *loader) wait() error {
+	if l.writing == nil {
+		return nil
+	}
+	s := l.writing
+	err := <-l.written
+	l.writing = nil
+	if err != nil {
+		return err
+	}
+	l.done.Lots += len(s.lots)
+	l.done.Parts += len(s.parts)
+	if l.opts.Saved != nil {
+		l.opts.Saved(l.done.Lots, l.done.Parts)
+	}
+	return nil
+}
+
+// writeStretch writes a stretch as one action.
+func (w *Workbook) writeStretch(s *stretch, opts LoadOptions) error {
+	slices.SortFunc(s.parts, func(a, b pendingPart) int { return a.id.Compare(b.id) })
+	return w.update(func(c *change) error {
+		for _, lot := range s.lots {
 			if c.tx.Bucket(bucketLot).Get(lotKey(lot.ID)) != nil {
 				return fail(ErrHeld, fmt.Sprintf("lot %d was made meanwhile; load again", lot.ID))
 			}
@@ -206,19 +254,32 @@ func (l *loader) flush() error {
 				return err
 			}
 		}
-		if err := c.putSorted(l.parts, l.opts.Again); err != nil {
+		if err := c.followLots(s); err != nil {
 			return err
 		}
-		return c.commit(l.opts.Action, "")
+		if err := c.putSorted(s.parts, opts.Again); err != nil {
+			return err
+		}
+		return c.commit(opts.Action, "")
 	})
-	if err != nil {
-		return err
-	}
-	l.done.Lots += len(l.lots)
-	l.done.Parts += len(l.parts)
-	l.clear()
-	if l.opts.Saved != nil {
-		l.opts.Saved(l.done.Lots, l.done.Parts)
+}
+
+// followLots derives the rows anew whose lot was changed since they were collected.
+func (c *change) followLots(s *stretch) error {
+	for i := range s.parts {
+		pending := &s.parts[i]
+		lot, err := c.lot(pending.id.Lot)
+		if err != nil {
+			return err
+		}
+		if lot.Changed.Equal(s.known[lot.ID].Changed) {
+			continue
+		}
+		p, err := decodePart(idKey(pending.id), pending.sealed)
+		if err != nil {
+			return err
+		}
+		pending.row = newRow(p, lot)
 	}
 	return nil
 }
@@ -267,89 +328,4 @@ func (c *change) putSorted(parts []pendingPart, again bool) error {
 		}
 	}
 	return nil
-}
-
-// StaleParts walks the parts whose verdict was reached under other tables than these (by kind). PutOutcome may be called meanwhile.
-func (w *Workbook) StaleParts(tables map[screening.Kind]string) iter.Seq2[Part, error] {
-	return func(yield func(Part, error) bool) {
-		ids, err := w.staleIDs(tables)
-		if err != nil {
-			yield(Part{}, err)
-			return
-		}
-		for _, id := range ids {
-			p, err := w.GetPart(id)
-			if errors.Is(err, ErrNotFound) {
-				continue // undone meanwhile
-			}
-			if !yield(p, err) || err != nil {
-				return
-			}
-		}
-	}
-}
-
-func (w *Workbook) staleIDs(tables map[screening.Kind]string) ([]ID, error) {
-	var ids []ID
-	err := w.view(func(tx *bolt.Tx) error {
-		cursor := tx.Bucket(bucketRow).Cursor()
-		for key, sealed := cursor.First(); key != nil; key, sealed = cursor.Next() {
-			r, err := decodeRow(key, sealed)
-			if err != nil {
-				return err
-			}
-			if id, ok := idOf(key); ok && r.verdict != screening.NoVerdict && r.tables != tables[screening.Kind(r.kind)] {
-				ids = append(ids, id)
-			}
-		}
-		return nil
-	})
-	return ids, err
-}
-
-// PutOutcome replaces a part's outcome after re-judging. It is no action of the person: Undo passes over it.
-func (w *Workbook) PutOutcome(id ID, o Outcome) error {
-	return w.PutOutcomes(context.Background(), func(yield func(ID, Outcome) bool) { yield(id, o) })
-}
-
-// outcomeStretch is how many outcomes PutOutcomes keeps in one transaction.
-const outcomeStretch = 2000
-
-// PutOutcomes replaces many outcomes, in stretches, each durable. A part that is gone by then is passed over.
-func (w *Workbook) PutOutcomes(ctx context.Context, outcomes iter.Seq2[ID, Outcome]) error {
-	next, stop := iter.Pull2(outcomes)
-	defer stop()
-	for {
-		var ids []ID
-		var judged []Outcome
-		for len(ids) < outcomeStretch {
-			id, o, ok := next()
-			if !ok {
-				break
-			}
-			ids, judged = append(ids, id), append(judged, o)
-		}
-		if err := ctx.Err(); err != nil || len(ids) == 0 {
-			return err
-		}
-		err := w.update(func(c *change) error {
-			for i, id := range ids {
-				p, err := part(c.tx, id)
-				if errors.Is(err, ErrNotFound) {
-					continue
-				}
-				if err != nil {
-					return err
-				}
-				p.Outcome = judged[i]
-				if err := c.writePart(p); err != nil {
-					return err
-				}
-			}
-			return nil
-		})
-		if err != nil {
-			return err
-		}
-	}
 }

@@ -157,6 +157,53 @@ func TestAStoppedLoadKeepsWholeStretches(t *testing.T) {
 	}
 }
 
+func TestALotChangedDuringALoadIsFollowed(t *testing.T) {
+	w := newWorkbook(t)
+	l := addLot(t, w)
+	seq := func(yield func(Item, error) bool) {
+		for item, err := range items(l.ID, 1, 50) {
+			if item.Part.ID.Number == 25 {
+				l.Place, l.Claim = "attic", farads(1e-6, 16)
+				must0(t, w.PutLot(l))
+			}
+			if !yield(item, err) {
+				return
+			}
+		}
+	}
+	if done, err := w.Load(t.Context(), seq, LoadOptions{stretch: 20}); err != nil || done.Parts != 50 {
+		t.Fatalf("%+v, %v", done, err)
+	}
+	if page, err := w.Find(Query{Place: "attic"}); err != nil || page.Total != 50 {
+		t.Errorf("%d in the new place, %v", page.Total, err)
+	}
+	mustCheck(t, w)
+}
+
+func TestAcrossStretchesNothingIsTakenTwice(t *testing.T) {
+	w := newWorkbook(t)
+	addLot(t, w)
+	lot := Lot{Kind: "electrolytic"}
+	seq := func(yield func(Item, error) bool) {
+		if !yield(Item{Lot: &lot}, nil) {
+			return
+		}
+		for i := range 30 {
+			p := judged(lot.ID, screening.Accept, 1e-6)
+			p.ID.Number = uint32(1 + i%20)
+			if !yield(Item{Part: &p}, nil) {
+				return
+			}
+		}
+		again := Lot{ID: lot.ID, Kind: "electrolytic"}
+		yield(Item{Lot: &again}, nil)
+	}
+	done, err := w.Load(t.Context(), seq, LoadOptions{stretch: 7, Held: func(ID) error { return nil }})
+	if !errors.Is(err, ErrHeld) || done.Held != 10 || done.Parts != 14 {
+		t.Errorf("%+v, %v; want the lot that comes twice refused after two whole stretches", done, err)
+	}
+}
+
 func TestReindexRepairsTheIndexes(t *testing.T) {
 	w := newWorkbook(t)
 	l := addLot(t, w)

@@ -216,13 +216,13 @@ func usableRank(r *memRow) int {
 
 // placeRanks orders the places of what matched; parts without a place come last.
 func (s *snapshot) placeRanks(f *finding) []int32 {
-	used := map[uint32]bool{}
+	used := make([]bool, len(s.texts))
+	var places []uint32
 	for _, i := range f.matched {
-		used[s.rows[i].place] = true
-	}
-	places := make([]uint32, 0, len(used))
-	for n := range used {
-		places = append(places, n)
+		if n := s.rows[i].place; !used[n] {
+			used[n] = true
+			places = append(places, n)
+		}
 	}
 	slices.SortFunc(places, func(a, b uint32) int {
 		if (a == 0) != (b == 0) {

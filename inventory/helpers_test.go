@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"path/filepath"
+	"sync"
 	"testing"
 	"time"
 
@@ -17,7 +18,10 @@ import (
 // clock is a clock that goes on a second at each look.
 func clock() func() time.Time {
 	now := time.Date(2024, 3, 9, 19, 30, 0, 0, time.UTC)
+	var mu sync.Mutex
 	return func() time.Time {
+		mu.Lock()
+		defer mu.Unlock()
 		now = now.Add(time.Second)
 		return now
 	}

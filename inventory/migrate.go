@@ -34,7 +34,7 @@ func migrate(db *bolt.DB, path string, to uint32, steps []migration) error {
 	if err != nil || version == to {
 		return err
 	}
-	if err := copyTo(context.Background(), db, fmt.Sprintf("%s.schema-%d", path, version)); err != nil {
+	if err := copyTo(context.Background(), fmt.Sprintf("%s.schema-%d", path, version), committed(db)); err != nil {
 		return fmt.Errorf("copy before the workbook is brought to schema %d: %w", to, err)
 	}
 	for _, step := range steps {

@@ -14,7 +14,7 @@ type Options struct {
 	ReadOnly bool             // several readers may share a file; none can while it is open for writing elsewhere
 	Create   bool             // make an empty workbook where there is no file
 	Timeout  time.Duration    // how long to wait for another process; 0 is DefaultTimeout
-	Now      func() time.Time // the clock; nil is time.Now
+	Now      func() time.Time // the clock, safe for several goroutines; nil is time.Now
 
 	// Tables are the versions of the rulebooks' tables by kind: rows judged under others are shown as stale. nil: nothing is stale.
 	Tables map[screening.Kind]string

@@ -1,6 +1,7 @@
 package endtoend_test
 
 import (
+	"errors"
 	"fmt"
 	"os/exec"
 	"path/filepath"
@@ -179,4 +180,40 @@ func TestReopeningLandsOnTheSamePart(t *testing.T) {
 	if cursor := strings.TrimSpace(again.tmux("display-message", "-p", "#{cursor_flag} #{cursor_y}")); !strings.HasPrefix(cursor, "1 ") {
 		t.Errorf("the real cursor is not shown: %q", cursor)
 	}
+}
+
+// While the pages have the workbook open, a second process is told so, and can take a copy and read that.
+func TestASecondProcessReadsACopy(t *testing.T) {
+	program, folder := buildProgram(t), t.TempDir()
+	workbook, copied := filepath.Join(folder, "held.goodbin"), filepath.Join(folder, "copy.goodbin")
+	term := openTerminal(t, 80, 24, "env TERM=xterm-256color "+program+" --workbook "+workbook)
+	term.await("New lot")
+	for _, text := range []string{"resistor", "10k 5%", "tray B", "", "", ""} {
+		term.enter(text)
+	}
+	term.await("across the mains")
+	term.enter("00")
+	term.await("resistance")
+	term.enter("9.98")
+	term.await("1-02")
+
+	out, err := exec.Command(program, "stock", "--workbook", workbook).CombinedOutput()
+	if status := exitStatus(err); status != 3 || !strings.Contains(string(out), "in use by process") || !strings.Contains(string(out), "goodbin backup") {
+		t.Errorf("reading an open workbook: status %d\n%s", status, out)
+	}
+	if out, err = exec.Command(program, "backup", copied, "--workbook", workbook).CombinedOutput(); err != nil {
+		t.Fatalf("backup: %v\n%s", err, out)
+	}
+	out, err = exec.Command(program, "stock", "--workbook", copied).CombinedOutput()
+	if err != nil || !strings.HasPrefix(string(out), "1-01\taccept") {
+		t.Errorf("stock of the copy: %v\n%s", err, out)
+	}
+}
+
+func exitStatus(err error) int {
+	var exit *exec.ExitError
+	if errors.As(err, &exit) {
+		return exit.ExitCode()
+	}
+	return 0
 }
