@@ -38,6 +38,9 @@ func TestEveryRulebookIsWhole(t *testing.T) {
 					if names[f.Name] {
 						t.Errorf("%s: %q stands twice", group, f.Name)
 					}
+					if verb, _, _ := strings.Cut(f.Ask, " "); verb != strings.ToUpper(verb) || strings.HasSuffix(f.Ask, ".") {
+						t.Errorf("%s: %q asks %q, which does not begin with what to DO, or ends in a stop", group, f.Name, f.Ask)
+					}
 					names[f.Name] = true
 				}
 			}
@@ -133,6 +136,48 @@ func TestEveryLimitHasItsSource(t *testing.T) {
 					t.Error("no limit is in use")
 				}
 			})
+		}
+	}
+}
+
+// measured are parts whose readings make the rules across readings add limits of their own.
+var measured = map[screening.Kind][]string{
+	"electrolytic": {"470uF 50V M dated=2003 capacitance=690uF esr@120Hz=0.34 leakage@50V,2min=3.8mA"},
+	"diode":        {"vf=0.61 ir@20V=100uA temperature=25C"},
+	"bipolar":      {"BC547B vbe=OL"},
+}
+
+func TestEveryFindingHasItsSource(t *testing.T) {
+	for _, b := range rules.All() {
+		for _, text := range measured[b.Kind] {
+			p, err := entry.Words(b, strings.Fields(text))
+			if err != nil {
+				t.Fatal(err)
+			}
+			j, err := screening.Judge(b, screening.Part{Claim: p.Claim, Readings: p.Readings}, screening.DefaultPolicy())
+			if err != nil {
+				t.Fatal(err)
+			}
+			limits, err := b.Limits(j.Claim)
+			if err != nil {
+				t.Fatal(err)
+			}
+			added := 0
+			for i := range j.Findings {
+				l := j.Findings[i].Limit
+				checkLimit(t, b, j.Part, l)
+				if !slices.ContainsFunc(limits, func(k screening.Limit) bool { return k.On == l.On && k.High == l.High && k.Criterion == l.Criterion }) {
+					added++
+				}
+			}
+			if added == 0 {
+				t.Errorf("%s %s: no rule across readings changed anything", b.Kind, text)
+			}
+			for _, s := range j.Next {
+				if s.Text == "" || s.Text != strings.TrimSpace(s.Text) {
+					t.Errorf("%s %s: next step %q", b.Kind, text, s.Text)
+				}
+			}
 		}
 	}
 }

@@ -52,6 +52,19 @@ func (v Variable) String() string {
 	return variableNames[v]
 }
 
+var variableLabels = [variables]string{
+	"", "frequency", "voltage", "current", "base current", "collector current", "collector-emitter voltage", "collector-base voltage",
+	"gate-source voltage", "drain-source voltage", "drain current", "temperature", "time since the voltage was applied",
+}
+
+// Label returns the variable in words, for sentences: "collector current".
+func (v Variable) Label() string {
+	if v >= variables {
+		return ""
+	}
+	return variableLabels[v]
+}
+
 // Unit returns the variable's unit.
 func (v Variable) Unit() quantity.Unit {
 	if v >= variables {

@@ -103,7 +103,7 @@ func (j *judging) tryConversion(part *Part, f *Finding, fit Fit, r *Reading) {
 func misfitText(v Variable, absent bool, r *Reading, l *Limit) string {
 	if absent {
 		want, _ := l.At.Get(v)
-		return "the " + v.String() + " of the reading is not stated; the limit holds at " + quantity.Format(want, v.Unit(), 0)
+		return "the " + v.Label() + " of the reading is not stated; the limit holds at " + quantity.Format(want, v.Unit(), 0)
 	}
 	return "taken at " + r.At.String() + ", the limit holds at " + l.At.String()
 }

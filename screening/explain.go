@@ -196,14 +196,19 @@ func (j *judging) settle(r *Judgement, states []criterionState) []Step {
 	slices.SortStableFunc(steps, func(a, b Step) int {
 		return cmp.Compare(j.effortOf(a.Gap.Of), j.effortOf(b.Gap.Of))
 	})
-	return once(steps)
+	return slices.DeleteFunc(once(steps), func(s Step) bool {
+		// Taken at the condition that another criterion asks for, it answers both.
+		return s.Code == CodeMeasure && s.Gap.At.IsZero() && slices.ContainsFunc(steps, func(o Step) bool {
+			return o.Code == CodeMeasure && o.Gap.Of == s.Gap.Of && o.Gap.Section == s.Gap.Section && !o.Gap.At.IsZero()
+		})
+	})
 }
 
 func (j *judging) settleStep(s criterionState, f *Finding) Step {
 	name := j.name(f.Limit.On, f.Limit.Section)
 	switch {
 	case s.outcome == Missing && f.Unstated != NoVariable:
-		return Step{Code: CodeMeasure, Text: "STATE the " + f.Unstated.String() + " of the reading: " + name, Gap: f.Wants}
+		return Step{Code: CodeMeasure, Text: "STATE the " + f.Unstated.Label() + " of the reading: " + name, Gap: f.Wants}
 	case s.outcome == Missing && f.Reading == nil && j.ask(f.Limit.On) != "":
 		text := j.ask(f.Limit.On)
 		if f.Limit.Section != "" {

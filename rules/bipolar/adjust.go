@@ -20,6 +20,7 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	p := promiseOf(part.Claim)
 	var why []screening.Reason
 	undecided := gainUndecided(findings)
+	proven := provenVoltage(part, findings)
 	for i := range findings {
 		f := &findings[i]
 		if undecided && informative(&f.Limit) && f.Limit.Criterion == CriterionGain {
@@ -34,13 +35,80 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 			if f.Outcome == screening.Missing && leakageStatesTemperature(part) {
 				f.Outcome, f.Probability, f.Why = screening.Pass, 1, ""
 			}
+		case screening.VBR.Name:
+			if f.Outcome == screening.Missing && proven > 0 {
+				f.Wants = screening.Gap{} // untested words how far it was proved
+			}
 		case ICEO.Name:
 			if f.Outcome == screening.Fail && f.Limit.Grade == screening.WithinSpec && p.material == germanium {
 				why = appendNote(why, "more than 300 µA of open-base leakage is suspicious in a small germanium part; watch it for drift")
 			}
 		}
 	}
-	return findings, why
+	return turnProbes(part, oncePerGain(findings)), why
+}
+
+// oncePerGain keeps one finding of a gain limit that asks the same of a new part and of a serviceable one, where both came out alike. They
+// differ only in how sure the meter must be, and so only near a bound.
+func oncePerGain(findings []screening.Finding) []screening.Finding {
+	kept := 0
+	for i := range findings {
+		f := &findings[i]
+		if kept > 0 && f.Limit.Grade == screening.Serviceable && sameGain(&findings[kept-1], f) {
+			findings[kept-1].Limit.Grade = screening.AnyGrade
+			continue
+		}
+		if kept < i {
+			findings[kept] = *f
+		}
+		kept++
+	}
+	return findings[:kept]
+}
+
+func sameGain(spec, serviceable *screening.Finding) bool {
+	a, b := &spec.Limit, &serviceable.Limit
+	return a.Criterion == CriterionGain && b.Criterion == CriterionGain && a.Grade == screening.WithinSpec && a.On == b.On && a.Section == b.Section &&
+		a.At == b.At && a.Low == b.Low && a.High == b.High && a.Source == b.Source && spec.Outcome == serviceable.Outcome
+}
+
+// turnProbes keeps a base-emitter junction that reads open from rejecting until the probes were turned: it asks for that reading, and takes
+// it. Only open both ways is open. Which probe was plus is nowhere written down, so a known polarity does not settle it.
+func turnProbes(part screening.Part, findings []screening.Finding) []screening.Finding {
+	turned, read := part.Reading(VEB.Name, "")
+	if read && readsOpen(&turned) {
+		return findings
+	}
+	for i := range findings {
+		f := &findings[i]
+		if f.Limit.On != VBE.Name || f.Outcome != screening.Fail || !readsOpen(f.Reading) {
+			continue
+		}
+		if read {
+			unanswer(f, "it conducts with the probes turned, at "+quantity.Format(turned.Value, quantity.Volt, 3)+
+				": find which probe is plus and which lead the base; then type what conducts as vbe, or another polarity")
+			continue
+		}
+		unanswer(f, "it reads open this way round: turn the probes")
+		if f.Limit.Grade == screening.AnyGrade {
+			findings = append(findings, turnedFinding(f.Limit.Criterion))
+		}
+	}
+	return findings
+}
+
+// turnedFinding asks for the reading with the probes turned, beside the reading that a criterion asks of VBE.
+func turnedFinding(criterion screening.Criterion) screening.Finding {
+	asked := limit(&VEB, criterion, "conducts-vbe")
+	asked.Note = "where it conducts, the probes were the wrong way round, or the polarity or the leads are others"
+	return screening.Finding{
+		Limit: asked, Need: asked.Need, Probability: nan, Margin: nan, Wants: screening.Gap{Of: VEB.Name}, Why: "not measured",
+	}
+}
+
+// readsOpen reports whether a junction's forward voltage is the open display of a diode test, or above what two junctions drop.
+func readsOpen(r *screening.Reading) bool {
+	return r != nil && r.Sense != quantity.AtMost && (r.Over || r.Value > figures()["vbe-darlington"].high+0.3)
 }
 
 // unanswer takes a reading back as evidence for a limit, and says why.
@@ -79,9 +147,14 @@ func (p *promise) adjustGain(part screening.Part, f *screening.Finding) string {
 	r := f.Reading
 	if r == nil {
 		if f.Limit.On == HFENet.Name {
-			f.Why = "needs hfe with its collector current, and iceo at the same VCE and temperature"
+			f.Why = "needs hfe with its collector current, and iceo at the same temperature and the same VCE or more"
 		}
 		return ""
+	}
+	if ib, ok := r.At.Get(screening.IB); ok && f.Outcome == screening.Missing && f.Unstated == screening.IC {
+		f.Unstated = screening.NoVariable
+		f.Why = "taken at a base current of " + quantity.Format(ib, quantity.Ampere, 0) + ", a collector current of " +
+			quantity.Format(ib*r.Value, quantity.Ampere, 2)
 	}
 	if share, ok := leakageShare(part, *r); ok && f.Limit.On == HFE.Name && p.material != germanium && f.Limit.Criterion == CriterionGain {
 		unanswer(f, fmt.Sprintf("leakage is %.0f %% of the collector current; from %.0f %% on a gain reading is not valid (ASTM F528)",
@@ -204,8 +277,8 @@ func (p *promise) adjustVBE(f *screening.Finding) string {
 	x := e.Value
 	pair := figures()["vbe-darlington"]
 	switch {
-	case e.Over || x > pair.high+0.3:
-		return "base to emitter reads open: the wrong way round, the wrong pins, or an open junction; turn the probes before you throw it away"
+	case readsOpen(e):
+		return "base to emitter reads open: the wrong way round, the wrong pins, or an open junction"
 	case !p.darlington && x >= pair.low:
 		if !p.known {
 			unanswer(f, "it looks like a Darlington: if it is one, say darlington")

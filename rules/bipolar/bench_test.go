@@ -108,6 +108,32 @@ func TestWalkAsksQuickReadingsFirst(t *testing.T) {
 	}
 }
 
+// A junction that reads open is turned before it is measured again; the walk asks for that and for nothing twice.
+func TestWalkTurnsTheProbesOfAnOpenJunction(t *testing.T) {
+	w := screening.NewWalk(Book(), screening.DefaultPolicy(), screening.Part{
+		Claim: words("type=BC547B"), Look: []screening.Observation{{Check: "mains-or-cracked"}},
+	})
+	if err := w.Record(open(VBE)); err != nil {
+		t.Fatal(err)
+	}
+	if q := w.Next(); q.Field.Name != VEB.Name || w.Stopped() {
+		t.Fatalf("asks %q, stopped %v; want veb", q.Field.Name, w.Stopped())
+	}
+	if err := w.Record(open(VEB)); err != nil {
+		t.Fatal(err)
+	}
+	if j, _ := w.Judgement(); j.Verdict != screening.Reject || !w.Stopped() {
+		t.Errorf("open both ways: %s", j.Verdict)
+	}
+	w.Retract()
+	if err := w.Record(read(VBE, 0.66, none)); err != nil {
+		t.Fatal(err)
+	}
+	if q := w.Next(); q.Field.Name != HFE.Name {
+		t.Errorf("after the turned probes read 0.66 V it asks %q, want hfe", q.Field.Name)
+	}
+}
+
 // What stands on the command line, read by the program's own grammar.
 func TestCommandLineExamples(t *testing.T) {
 	for _, tt := range []struct {
@@ -121,7 +147,8 @@ func TestCommandLineExamples(t *testing.T) {
 		{"unmarked", "pnp si hfe=150 vbe=0.65 iceo@9V=..1uA", screening.Accept},
 		{"germanium with the room's temperature", "pnp ge vbe=0.14 hfe@5mA,9V=95 iceo@9V=75uA temperature=20C", screening.Accept},
 		{"germanium without", "pnp ge vbe=0.14 hfe@5mA,9V=95 iceo@9V=75uA", screening.Undecided},
-		{"open junction", "2N3906 vbe=OL", screening.Reject},
+		{"open one way round", "2N3906 vbe=OL", screening.Undecided},
+		{"open both ways round", "2N3906 vbe=OL veb=OL", screening.Reject},
 		{"blocks what the supply has", "2N3904 hfe@10mA,1V=180 vbe=0.68 iceo@20V=..0.1uA vbr=30V..", screening.Accept},
 	} {
 		t.Run(tt.name, func(t *testing.T) {

@@ -34,7 +34,7 @@ func Book() *screening.Rulebook {
 	return &screening.Rulebook{
 		Kind:     Kind,
 		Label:    "bipolar transistor",
-		Tables:   "bipolar 1, " + types.Version(),
+		Tables:   "bipolar 2, " + types.Version(),
 		Claims:   claims(),
 		Bench:    bench(),
 		Look:     []screening.Check{book.MainsOrCracked()},

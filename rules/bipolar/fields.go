@@ -25,6 +25,12 @@ var (
 		Name: "vbe", Symbol: "VBE", Label: "base-emitter voltage", Unit: quantity.Volt, AtVolts: screening.VCE, AtAmperes: screening.IC,
 		Over: screening.OverRange{Sense: quantity.AtLeast, Value: 2, Why: "taken as above 2 V, the least at which a diode test gives up"},
 	}
+	// VEB is what the same two leads show with the probes turned: a sound junction blocks. Only a junction that reads open both ways is open;
+	// open one way, it may be connected the wrong way round.
+	VEB = screening.Definition{
+		Name: "veb", Symbol: "VEB", Label: "base-emitter voltage, probes turned", Unit: quantity.Volt, AtVolts: screening.VCE,
+		AtAmperes: screening.IC, Over: VBE.Over,
+	}
 	// ICEO is the collector-emitter current with the base open.
 	ICEO = screening.Definition{
 		Name: "iceo", Symbol: "ICEO", Label: "collector-emitter leakage, base open", Unit: quantity.Ampere,
@@ -71,11 +77,12 @@ func claims() []screening.Field {
 		},
 		{
 			Definition: trait(screening.TraitPolarity, polarityLabel), Trait: true, Required: true, Example: npn,
-			Help: "npn or pnp; a known type says it", Words: []screening.Word{{Word: "npn", Text: npn}, {Word: "pnp", Text: pnp}},
+			Help: "npn or pnp; a known type says it", Ask: "SAY whether it is npn or pnp: polarity=npn or polarity=pnp", Words: []screening.Word{{Word: "npn", Text: npn}, {Word: "pnp", Text: pnp}},
 		},
 		{
 			Definition: trait(screening.TraitMaterial, materialLabel), Trait: true, Required: true, Example: silicon,
 			Help: "si or ge; a known type says it, and a part without a type number is taken as silicon",
+			Ask:  "SAY whether it is silicon or germanium: material=si or material=ge",
 			Words: []screening.Word{
 				{Word: "si", Text: silicon}, {Word: "silicon", Text: silicon}, {Word: "ge", Text: germanium}, {Word: "germanium", Text: germanium},
 			},
@@ -121,9 +128,15 @@ func bench() []screening.Field {
 			Help: "diode test base to emitter, the way round that the polarity says; a tester's current is taken as 1 mA",
 		},
 		{
+			Definition: VEB, Example: "veb=OL", Effort: 8 * time.Second,
+			Help: "only where vbe reads OL: the same two leads, probes turned",
+			Ask:  "TURN THE PROBES and read base to emitter again: type volts as vbe; OL this way too is an open junction (veb=OL)",
+		},
+		{
 			Definition: screening.Temperature, PerPart: true, Example: "temperature=21C", Effort: 12 * time.Second,
 			Band: screening.Span{Low: -40, High: 100},
 			Help: "of the part itself: an hour indoors, not held in the fingers",
+			Ask:  "STATE the temperature of the part: temperature=21C",
 		},
 		{
 			Definition: HFE, Example: "hfe@ic=2mA,vce=5V=290", Fit: gainFit, Default: screening.At(screening.VCE, 5),

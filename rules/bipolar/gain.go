@@ -55,7 +55,15 @@ func (p *promise) promisedGain(all []screening.Limit, on *screening.Definition, 
 	}
 	serviceable := *spec
 	serviceable.Grade, serviceable.Soft = screening.Serviceable, true
+	serviceable.Note = join(spec.Note, "asked as of a new part; a reading too near the bound to be sure is enough")
 	return append(all, serviceable)
+}
+
+func join(a, b string) string {
+	if a == "" {
+		return b
+	}
+	return a + "; " + b
 }
 
 func boundsText(low, high float64) string {

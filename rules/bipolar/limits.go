@@ -154,9 +154,6 @@ func (p *promise) breakdownLimits(all []screening.Limit) []screening.Limit {
 	return append(all, l)
 }
 
-// cool is the temperature at which leakage is compared, °C.
-const cool = 25
-
 // atVoltage returns the limit's condition with another collector voltage: never above the rated one.
 func (p *promise) atVoltage(at screening.Condition) screening.Condition {
 	if v, ok := at.Get(screening.VCE); ok && v > p.vceo {

@@ -23,7 +23,8 @@ func NetGain(hfe, uHFE, ic, iceo, uICEO float64) (net, u float64) {
 	return hfe * (1 - share), math.Hypot((1-share)*uHFE, hfe/ic*uICEO)
 }
 
-// derive computes the net gain of every gain reading that has a leakage reading at the same VCE and temperature, or says why not.
+// derive computes the net gain of every gain reading that has a leakage reading at the same temperature and the same VCE or a higher one, or
+// says why not.
 func derive(part screening.Part) ([]screening.Reading, []screening.Reason) {
 	germanium := part.Claim.Trait(screening.TraitMaterial) == germanium
 	var derived []screening.Reading
@@ -55,7 +56,7 @@ func netOf(part screening.Part, gain screening.Reading) (net screening.Reading, 
 	leak, ok := leakageBeside(part, gain)
 	if !ok {
 		v, _ := gain.At.Get(screening.VCE)
-		return net, "it needs iceo at the same VCE and temperature, " + quantity.Format(v, quantity.Volt, 0)
+		return net, "it needs iceo at the same temperature and the same VCE or more, " + quantity.Format(v, quantity.Volt, 0)
 	}
 	iceo, u := leak.Value, leak.U
 	switch leak.Sense {
@@ -74,11 +75,22 @@ func netOf(part screening.Part, gain screening.Reading) (net screening.Reading, 
 	}
 	net = gain
 	net.Of, net.Unit, net.Value, net.U = HFENet.Name, HFENet.Unit, value, uNet
-	net.Repeats, net.Step, net.Typed = nil, 0, ""
+	net.Repeats, net.Step, net.Typed = nil, stepOf(uNet), ""
 	net.Assumed = gain.Assumed || leak.Assumed
 	net.Rule = fmt.Sprintf("(%s − %s) over a base current of %s", quantity.Format(ic, quantity.Ampere, 3),
 		quantity.Format(iceo, quantity.Ampere, 3), quantity.Format(ic/gain.Value, quantity.Ampere, 3))
+	if leak.Sense == quantity.AtMost {
+		net.Rule += fmt.Sprintf("; the leakage lies between 0 and %s", quantity.Format(leak.Value, quantity.Ampere, 3))
+	}
 	return net, ""
+}
+
+// stepOf is the last digit worth printing of a value with this standard uncertainty: the power of ten at or below it.
+func stepOf(u float64) float64 {
+	if !(u > 0) {
+		return 0
+	}
+	return math.Pow10(int(math.Floor(math.Log10(u))))
 }
 
 // collectorCurrent returns the collector current at which a gain was read: stated, or its base current times the gain.
@@ -91,23 +103,30 @@ func collectorCurrent(gain screening.Reading) (float64, bool) {
 }
 
 // leakageBeside finds the last ICEO reading taken at the VCE and the temperature of a gain reading. A voltage that the gain reading only
-// assumes, or a temperature that one of them does not state, is taken as the other's.
+// assumes, or a temperature that one of them does not state, is taken as the other's. Where there is none, one taken at a higher VCE bounds
+// it from above: at a lower voltage a junction leaks no more.
 func leakageBeside(part screening.Part, gain screening.Reading) (screening.Reading, bool) {
+	var bound screening.Reading
+	found := false
 	for i := len(part.Readings) - 1; i >= 0; i-- {
 		leak := part.Readings[i]
-		if leak.Of == ICEO.Name && together(gain, leak) {
+		if leak.Of != ICEO.Name || !sameWarmth(gain, leak) {
+			continue
+		}
+		v1, ok1 := gain.At.Get(screening.VCE)
+		v2, ok2 := leak.At.Get(screening.VCE)
+		switch {
+		case !ok1 || !ok2 || gain.AssumedAt.Has(screening.VCE) || math.Abs(v1-v2) <= sameVCE*math.Max(v1, v2):
 			return leak, true
+		case v2 > v1 && leak.Sense != quantity.AtLeast && (!found || leak.Value < bound.Value):
+			bound, found = leak, true
+			bound.Sense = quantity.AtMost
 		}
 	}
-	return screening.Reading{}, false
+	return bound, found
 }
 
-func together(gain, leak screening.Reading) bool {
-	v1, ok1 := gain.At.Get(screening.VCE)
-	v2, ok2 := leak.At.Get(screening.VCE)
-	if ok1 && ok2 && !gain.AssumedAt.Has(screening.VCE) && math.Abs(v1-v2) > sameVCE*math.Max(v1, v2) {
-		return false
-	}
+func sameWarmth(gain, leak screening.Reading) bool {
 	t1, ok1 := gain.At.Get(screening.PartTemperature)
 	t2, ok2 := leak.At.Get(screening.PartTemperature)
 	return !ok1 || !ok2 || math.Abs(t1-t2) <= sameTemperature

@@ -56,28 +56,6 @@ func TestTransistorIdentities(t *testing.T) {
 	}
 }
 
-func TestLeakageDoublesEachTenKelvin(t *testing.T) {
-	for _, tt := range []struct {
-		name           string
-		i, from, to    float64
-		want, relative float64
-	}{
-		{"15 nA at 25 °C is 3.84 µA at 105 °C (Bell EDC 5.18, published)", 15e-9, 25, 105, 3.84e-6, 1e-9},
-		{"2 µA at 25 °C is 64 µA at 75 °C (Kishore 4.5, published)", 2e-6, 25, 75, 64e-6, 1e-9},
-		// Malvino 2-6 adds 7 % for each leftover degree: 5 nA·2⁷·1.07⁵ = 897.6 nA at 100 °C; the smooth law gives 905.1.
-		{"5 nA at 25 °C is about 898 nA at 100 °C (Malvino 2-6, published)", 5e-9, 25, 100, 897.6e-9, 0.01},
-		// A builder saw 0.32 mA at about 40 °C fall to 75 µA at about 20 °C: ×2.07 per 10 K (derived from the observation).
-		{"0.32 mA at 40 °C is about 75 µA at 20 °C", 0.32e-3, 40, 20, 75e-6, 0.07},
-	} {
-		if got := ScaleLeakage(tt.i, tt.from, tt.to, doublingKelvin); !near(got, tt.want, tt.relative) {
-			t.Errorf("%s: got %g", tt.name, got)
-		}
-	}
-	if per10K := math.Pow(0.32e-3/75e-6, 10.0/20); !near(per10K, 2.07, 0.01) {
-		t.Errorf("the observation gives ×%.2f per 10 K, want ×2.07", per10K)
-	}
-}
-
 // The worked germanium case: 110.1 corrected against 133.0 uncorrected. The page's inputs were not kept; 9 V, 2.2 MΩ, 2.472 kΩ, VBE 0.1 V
 // and 0.229 V with the base open, 1.330 V with it driven, are reconstructed and give both figures.
 func TestWorkedGermaniumGain(t *testing.T) {
@@ -110,6 +88,36 @@ func findReading(j screening.Judgement, of screening.Characteristic) (screening.
 	return screening.Reading{}, false
 }
 
+// ICEO of 120 µA at 9 V lies between 0 and 120 µA at 1 V: 60 µA ± 60 µA rectangular, which of 300 mA is a share of 0.0002 and moves a gain of
+// 110 by 0.022 (JCGM 100, 4.3.7).
+func TestLeakageAtAHigherVoltageBoundsTheNetGain(t *testing.T) {
+	j := judge(t, words("type=AC128"), read(VBE, 0.2, none), read(HFE, 110, at(ic, 0.3, vce, 1.0)), read(ICEO, 120e-6, at(vce, 9.0)), ambient(20))
+	r, ok := findReading(j, HFENet.Name)
+	gain, _ := findReading(j, HFE.Name)
+	// ICEO's own uncertainty adds to that of its bound: hypot(60 µA/√3 …) as for any leakage known only to lie below a value.
+	if !ok || !near(r.Value, 110*(1-0.0002), 1e-9) || !near(r.U, gain.U, 1e-3) || !strings.Contains(r.Rule, "the leakage lies between 0 and 120 µA") {
+		t.Errorf("derived %v: %g ± %g by %q", ok, r.Value, r.U, r.Rule)
+	}
+	if j.Verdict != screening.Accept {
+		t.Errorf("%s\n%s", j.Verdict, texts(j))
+	}
+	// Of two such readings the smaller bound counts, and one at the gain's own voltage before any.
+	for _, tt := range []struct {
+		name  string
+		leaks []screening.Reading
+		want  float64
+	}{
+		{"18 V after 9 V", []screening.Reading{read(ICEO, 120e-6, at(vce, 9.0)), read(ICEO, 300e-6, at(vce, 18.0))}, 60e-6},
+		{"1 V before 9 V", []screening.Reading{read(ICEO, 90e-6, at(vce, 1.0)), read(ICEO, 120e-6, at(vce, 9.0))}, 90e-6},
+	} {
+		gain := read(HFE, 100, at(ic, 10e-3, vce, 1.0))
+		part := screening.Part{Readings: append([]screening.Reading{gain}, tt.leaks...)}
+		if net, why := netOf(part, gain); why != "" || !near(net.Value, 100*(1-tt.want/10e-3), 1e-9) {
+			t.Errorf("%s: %g, %s", tt.name, net.Value, why)
+		}
+	}
+}
+
 func TestNetGainUncertainty(t *testing.T) {
 	// By hand: hFE 100 ± 6, ICEO 30 µA ± 1 µA of IC 100 µA. Net 70; u² = (0.7·6)² + (100/100e-6·1e-6)² = 17.64 + 1 = 18.64.
 	net, u := NetGain(100, 6, 100e-6, 30e-6, 1e-6)
@@ -132,8 +140,11 @@ func TestNetGainUncertainty(t *testing.T) {
 		{"75 µA of 100 µA: ±20 % is passed", gain(100e-6), read(ICEO, 75e-6, at(vce, 9.0, warm, 20.0)), true, ""},
 		{"85 µA of 90 µA: the difference drowns", gain(90e-6), read(ICEO, 85e-6, at(vce, 9.0, warm, 20.0)), false, "more than 20 %"},
 		{"all of it is leakage", gain(70e-6), leak, false, "the base controls nothing"},
-		{"the temperatures differ", gain(1e-3), read(ICEO, 75e-6, at(vce, 9.0, warm, 27.0)), false, "same VCE and temperature"},
-		{"the voltages differ", gain(1e-3), read(ICEO, 75e-6, at(vce, 4.5, warm, 20.0)), false, "same VCE and temperature"},
+		{"the temperatures differ", gain(1e-3), read(ICEO, 75e-6, at(vce, 9.0, warm, 27.0)), false, "same temperature and the same VCE or more"},
+		{"the leakage was read at a lower voltage", gain(1e-3), read(ICEO, 75e-6, at(vce, 4.5, warm, 20.0)), false, "same VCE or more"},
+		{"at a higher voltage it bounds", gain(1e-3), read(ICEO, 75e-6, at(vce, 18.0, warm, 20.0)), true, ""},
+		{"bounded too loosely", gain(100e-6), read(ICEO, 75e-6, at(vce, 18.0, warm, 20.0)), false, "more than 20 %"},
+		{"at least so much at a higher voltage bounds nothing", gain(1e-3), atLeast(read(ICEO, 5e-6, at(vce, 18.0, warm, 20.0))), false, "same VCE or more"},
 		{"no collector current", read(HFE, 100, at(vce, 9.0, warm, 20.0)), leak, false, "collector current of the gain is not stated"},
 		{"base current instead", read(HFE, 100, at(screening.IB, 10e-6, vce, 9.0, warm, 20.0)), leak, true, ""},
 		{"leakage only bounded from above", gain(1e-3), atMost(read(ICEO, 5e-6, at(vce, 9.0, warm, 20.0))), true, ""},
@@ -147,6 +158,9 @@ func TestNetGainUncertainty(t *testing.T) {
 			}
 			if ok && (r.U <= 0 || 2*r.U/r.Value > widestNet || r.Rule == "") {
 				t.Errorf("net gain %g ± %g by %q", r.Value, r.U, r.Rule)
+			}
+			if ok && (r.Step > r.U || r.Step < r.U/10) {
+				t.Errorf("net gain %g ± %g to the last digit of %g", r.Value, r.U, r.Step)
 			}
 		})
 	}

@@ -173,6 +173,54 @@ func BenchmarkJudge(b *testing.B) {
 	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(findings), "ns/finding")
 }
 
+// A gain limit that asks the same at both grades is shown once, unless the reading is sure enough for one of them only.
+func TestEveryGainLimitIsShownOnce(t *testing.T) {
+	for _, tt := range []struct {
+		name     string
+		claim    screening.Claim
+		readings []screening.Reading
+		rows     int
+	}{
+		{"TIP122, nothing measured: 0.5 A and 3 A", words("type=TIP122"), nil, 2},
+		{"2N3904 at 180: 0.1, 1, 10, 50 and 100 mA", words("type=2N3904"), []screening.Reading{read(HFE, 180, at(ic, 10e-3, vce, 1.0))}, 5},
+		{"BC547B that fails", words("type=BC547B"), []screening.Reading{read(HFE, 60, at(ic, 2e-3, vce, 5.0))}, 1},
+		{"BC547B near its lower bound: serviceable, and not surely more", words("type=BC547B"), []screening.Reading{read(HFE, 205, at(ic, 2e-3, vce, 5.0))}, 2},
+	} {
+		j := judge(t, tt.claim, tt.readings...)
+		rows := 0
+		for i := range j.Findings {
+			if l := &j.Findings[i].Limit; l.Criterion == CriterionGain && l.At.Has(screening.IC) && l.Source != figures()["gain-lamp"].source {
+				rows++
+			}
+		}
+		if rows != tt.rows {
+			t.Errorf("%s: %d limits on gain, want %d", tt.name, rows, tt.rows)
+		}
+	}
+	near := judge(t, words("type=BC547B"), read(VBE, 0.65, none), read(HFE, 205, at(ic, 2e-3, vce, 5.0)), atMost(read(ICEO, 0.1e-6, at(vce, 20.0))))
+	if near.Verdict != screening.Accept || near.Grade != screening.Serviceable || !strings.Contains(texts(near), "near its limit") {
+		t.Errorf("205 of at least 200: %s %s\n%s", near.Verdict, near.Grade, texts(near))
+	}
+}
+
+// How far blocking was proved is said once: the gap in the breakdown limit is listed only where nothing was proved.
+func TestBlockingIsSaidOnce(t *testing.T) {
+	for _, tt := range []struct {
+		name     string
+		readings []screening.Reading
+		listed   bool
+	}{
+		{"nothing measured", nil, true},
+		{"leakage at 20 V", []screening.Reading{atMost(read(ICEO, 1e-6, at(vce, 20.0)))}, false},
+		{"blocks 30 V", []screening.Reading{atLeast(read(screening.VBR, 30, none))}, false},
+	} {
+		j := judge(t, words("type=2N3904"), tt.readings...)
+		if got := slices.ContainsFunc(j.NotTested, func(g screening.Gap) bool { return g.Of == screening.VBR.Name }); got != tt.listed {
+			t.Errorf("%s: not tested %+v, untested %q", tt.name, j.NotTested, j.Untested)
+		}
+	}
+}
+
 func TestUntested(t *testing.T) {
 	for _, tt := range []struct {
 		name     string

@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
+	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -78,7 +80,7 @@ func cautions(part screening.Part, when screening.Moment) []screening.Caution {
 	if p.material == germanium {
 		all = append(all, screening.Caution{
 			Code: "warm-fingers", Text: "do not hold it: fingers are 10 K warmer than a room, which doubles germanium leakage. Readings settle in minutes",
-			Values: map[string]float64{"doubling": doublingKelvin}, Source: doubling,
+			Values: map[string]float64{"doubling": junction.Doubling}, Source: junction.DoublingSource,
 		})
 	}
 	if p.vceo > touchVoltage {
@@ -125,7 +127,7 @@ func heat(p *promise) (screening.Caution, bool) {
 	return screening.Caution{
 		Code: "gain-test-heat",
 		Text: fmt.Sprintf("at %s the part turns %s into heat: read within a second or two, let it cool, and fix a power type to metal; sheets "+
-			"pulse it for 300 µs", r.At, quantity.Format(watts, quantity.Watt, 2)),
+			"pulse it for 300 µs", r.At, book.Watts(watts, 2)),
 		Values: map[string]float64{"power": watts},
 		Source: screening.Source{Document: "2N3055 and TIP data sheets: pulses of 300 µs, 2 % duty", Status: screening.Published},
 	}, true

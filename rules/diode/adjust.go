@@ -5,6 +5,7 @@ import (
 	"math"
 	"slices"
 
+	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -31,16 +32,21 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	}
 	for i := range findings {
 		f := &findings[i]
+		if f.Outcome == screening.Missing {
+			wordGap(f)
+		} else if f.Limit.Criterion == blockingCriterion && f.Limit.On == screening.IR.Name {
+			takeVoltage(f)
+		}
 		switch {
 		case f.Limit.Criterion == breakdownCriterion && f.Unconfirmed:
 			f.Need = screening.Required
-			say(f.Limit.On, fmt.Sprintf("it breaks down at %s: damaged, or a Zener diode", quantity.Format(f.Reading.Value, quantity.Volt, 0)))
+			say(f.Limit.On, breakdownWords(f.Reading.Value))
 		case f.Limit.On == screening.VF.Name && f.Reading != nil:
 			say(f.Limit.On, forwardWords(part, f))
-		case f.Limit.On == screening.IR.Name && f.Limit.Grade == screening.WithinSpec && (f.Unconfirmed || f.Outcome == screening.Fail):
-			say(f.Limit.On, "it leaks more than its sheet allows ("+f.Limit.Source.Status.String()+"), and less than its material may")
-		case f.Limit.Criterion == blockingCriterion && f.Outcome == screening.Missing && f.Reading != nil && !answered(findings, f):
-			say(f.Limit.On, f.Why)
+		case f.Limit.Criterion == leakageCriterion && f.Limit.Grade == screening.WithinSpec:
+			say(f.Limit.On, leakageWords(findings, f))
+		case f.Limit.On == screening.IR.Name && f.Outcome == screening.Pass && roomAssumed(part, f):
+			say(f.Limit.On, "no temperature stated: assumed a room's, and in no room from 15 to 35 °C does it leak too much")
 		case f.Limit.Criterion == blockingCriterion && f.Limit.On == screening.IR.Name && leaksLikeBadSilicon(part, f):
 			f.Outcome, f.Side, f.Limit.High = screening.Fail, screening.Above, load().leakage[silicon].value
 			f.Limit.Source = load().leakage[silicon].source
@@ -50,11 +56,61 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	return findings, reasons
 }
 
-// answered reports whether an alternative of a finding's criterion passes.
-func answered(findings []screening.Finding, f *screening.Finding) bool {
-	return slices.ContainsFunc(findings, func(g screening.Finding) bool {
-		return g.Limit.Criterion == f.Limit.Criterion && g.Limit.Section == f.Limit.Section && g.Outcome == screening.Pass
+// wordGap says of a limit without evidence what its reading lacks, and leaves it to untested to say how far blocking was proved.
+func wordGap(f *screening.Finding) {
+	switch {
+	case f.Why == junction.StateTemperature:
+		f.Unstated = screening.PartTemperature
+	case f.Limit.Criterion == breakdownCriterion:
+		f.Wants = screening.Gap{}
+	case f.Limit.Criterion == blockingCriterion && f.Limit.On == screening.VBR.Name && f.Reading == nil:
+		f.Why = "whether it blocks was not tried"
+	}
+}
+
+func breakdownWords(volts float64) string {
+	if volts < shorted {
+		return "reversed it reads shorted"
+	}
+	return "it breaks down at " + asPrinted(volts) + ": damaged, or a Zener diode"
+}
+
+// roomAssumed reports whether germanium passes on a reading without its temperature.
+func roomAssumed(part screening.Part, f *screening.Finding) bool {
+	return technologyOf(part.Claim).material == germanium && f.Converted != nil && !f.Reading.At.Has(screening.PartTemperature)
+}
+
+// takeVoltage states a limit that holds at whatever voltage is stated at the reading's. One that needed nothing else was not converted.
+func takeVoltage(f *screening.Finding) {
+	v, ok := f.Reading.At.Get(screening.Voltage)
+	if !ok {
+		return
+	}
+	f.Limit.At = f.Limit.At.With(screening.Voltage, v)
+	if c := f.Converted; c != nil && c.U == 0 && c.Reading.Value == f.Reading.Value && c.Reading.Sense == f.Reading.Sense {
+		f.Converted = nil
+	}
+}
+
+// leakageWords says of a diode that leaks more than its sheet allows whether its material may: only where that limit, too, was held and
+// passes.
+func leakageWords(findings []screening.Finding, f *screening.Finding) string {
+	if !f.Unconfirmed && f.Outcome != screening.Fail {
+		return ""
+	}
+	more := "it leaks more than its sheet allows (" + f.Limit.Source.Status.String() + ")"
+	i := slices.IndexFunc(findings, func(g screening.Finding) bool {
+		return g.Limit.Criterion == leakageCriterion && g.Limit.Section == f.Limit.Section && g.Limit.Grade == screening.Serviceable
 	})
+	switch {
+	case i < 0:
+		return more
+	case findings[i].Outcome == screening.Pass:
+		return more + ", and less than its material may"
+	case findings[i].Outcome == screening.Fail:
+		return "" // the failure says it all
+	}
+	return more + "; whether its material may leak that much is too near to call"
 }
 
 // forwardWords says what a forward voltage looks like; VF alone cannot tell germanium from Schottky.
@@ -106,12 +162,11 @@ func untested(part screening.Part, findings []screening.Finding) []string {
 	switch {
 	case proven == 0:
 	case !known:
-		lines = append(lines, "reverse blocking above "+quantity.Format(proven, quantity.Volt, 0)+" (no rating known)")
+		lines = append(lines, "reverse blocking untested above "+asPrinted(proven)+" (no rating known)")
 	case proven < rated:
-		lines = append(lines, fmt.Sprintf("reverse blocking above %s (rated %s)",
-			quantity.Format(proven, quantity.Volt, 0), quantity.Format(rated, quantity.Volt, 0)))
+		lines = append(lines, fmt.Sprintf("reverse blocking untested above %s (rated %s)", asPrinted(proven), asPrinted(rated)))
 	}
-	if _, at, ok := sheet(part.Claim, screening.VF.Name, screening.Current); ok && !measuredNear(part, at) {
+	if _, at, ok := sheet(part.Claim, screening.VF.Name, screening.Current); ok && measuredNear(part, 0) && !measuredNear(part, at) {
 		lines = append(lines, "forward voltage at "+quantity.Format(at, quantity.Ampere, 0))
 	}
 	if r, ok := part.Claim.Rating(TRR.Name, ""); ok {
@@ -119,6 +174,9 @@ func untested(part screening.Part, findings []screening.Finding) []string {
 	}
 	return lines
 }
+
+// asPrinted writes a voltage as it stands on parts and in sheets: "1000 V", never "1 kV".
+func asPrinted(volts float64) string { return fmt.Sprintf("%g V", volts) }
 
 // provenVoltage is the highest reverse voltage at which a section was seen to block, V; 0 where it was not tried.
 func provenVoltage(part screening.Part, findings []screening.Finding, section string) float64 {
@@ -141,6 +199,7 @@ func provenVoltage(part screening.Part, findings []screening.Finding, section st
 	return proven
 }
 
+// measuredNear reports whether forward voltage was read at a current, A, or at more.
 func measuredNear(part screening.Part, current float64) bool {
 	for _, r := range part.Readings {
 		if i, ok := r.At.Get(screening.Current); ok && r.Of == screening.VF.Name && i >= current*0.98 {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -29,7 +30,11 @@ func about(x float64, unit quantity.Unit) string {
 		return quantity.Format(x, unit, 0)
 	}
 	place := math.Pow10(int(math.Floor(math.Log10(x))) - 1)
-	return quantity.Format(x, unit, max(1, significant(math.Round(x/place))))
+	figures := max(1, significant(math.Round(x/place)))
+	if unit == quantity.Watt {
+		return book.Watts(x, figures)
+	}
+	return quantity.Format(x, unit, figures)
 }
 
 // significant counts the figures of a whole number below 100 without its trailing zero.

@@ -15,7 +15,7 @@ func convert(part screening.Part, r screening.Reading, l screening.Limit) screen
 	case screening.IR.Name:
 		return junction.Bring(part, r, l, junction.Rule{
 			AnyVoltage: l.Criterion == blockingCriterion, LeastVoltage: blocksAt,
-			NeedTemperature: technologyOf(part.Claim).material == germanium,
+			NeedTemperature: technologyOf(part.Claim).material == germanium, ClearsAnyRoom: true,
 		})
 	}
 	return screening.Conversion{}

@@ -18,7 +18,7 @@ import (
 const Kind = types.Diode
 
 // Version names the state of this rulebook's tables.
-const Version = "diode 1"
+const Version = "diode 2"
 
 // Ratings of a diode.
 var (
@@ -129,6 +129,7 @@ func bench() []screening.Field {
 		},
 		{
 			Definition: screening.VBR, Effort: 5 * time.Second, Example: "vbr=OL",
+			Ask:  "TURN THE PROBES and read again: OL shows that it blocks (vbr=OL)",
 			Help: "turn the probes: OL is what a sound one shows; >30V where it blocked 30 V through a resistor",
 		},
 		{

@@ -58,8 +58,8 @@ var verdictCases = []struct {
 	grade       screening.Grade
 	says        string
 }{
-	{"1N4148 with a diode test", "1N4148 vf=0.62 vbr=OL", screening.Accept, screening.WithinSpec, "untested: reverse blocking above 2 V (rated 100 V)"},
-	{"1N4007 blocks 30 V of 1000", "1N4007 vf=0.52 vbr=>30V", screening.Accept, screening.WithinSpec, "reverse blocking above 30 V (rated 1 kV)"},
+	{"1N4148 with a diode test", "1N4148 vf=0.62 vbr=OL", screening.Accept, screening.WithinSpec, "untested: reverse blocking untested above 2 V (rated 100 V)"},
+	{"1N4007 blocks 30 V of 1000", "1N4007 vf=0.52 vbr=>30V", screening.Accept, screening.WithinSpec, "reverse blocking untested above 30 V (rated 1000 V)"},
 	{"1N4007 that blocks all of it", "1N4007 vf=0.52 vbr=>1100V", screening.Accept, screening.WithinSpec, "forward voltage at 1 A"},
 	{"a breakdown above the rating is normal", "1N4007 vf=0.52 vbr=1300V", screening.Accept, screening.WithinSpec, ""},
 	{"blocking by leakage at 20 V", "1N4148 vf=0.62 ir@20V=0.01uA temperature=23C", screening.Accept, screening.WithinSpec, "above 20 V (rated 100 V)"},
@@ -69,9 +69,10 @@ var verdictCases = []struct {
 	{"Schottky", "1N5819 vf=0.19 vbr=OL", screening.Accept, screening.WithinSpec, ""},
 	{"a power Schottky leaks milliamperes by its sheet", "1N5819 vf=0.19 ir@30V=0.5mA temperature=25C", screening.Accept, screening.WithinSpec, ""},
 	{"germanium with its temperature", "1N34A vf=0.24 ir@10V=20uA temperature=22C", screening.Accept, screening.WithinSpec, ""},
+	{"germanium without its temperature that no room brings over its limit", "OA91 vf=0.31 ir@10V=14uA", screening.Accept, screening.WithinSpec, "note: no temperature stated: assumed a room's"},
 	{"no claim at all", "vf=0.61 vbr=>30V", screening.Accept, screening.Serviceable, "no rating known"},
 	{"unmarked that drops 0.25 V", "vf=0.25 vbr=OL", screening.Accept, screening.Serviceable, "cannot tell which"},
-	{"rated by the words on it", "rectifier 1000V 1A vf=0.55 vbr=>30V", screening.Accept, screening.WithinSpec, "(rated 1 kV)"},
+	{"rated by the words on it", "rectifier 1000V 1A vf=0.55 vbr=>30V", screening.Accept, screening.WithinSpec, "(rated 1000 V)"},
 	{"a signal diode of an older sheet: 85 V breakdown of 100", "1N914 vf=0.62 vbr=85V", screening.Accept, screening.Serviceable, ""},
 
 	{"breaks down at 250 V of 1000", "1N4007 vf=0.52 vbr=250V", screening.Reject, screening.AnyGrade, "reverse breakdown voltage reads 250 V; at least 1.00 kV"},
@@ -85,14 +86,15 @@ var verdictCases = []struct {
 	{"drops more than its sheet at the rated current", "1N4007 vf=0.52 vf@1A=1.4 vbr=OL", screening.Reject, screening.AnyGrade, "300 mV to 1.10 V at 1 A"},
 	{"unmarked silicon that leaks 100 µA", "vf=0.61 ir@20V=100uA temperature=25C", screening.Reject, screening.AnyGrade, "no more than silicon"},
 
-	{"blocking not tried", "1N4148 vf=0.62", screening.Undecided, screening.AnyGrade, "MEASURE reverse breakdown voltage"},
+	{"blocking not tried", "1N4148 vf=0.62", screening.Undecided, screening.AnyGrade, "measure: TURN THE PROBES and read again: OL shows that it blocks"},
 	{"only tried in reverse", "1N4148 vbr=OL", screening.Undecided, screening.AnyGrade, "MEASURE forward voltage at 1 mA"},
 	{"a rating from memory may not reject: confirm it", "BY127 vf=0.52 vbr=700V", screening.Undecided, screening.AnyGrade, "CONFIRM the figure"},
 	{"unmarked that breaks down at 5 V", "vf=0.62 vbr=5.1V", screening.Undecided, screening.AnyGrade, "a Zener diode"},
-	{"leakage without its voltage", "1N4148 vf=0.62 ir=0.1uA", screening.Undecided, screening.AnyGrade, "voltage of the reading is not stated"},
-	{"germanium without its temperature", "1N34A vf=0.24 ir@10V=20uA", screening.Undecided, screening.AnyGrade, "state the part's temperature"},
+	{"leakage without its voltage", "1N4148 vf=0.62 ir=0.1uA", screening.Undecided, screening.AnyGrade, "measure: STATE the voltage of the reading: reverse current"},
+	// The limit is 500 µA; from 15 °C with a doubling per 8 K the factor is 2.378, so up to 210 µA no room brings it over.
+	{"germanium without its temperature, too much for a cold room", "OA91 vf=0.31 ir@10V=230uA", screening.Undecided, screening.AnyGrade, "measure: STATE the temperature of the reading: reverse current"},
 	{"hot and above the limit never accepts", "1N4148 vf=0.62 ir@20V=15uA temperature=45C", screening.Undecided, screening.AnyGrade, "let it cool"},
-	{"a dual with one half measured", "MBR20100CT vf/1=0.25 vbr/1=OL", screening.Undecided, screening.AnyGrade, "section 2"},
+	{"a dual with one half measured", "MBR20100CT vf/1=0.25 vbr/1=OL", screening.Undecided, screening.AnyGrade, "OL shows that it blocks (vbr=OL), section 2"},
 	{"too little current says little", "1N4148 vf@10uA=0.45 vbr=OL", screening.Undecided, screening.AnyGrade, "forward voltage"},
 
 	{"across the mains", "1N4007 vf=0.52 vbr=OL seen=mains", screening.Barred, screening.AnyGrade, "across the mains"},

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strings"
 
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -45,13 +46,28 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		return findings, nil // the limits have said so already
 	}
 	var reasons []screening.Reason
+	var unproved []screening.Finding
 	for _, u := range us {
 		v := viewOf(part, u, findings)
 		reasons = append(reasons, v.confirm()...)
 		reasons = append(reasons, v.confirmDry()...)
 		reasons = append(reasons, v.forgive()...)
-		reasons = append(reasons, v.suspectLeakage()...)
+		suspected := v.suspectLeakage()
+		if slices.ContainsFunc(suspected, func(r screening.Reason) bool { return r.Code == codeFaultEra }) {
+			unproved = append(unproved, seriesMustBeProved(u.section))
+		}
+		reasons = append(reasons, suspected...)
 		reasons = append(reasons, v.giveUp()...)
+		for _, f := range v.ceiling {
+			if f.Outcome == screening.Missing {
+				f.Wants = screening.Gap{} // the same reading as leakage, which is listed
+			}
+		}
+		if _, ok := v.leakageOnlyBelow(); ok {
+			for _, f := range v.leakage {
+				f.Wants = screening.Gap{} // untested words it
+			}
+		}
 	}
 	if t, ok := part.Ambient(); ok && t.Value < coldBelow {
 		reasons = append(reasons, screening.Reason{
@@ -59,7 +75,7 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 			Text: fmt.Sprintf("at %g °C ESR reads high by 2 to 5 %% per kelvin below 20 °C: let the part warm up and measure again if it fails", t.Value),
 		})
 	}
-	return findings, reasons
+	return append(findings, unproved...), reasons
 }
 
 func viewOf(part screening.Part, u unit, findings []screening.Finding) view {
@@ -188,15 +204,12 @@ func (v *view) suspectLeakage() []screening.Reason {
 	}
 	text := fmt.Sprintf("capacitance reads %s, above its tolerance: a leaky part reads high, so leakage at %s decides",
 		microfarads(reading.Value), quantity.Format(v.unit.volts, quantity.Volt, 0))
-	year, _ := v.part.Claim.Year()
 	failed := hasOutcome(v.leakage, screening.Fail)
+	passed := hasOutcome(v.leakage, screening.Pass) && !failed
 	switch {
-	case failed && year >= faultFrom && year <= faultTo:
-		why := fmt.Sprintf("high capacitance with high leakage on a part of %d is how the electrolyte fault of %d to %d shows (from memory): "+
-			"re-forming does not last; replace it or prove its maker's series sound", year, faultFrom, faultTo)
-		v.holdOpen(why)
-		return []screening.Reason{{Code: codeFaultEra, Text: why, Of: screening.Leakage.Name}}
-	case hasOutcome(v.leakage, screening.Pass) && !failed:
+	case failed && inFaultEra(v.part.Claim):
+		return v.suspectFaultEra()
+	case passed:
 		why := "capacitance reads high although leakage at rated voltage passes: measure again at 120 Hz with another meter, and check the marking"
 		for _, f := range v.capacitance {
 			if f.Outcome == screening.Fail {
@@ -204,6 +217,10 @@ func (v *view) suspectLeakage() []screening.Reason {
 			}
 		}
 		text = why
+	case !failed && inFaultEra(v.part.Claim):
+		// Hours of treatment are not recommended to a part of these years before its leakage is known.
+		text += fmt.Sprintf(", before any treatment: parts of %d to %d are suspect", faultFrom, faultTo)
+		setAside(v.capacitance)
 	case v.part.Treated >= mostTreatments && !failed:
 		for _, f := range v.capacitance {
 			if f.Outcome == screening.Fail {
@@ -214,13 +231,43 @@ func (v *view) suspectLeakage() []screening.Reason {
 	return []screening.Reason{{Code: codeLeakageSuspected, Text: text, Of: screening.Capacitance.Name}}
 }
 
-// holdOpen makes every failure of capacitance and leakage undecided, for a stated reason.
-func (v *view) holdOpen(why string) {
-	for _, group := range [][]*screening.Finding{v.capacitance, v.leakage} {
-		for _, f := range group {
-			if f.Outcome == screening.Fail {
-				f.Outcome, f.Why = screening.Close, why
-			}
+// inFaultEra reports whether a part may be of the electrolyte fault's years and nothing proves its series sound.
+func inFaultEra(claim screening.Claim) bool {
+	if claim.Trait(traitSeries) == seriesSound {
+		return false
+	}
+	year, _ := claim.Year()
+	return year >= faultFrom && year <= faultTo || strings.EqualFold(claim.Trait(screening.TraitDated), "200x")
+}
+
+// suspectFaultEra leaves the verdict to what is known of the series: no reading of this part can settle it.
+func (v *view) suspectFaultEra() []screening.Reason {
+	setAside(v.capacitance)
+	setAside(v.leakage)
+	dated := v.part.Claim.Trait(screening.TraitDated)
+	return []screening.Reason{{Code: codeFaultEra, Of: screening.Leakage.Name, Text: fmt.Sprintf(
+		"high capacitance with high leakage on a part of %s is how the electrolyte fault of %d to %d shows (from memory): re-forming does not last",
+		dated, faultFrom, faultTo)}}
+}
+
+// seriesMustBeProved asks for the one thing that settles a part with the signs of the electrolyte fault: the word on its series.
+func seriesMustBeProved(section string) screening.Finding {
+	why := "not known to have lasted"
+	return screening.Finding{
+		Limit: screening.Limit{
+			On: traitSeries, Unit: quantity.One, Section: section, Criterion: criterionSeries, Low: math.Inf(-1), High: math.Inf(1),
+			Evidence: screening.ByRating, Set: screening.HouseSet, InUse: true, Note: why,
+			Source: screening.Source{Document: "re-forming a part of the electrolyte fault's years does not last", Status: screening.FromMemory},
+		},
+		By: screening.ByRating, Probability: math.NaN(), Margin: math.NaN(), Wants: screening.Gap{Of: traitSeries}, Why: why,
+	}
+}
+
+// setAside takes failures out of the verdict: measuring again would settle nothing, so what decides is asked for instead.
+func setAside(findings []*screening.Finding) {
+	for _, f := range findings {
+		if f.Outcome == screening.Fail {
+			f.Outcome, f.Need, f.Why = screening.Close, screening.Wanted, "reads out of its limits, which by itself decides nothing here"
 		}
 	}
 }
@@ -320,6 +367,6 @@ func lowerVoltage(claim screening.Claim, u unit, volts float64) screening.Lesser
 	r.Source = screening.Source{Document: "leakage read at this voltage", Status: screening.House}
 	return screening.Lesser{
 		Claim: claim.WithRating(r), Answers: criterionLeakage, Source: r.Source,
-		Text: fmt.Sprintf("for use up to %g V instead of %g V, on the leakage read there", volts, u.volts),
+		Text: fmt.Sprintf("for use up to %g V instead of %g V, on the leakage read there: mark it %g V", volts, u.volts, volts),
 	}
 }

@@ -2,6 +2,7 @@ package electrolytic
 
 import (
 	"math"
+	"slices"
 	"strings"
 	"testing"
 
@@ -164,8 +165,7 @@ func TestUntestedThingsAreSaid(t *testing.T) {
 		readings []screening.Reading
 		want     string // "" for nothing
 	}{
-		{"leakage left out", []screening.Reading{capacitance(450), esr(0.2)}, "leakage not measured at its rated 25 V"},
-		{"leakage at 10 V only", []screening.Reading{capacitance(450), esr(0.2), leakage(1, 10, 2)}, "its rated 25 V, only at 10 V"},
+		{"leakage at 10 V only", []screening.Reading{capacitance(450), esr(0.2), leakage(1, 10, 2)}, "leakage at its rated 25 V: read only at 10 V"},
 		{"ESR bounded only", []screening.Reading{capacitance(450), esr100k(0.15), leakage(1, 25, 2)}, "only bounded by a reading at a higher frequency"},
 		{"everything measured", []screening.Reading{capacitance(450), esr(0.2), leakage(1, 25, 2)}, ""},
 	} {
@@ -176,6 +176,85 @@ func TestUntestedThingsAreSaid(t *testing.T) {
 				t.Errorf("%s, untested %q, want %q", j.Verdict, said, tc.want)
 			}
 		})
+	}
+}
+
+// A wanted leakage that is missing stands among the gaps, or in the rulebook's words where they say more; never in both.
+func TestMissingLeakageIsSaidOnce(t *testing.T) {
+	for _, tc := range []struct {
+		name           string
+		readings       []screening.Reading
+		gaps, untested int
+	}{
+		{"left out", []screening.Reading{capacitance(450), esr(0.2)}, 1, 0},
+		{"read at 10 V only", []screening.Reading{capacitance(450), esr(0.2), leakage(1, 10, 2)}, 0, 1},
+		{"measured", []screening.Reading{capacitance(450), esr(0.2), leakage(1, 25, 2)}, 0, 0},
+	} {
+		j := judge(t, verdictCase{uF: 470, v: 25, readings: tc.readings})
+		if len(j.NotTested) != tc.gaps || len(j.Untested) != tc.untested {
+			t.Errorf("%s: not tested %+v, untested %q", tc.name, j.NotTested, j.Untested)
+		}
+	}
+	// A ceiling (here 10 mA, and what warms the can) asks for the same reading.
+	j := judge(t, verdictCase{uF: 22000, v: 63, traits: []string{"can-size", "35x50"}, readings: []screening.Reading{capacitance(22000), esr(0.005)}})
+	if ceiling := slices.ContainsFunc(j.Findings, func(f screening.Finding) bool { return f.Limit.Criterion == criterionCeiling }); !ceiling || len(j.NotTested) != 1 {
+		t.Errorf("with a ceiling (%v): not tested %+v", ceiling, j.NotTested)
+	}
+}
+
+// Parts of 1999 to 2007 that read high are measured before they are treated, and where they leak no reading settles them.
+func TestTheNextStepOfTheFaultEraSettlesIt(t *testing.T) {
+	high := []screening.Reading{capacitance(640), esr(0.28)}
+	leaky := append(slices.Clone(high), leakage(3800, 50, 2))
+	for _, tc := range []struct {
+		name     string
+		traits   []string
+		readings []screening.Reading
+		want     screening.Verdict
+		next     []string
+		reform   bool // told how to re-form it
+	}{
+		{"2003, leakage not read", []string{"dated", "2003"}, high, screening.Undecided, []string{"MEASURE leakage current at 50 V, 20 °C, after 2 min"}, false},
+		{"some year of 200x", []string{"dated", "200x"}, high, screening.Undecided, []string{"MEASURE leakage current at 50 V, 20 °C, after 2 min"}, false},
+		{"2003, leaking", []string{"dated", "2003"}, leaky, screening.Undecided, []string{"REPLACE it, or prove the series good"}, false},
+		{"2003, leaking, of a series that lasted", []string{"dated", "2003", "series", seriesSound}, leaky, screening.Treat, []string{"RE-FORM it"}, true},
+		{
+			"2003, high though leakage passes",
+			[]string{"dated", "2003"},
+			append(slices.Clone(high), leakage(5, 50, 2)),
+			screening.Undecided,
+			[]string{"REPEAT capacitance"},
+			false,
+		},
+		{
+			"1995, leakage not read: treat, after the reading that can reject",
+			[]string{"dated", "1995"},
+			high, screening.Treat,
+			[]string{"MEASURE leakage current at 50 V, 20 °C, after 2 min first", "RE-FORM it"},
+			true,
+		},
+		{"1995, leaking", []string{"dated", "1995"}, leaky, screening.Treat, []string{"RE-FORM it"}, true},
+	} {
+		t.Run(tc.name, func(t *testing.T) {
+			j := judge(t, verdictCase{uF: 470, v: 50, traits: tc.traits, readings: tc.readings})
+			matches := len(j.Next) == len(tc.next)
+			for i := range min(len(j.Next), len(tc.next)) {
+				matches = matches && strings.HasPrefix(j.Next[i].Text, tc.next[i])
+			}
+			if j.Verdict != tc.want || !matches {
+				t.Errorf("%s, next %+v; want %s, %q", j.Verdict, j.Next, tc.want, tc.next)
+			}
+			if _, told := cautionOf(j.Cautions, "re-form"); told != tc.reform {
+				t.Errorf("told how to re-form it: %v", told)
+			}
+		})
+	}
+}
+
+func TestALowerVoltageIsToBeMarked(t *testing.T) {
+	j := judge(t, verdictCase{uF: 47, v: 450, treated: 2, readings: []screening.Reading{capacitance(46), esr(2), leakage(60, 350, 5), leakage(2000, 450, 5)}})
+	if j.RegradedAs == nil || !strings.HasSuffix(j.RegradedAs.Text, "mark it 350 V") {
+		t.Errorf("regraded as %+v", j.RegradedAs)
 	}
 }
 

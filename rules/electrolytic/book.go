@@ -17,7 +17,7 @@ import (
 const Kind screening.Kind = "electrolytic"
 
 // edition goes up when a rule in code changes; a change of the tables changes the version by itself.
-const edition = "1"
+const edition = "2"
 
 // Book returns the rulebook.
 func Book() *screening.Rulebook {
@@ -75,6 +75,13 @@ func claims() []screening.Field {
 		{
 			Definition: trait(traitCanSize, "can size"), Trait: true, Example: "10x20",
 			Help: "diameter by length in mm; it says how much heat the can stands while it is re-formed", AcceptText: acceptCanSize,
+		},
+		{
+			Definition: trait(traitSeries, "maker's series"), Trait: true, Example: "sound-series",
+			Help:  "sound-series where others of its series and years have lasted; it counts for parts of 1999 to 2007 that read high and leak",
+			Words: []screening.Word{{Word: "sound-series", Text: seriesSound}},
+			Ask: "REPLACE it, or prove the series good: others of the same maker, series and years that have lasted; then claim sound-series " +
+				"(no reading of this part settles it)",
 		},
 	}
 }

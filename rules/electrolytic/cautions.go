@@ -3,6 +3,7 @@ package electrolytic
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"goodbin/rules/internal/book"
@@ -33,7 +34,7 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 			return all
 		}
 		for _, u := range us {
-			if leaks(part, u) && part.Treated < mostTreatments {
+			if leaks(part, u) && part.Treated < mostTreatments && !(inFaultEra(part.Claim) && readHigh(part, u)) {
 				return append(all, reforming(part.Claim, u))
 			}
 		}
@@ -41,15 +42,22 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	return all
 }
 
+// readHigh reports whether capacitance was read above its tolerance.
+func readHigh(part screening.Part, u unit) bool {
+	return slices.ContainsFunc(part.Readings, func(r screening.Reading) bool {
+		return r.Of == screening.Capacitance.Name && r.Section == u.section && r.Sense != quantity.AtMost && r.Value > u.top()
+	})
+}
+
 // leaks reports whether what was read of a section points to re-forming: leakage above a limit in use at a voltage no higher and a time no
 // shorter than the limit's, or capacitance above its tolerance.
 func leaks(part screening.Part, u unit) bool {
+	if readHigh(part, u) {
+		return true
+	}
 	for _, r := range part.Readings {
 		if r.Section != u.section || r.Sense == quantity.AtMost {
 			continue
-		}
-		if r.Of == screening.Capacitance.Name && r.Value > u.top() {
-			return true
 		}
 		if r.Of == screening.Leakage.Name && aboveLimitInUse(part.Claim, u, r) {
 			return true
@@ -198,7 +206,8 @@ func duration(seconds float64) string {
 	return fmt.Sprintf("%.0f s", math.Ceil(seconds))
 }
 
-// untested words what the readings leave open: leakage that was not read at rated voltage, ESR known only at another frequency.
+// untested words what the readings leave open beyond the gaps that are listed anyway: leakage read at a lower voltage only, ESR known only at
+// another frequency.
 func untested(part screening.Part, findings []screening.Finding) []string {
 	us, err := units(part.Claim)
 	if err != nil {
@@ -211,12 +220,9 @@ func untested(part screening.Part, findings []screening.Finding) []string {
 		if u.section != "" {
 			of = " of section " + u.section
 		}
-		if !hasOutcome(v.leakage, screening.Pass) && !hasOutcome(v.leakage, screening.Fail) && !hasOutcome(v.leakage, screening.Close) {
-			line := fmt.Sprintf("leakage%s not measured at its rated %s", of, quantity.Format(u.volts, quantity.Volt, 0))
-			if volts := lowerVoltages(part, u); len(volts) > 0 {
-				line += fmt.Sprintf(", only at %s", quantity.Format(volts[0], quantity.Volt, 0))
-			}
-			lines = append(lines, line)
+		if volts, ok := v.leakageOnlyBelow(); ok {
+			lines = append(lines, fmt.Sprintf("leakage%s at its rated %s: read only at %s", of, quantity.Format(u.volts, quantity.Volt, 0),
+				quantity.Format(volts, quantity.Volt, 0)))
 		}
 		for _, f := range v.loss {
 			if f.Outcome == screening.Pass && f.Converted != nil && f.Limit.Grade == screening.Serviceable {
@@ -225,4 +231,19 @@ func untested(part screening.Part, findings []screening.Finding) []string {
 		}
 	}
 	return lines
+}
+
+// leakageOnlyBelow returns the highest voltage below the rated one at which leakage was read, where no reading answers a leakage that is
+// wanted and not needed. What is needed is asked for as the next step.
+func (v *view) leakageOnlyBelow() (volts float64, ok bool) {
+	for _, f := range v.leakage {
+		if f.Outcome != screening.Missing || f.Need != screening.Wanted {
+			return 0, false
+		}
+	}
+	lower := lowerVoltages(v.part, v.unit)
+	if len(lower) == 0 || len(v.leakage) == 0 {
+		return 0, false
+	}
+	return lower[0], true
 }

@@ -24,6 +24,9 @@ const (
 // traitCanSize is diameter by length in millimetres, "10x20".
 const traitCanSize = "can-size"
 
+// traitSeries is what is known of the maker's series; seriesSound lifts the suspicion of the electrolyte fault's years.
+const traitSeries, seriesSound = "series", "sound series"
+
 // The ranges that a claim must lie in; beyond them a prefix is wrong.
 const (
 	leastFarad, mostFarad = 1e-9, 10.0

@@ -18,6 +18,7 @@ const (
 	criterionLoss        screening.Criterion = "loss"
 	criterionLeakage     screening.Criterion = "leakage"
 	criterionCeiling     screening.Criterion = "leakage-ceiling"
+	criterionSeries      screening.Criterion = "series" // only of parts with the signs of the electrolyte fault
 )
 
 // Years at which what is asked changes.

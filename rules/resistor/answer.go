@@ -14,6 +14,10 @@ const composition = "carbon-composition"
 // One that reads higher than that is not merely damp.
 const driesBack = 0.30
 
+// leastAsMeasured is the closest tolerance at which a part is kept at its measured value: it has drifted, and a drifted part goes on (house).
+// Composition goes on moving by its nature: allowed life change 15 % (MIL-R-39008).
+const leastAsMeasured, leastComposition = 0.05, 0.10
+
 // ladder is the tolerances that resistors are sold in, and so those that a lesser claim may name.
 var ladder = []float64{0.01, 0.02, 0.05, 0.10, 0.20}
 
@@ -103,6 +107,9 @@ func widerText(f *screening.Finding, nominal float64, claimed, proven screening.
 			signedPercent(f.Reading.Value/nominal-1) + " from its value"
 	case f.Unconfirmed:
 		return proven.String() + " proven; " + claimed.String() + " is only taken for granted (" + f.Limit.Source.Status.String() + ")"
+	case f.Reading.Value < f.Limit.Low || f.Reading.Value > f.Limit.High:
+		// A better meter would only confirm it.
+		return "reads outside " + claimed.String() + "; accepted at " + proven.String()
 	case f.Wants.Accuracy > 0:
 		return proven.String() + " proven; " + claimed.String() + " not provable with this meter (needs ±" +
 			quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2) + ")"
@@ -118,8 +125,8 @@ func signedPercent(x float64) string {
 	return sign + quantity.Format(x, quantity.Ratio, 2)
 }
 
-// asMeasured offers the reading itself as the value, rounded to what the meter can say, at the closest tolerance that it proves; only
-// within the house's range of the printed value.
+// asMeasured offers the reading itself as the value, rounded to what the meter can say, at the closest tolerance that it proves and that a
+// drifted part may be given; only within the house's range of the printed value.
 func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 	tech := technologyOf(c)
 	r := f.Reading
@@ -128,8 +135,7 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 	}
 	value := honest(r.Value, r.U)
 	for _, t := range ladder {
-		// Composition goes on moving by its nature: allowed life change 15 % (MIL-R-39008).
-		if tech.name == composition && t < 0.10 {
+		if t < leastAsMeasured || tech.name == composition && t < leastComposition {
 			continue
 		}
 		below, above := screening.ConformanceProbability(r.Value, r.U, value*(1-t), value*(1+t))

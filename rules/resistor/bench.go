@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -43,13 +44,20 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	return nil
 }
 
-// dries reports whether the part is carbon composition, reads high, and was not dried yet.
+// dries reports whether the part is carbon composition that was not dried yet and reads high, beyond what the meter may be off: one that
+// only may be high is accepted at a wider tolerance, and there is nothing to dry.
 func dries(part screening.Part) bool {
 	r, measured := part.Reading(screening.Resistance.Name, "")
-	_, high, ok := band(part.Claim)
-	return ok && measured && part.Treated == 0 && technologyOf(part.Claim).name == composition && r.Sense == quantity.Exactly &&
-		r.Value > high && r.Value*(1-driesBack) <= high
+	low, high, ok := band(part.Claim)
+	if !ok || !measured || part.Treated > 0 || technologyOf(part.Claim).name != composition || r.Sense != quantity.Exactly {
+		return false
+	}
+	_, above := screening.ConformanceProbability(r.Value, r.U, low, high)
+	return above >= surely && r.Value-high > r.Spec && r.Value*(1-driesBack) <= high
 }
+
+// surely is the probability at which a part fails under the default policy.
+const surely = 0.95
 
 func dryingCaution(c screening.Claim) screening.Caution {
 	power := 0.0
@@ -110,7 +118,7 @@ func fourWire(c screening.Claim, nominal float64) screening.Recipe {
 		Lines: []string{
 			"on two wires the leads and clips add 0.2 to 0.5 Ω, " + quantity.Format(0.3/nominal, quantity.Ratio, 2) + " of this value",
 			"set a current-limited supply to " + quantity.Format(current, quantity.Ampere, 3) + " (at most " +
-				quantity.Format(testShare, quantity.Ratio, 0) + " of its power: " + quantity.Format(current*volts, quantity.Watt, 2) +
+				quantity.Format(testShare, quantity.Ratio, 0) + " of its power: " + book.Watts(current*volts, 2) +
 				") and send it through the resistor",
 			"read the volts with a second pair of probes at the resistor's body, inside the current clips: about " +
 				quantity.Format(volts, quantity.Volt, 3),

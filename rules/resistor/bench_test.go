@@ -75,7 +75,7 @@ func TestRecipes(t *testing.T) {
 	}{
 		{"1 Ω ½ W: the current is what the supply regulates", 1, 0.5, "Four wires", 0.1, 0.1, 0.01, "swap the current"},
 		// I = √(0.1·0.25 W/4.7 Ω) = 72.9 mA, U = 343 mV, P = 25 mW.
-		{"4.7 Ω ¼ W: a tenth of its power", 4.7, 0.25, "Four wires", 0.07293, 0.34278, 0.025, "10 % of its power: 25 mW"},
+		{"4.7 Ω ¼ W: a tenth of its power", 4.7, 0.25, "Four wires", 0.07293, 0.34278, 0.025, "10 % of its power: 0.025 W"},
 		{"10 Ω on two wires", 10, 0.25, "Ohms range", 0, 0, 0, "lift one lead"},
 		{"1 MΩ: no fingers", 1e6, 0.25, "Ohms range", 0, 0, 0, "do not touch"},
 	} {

@@ -16,7 +16,7 @@ import (
 const Kind screening.Kind = "resistor"
 
 // Version names the state of this rulebook's tables.
-const Version = "resistor 1"
+const Version = "resistor 2"
 
 // Power is a rating only: the power that the part claims to stand at 70 °C, or at 25 °C on old and wirewound types.
 var Power = screening.Definition{Name: "power", Symbol: "P", Label: "rated power", Unit: quantity.Watt}
@@ -179,8 +179,8 @@ func limits(c screening.Claim) ([]screening.Limit, error) {
 }
 
 func untested(part screening.Part, _ []screening.Finding) []string {
-	if p, ok := part.Claim.Rating(Power.Name, ""); ok {
-		return []string{"rated power (" + p.String() + ") and value under load"}
+	if p, ok := part.Claim.Nominal(Power.Name, ""); ok {
+		return []string{"rated power (" + book.Watts(p, 0) + ") and value under load"}
 	}
 	return []string{"rated power and value under load"}
 }

@@ -53,8 +53,11 @@ var verdictCases = []struct {
 }{
 	{"a good 5 % film part", "4k7 5% metal-film resistance=4.68k", screening.Accept, "new part", ""},
 	{"10 Ω at 1 % is more than two wires can prove", "10R 1% metal-film resistance=10.05", screening.Accept, "not provable with this meter (needs ±", "±5 % proven; ±1 %"},
-	{"close to 5 %: kept at 10 %", "4k7 5% resistance=4.91k", screening.Accept, "", "±10 % proven; ±5 %"},
-	{"film 7 % high is kept as measured", "4k7 5% metal-film resistance=5.03k", screening.Regrade, "fails", "as measured, 5.03 kΩ ±2 %"},
+	{"close to 5 %: kept at 10 %", "4k7 5% resistance=4.91k", screening.Accept, "", "±10 % proven; ±5 % not provable"},
+	{"outside 10 % by less than the meter can tell", "220k 10% cc resistance=243k", screening.Accept, "", "reads outside ±10 %; accepted at ±20 %"},
+	{"film 9 % high has drifted: never closer than ±5 %", "4k7 5% carbon-film resistance=5.14k", screening.Regrade, "", "as measured, 5.14 kΩ ±5 %"},
+	{"even where the meter proves more", "10k 1% metal-film resistance=10.9k", screening.Regrade, "", "as measured, 10.9 kΩ ±5 %"},
+	{"film 7 % high is kept as measured", "4k7 5% metal-film resistance=5.03k", screening.Regrade, "fails", "as measured, 5.03 kΩ ±5 %"},
 	{"unknown technology 7 % high: told of drying", "4k7 5% resistance=5.03k", screening.Regrade, "if it is carbon composition, dry it", "as measured, 5.03 kΩ"},
 	{"low composition is kept at a wider tolerance", "4k7 5% cc resistance=4.3k", screening.Regrade, "out of circuit", "±10 %: it reads 4.3 kΩ, −8.5 %"},
 	{"low composition beyond 20 % as measured", "1k 5% cc resistance=760", screening.Regrade, "", "as measured, 760 Ω ±10 %"},
@@ -95,8 +98,14 @@ func TestVerdicts(t *testing.T) {
 			if tt.as == "" && as != "" || !strings.Contains(as, tt.as) {
 				t.Errorf("%s: as %q, want %q", tt.words, as, tt.as)
 			}
-			if len(j.Untested) == 0 || !strings.Contains(j.Untested[0], "rated power") {
-				t.Errorf("%s: nothing says that power is not tested: %v", tt.words, j.Untested)
+			// A part that is thrown away has nothing left to test.
+			told := len(j.Untested) == 1 && strings.Contains(j.Untested[0], "rated power")
+			if thrown := tt.verdict == screening.Reject || tt.verdict == screening.Barred; told == thrown || thrown && len(j.Untested) > 0 {
+				t.Errorf("%s: untested %q", tt.words, j.Untested)
+			}
+			drying := slices.ContainsFunc(j.Cautions, func(c screening.Caution) bool { return c.Code == "drying" })
+			if drying != (tt.verdict == screening.Treat) {
+				t.Errorf("%s: %s, told how to dry it: %v", tt.words, j.Verdict, drying)
 			}
 		})
 	}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -25,18 +26,14 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		if f.Limit.Note == noClaim || f.Limit.Note == noCurrent {
 			f.Outcome, f.Probability, f.Margin, f.Unconfirmed, f.Why = screening.Missing, math.NaN(), math.NaN(), false, f.Limit.Note
 			if f.Reading != nil && !f.Reading.At.Has(screening.Current) {
-				f.Why = "the current of the reading is not stated: vz@5mA=…"
+				f.Why, f.Unstated = "the current of the reading is not stated: vz@5mA=…", screening.Current
 			}
 		}
 		if f.Reading == nil {
 			continue
 		}
-		if f.Outcome == screening.Missing {
-			text := f.Why
-			if f.Converted != nil {
-				text = f.Converted.Rule
-			}
-			reasons = append(reasons, note("%s", text))
+		if f.Outcome == screening.Missing && f.Converted != nil {
+			reasons = append(reasons, note("%s", f.Converted.Rule))
 		}
 		if text := failWords(f); text != "" {
 			reasons = append(reasons, note("%s", text))
@@ -53,16 +50,19 @@ func failWords(f *screening.Finding) string {
 	switch {
 	case f.Outcome != screening.Fail || e == nil:
 		return ""
-	case e.Value < shortedBelow:
-		return "shorted, or turned round: reversed it drops like any silicon diode"
+	case e.Value < shorted:
+		return "shorted"
+	case e.Value < noZener:
+		return "turned round, or damaged: reversed it drops like any silicon diode"
 	case f.Side == screening.Below:
 		return "below its band it is damaged or soft; if the marking was misread, judge it without a claim"
 	}
 	return "above its band it is not what it says; if the marking was misread, judge it without a claim"
 }
 
-// shortedBelow is a voltage in V below which nothing is a Zener: one forward junction (house).
-const shortedBelow = 1.0
+// Voltages in V: below shorted there is no junction at all (from memory, for words only); below noZener nothing is a Zener but one forward
+// junction (house).
+const shorted, noZener = 0.1, 1.0
 
 // overPower says where the reading itself was taken above the rated power.
 func overPower(c screening.Claim, r *screening.Reading) string {
@@ -71,7 +71,7 @@ func overPower(c screening.Claim, r *screening.Reading) string {
 	if !claimed || !stated || i*r.Value <= p {
 		return ""
 	}
-	return fmt.Sprintf("that reading put %s into a part of %s", quantity.Format(i*r.Value, quantity.Watt, 2), quantity.Format(p, quantity.Watt, 0))
+	return fmt.Sprintf("that reading put %s into a part of %s", book.Watts(i*r.Value, 2), book.Watts(p, 0))
 }
 
 // lesser answers a voltage too near its edge with a wider tolerance, and one that cannot be held against the claim (none, no test current,
@@ -104,15 +104,25 @@ func wider(c screening.Claim, f *screening.Finding) []screening.Lesser {
 		if t <= had {
 			continue
 		}
-		text := fmt.Sprintf("±%.0f %% proven; %s to %s not provable with this meter", 100*t, volts(f.Limit.Low), volts(f.Limit.High))
-		if f.Wants.Accuracy > 0 {
-			text += " (needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2) + ")"
-		}
 		answers = append(answers, screening.Lesser{
-			Claim: claimOf(c, vz.Nominal, t, 0), Answers: voltageCriterion, Tolerance: true, Text: text, Source: houseSource,
+			Claim: claimOf(c, vz.Nominal, t, 0), Answers: voltageCriterion, Tolerance: true, Text: widerText(f, t), Source: houseSource,
 		})
 	}
 	return answers
+}
+
+// widerText says why a wider tolerance is taken: a reading inside the band is too near its edge for this meter, and a better one might prove
+// it; a reading outside would only be confirmed by it.
+func widerText(f *screening.Finding, t float64) string {
+	band := volts(f.Limit.Low) + " to " + volts(f.Limit.High)
+	if e := f.Evidence(); e.Value < f.Limit.Low || e.Value > f.Limit.High {
+		return fmt.Sprintf("reads outside %s; accepted at ±%.0f %%", band, 100*t)
+	}
+	text := fmt.Sprintf("±%.0f %% proven; %s not provable with this meter", 100*t, band)
+	if f.Wants.Accuracy > 0 {
+		text += " (needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2) + ")"
+	}
+	return text
 }
 
 var houseSource = screening.Source{Document: "taken at what was measured", Status: screening.House}
@@ -138,7 +148,7 @@ func claimOf(c screening.Claim, nominal, tolerance, current float64) screening.C
 func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 	r := f.Reading
 	i, stated := r.At.Get(screening.Current)
-	if !stated || i <= 0 || r.Value < shortedBelow {
+	if !stated || i <= 0 || r.Value < noZener {
 		return nil
 	}
 	nominal := honest(r.Value, r.U)
@@ -151,6 +161,9 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 			continue
 		}
 		text := fmt.Sprintf("as measured, %s ±%.0f %% at %s", volts(nominal), 100*t, amperes(i))
+		if c.IsZero() {
+			text = "unmarked, " + text
+		}
 		if _, known := c.Nominal(screening.Ptot.Name, ""); !known {
 			text += "; power unknown: assume the smallest for this body"
 		}
@@ -175,16 +188,10 @@ func honest(x, u float64) float64 {
 	return math.Round(x/scale) * scale
 }
 
-func untested(part screening.Part, findings []screening.Finding) []string {
-	power := "power (unknown: assume the smallest for this body)"
-	if p, ok := part.Claim.Rating(screening.Ptot.Name, ""); ok {
-		power = "power (rated " + p.String() + ")"
+// untested says that power is not tested. What was wanted and not measured, such as the slope, is listed without it.
+func untested(part screening.Part, _ []screening.Finding) []string {
+	if p, ok := part.Claim.Nominal(screening.Ptot.Name, ""); ok {
+		return []string{"power (rated " + book.Watts(p, 0) + ")"}
 	}
-	lines := []string{power}
-	for i := range findings {
-		if f := &findings[i]; f.Limit.Criterion == slopeCriterion && f.Outcome == screening.Missing {
-			lines = append(lines, "slope resistance at "+f.Limit.At.String())
-		}
-	}
-	return lines
+	return []string{"power (unknown: assume the smallest for this body)"}
 }

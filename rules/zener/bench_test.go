@@ -68,8 +68,8 @@ func TestEveryDriveReachesTheWindow(t *testing.T) {
 func TestCautions(t *testing.T) {
 	for _, tt := range []struct{ words, codes, says string }{
 		{"BZX79-C5V1", "", ""},
-		{"1N4733A", "test-heat", "at 49 mA it takes 250 mW"},
-		{"1N4728A", "test-heat", "at 76 mA it takes 250 mW: it gets hot, and its voltage drifts as it does. Read it 90 s"},
+		{"1N4733A", "test-heat", "at 49 mA it takes 0.25 W"},
+		{"1N4728A", "test-heat", "at 76 mA it takes 0.25 W: it gets hot, and its voltage drifts as it does. Read it 90 s"},
 		{"BZX79-C75", "test-heat test-voltage", "kill"},
 		{"1N4764A", "test-heat test-voltage", "local code and licensed practice"},
 		{"", "power-unknown", "assume the smallest for this body"},

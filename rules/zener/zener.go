@@ -18,7 +18,7 @@ import (
 const Kind = types.Zener
 
 // Version names the state of this rulebook's tables.
-const Version = "zener 1"
+const Version = "zener 2"
 
 // The characteristics of a Zener.
 var (

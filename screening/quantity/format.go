@@ -110,6 +110,9 @@ func choosePrefix(d *decimal, unit Unit) int {
 	if d.digits[0] == '0' {
 		return ratioExponent(unit)
 	}
+	if unit == Watt && d.exponent < 0 && d.exponent >= -2 {
+		return 0 // the trade prints 0.25 W
+	}
 	lowest := ratioExponent(unit)
 	for p := 9; p >= -12; p -= 3 {
 		if prints(p, unit) {

@@ -25,6 +25,9 @@ func TestFormat(t *testing.T) {
 		{999.9996, quantity.Ohm, 4, "1.000 kΩ"},
 		{999.4, quantity.Ohm, 3, "999 Ω"},
 		{1e12, quantity.Ohm, 2, "1000 GΩ"},
+		{0.25, quantity.Watt, 0, "0.25 W"}, // as the trade prints small resistors
+		{0.0625, quantity.Watt, 2, "0.062 W"},
+		{5e-3, quantity.Watt, 0, "5 mW"},
 		{120, quantity.Second, 0, "2 min"},
 		{120, quantity.Second, 3, "2 min"},
 		{60, quantity.Second, 2, "1 min"},

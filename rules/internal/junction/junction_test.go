@@ -15,9 +15,16 @@ func TestDoublingAgreesWithTextbooks(t *testing.T) {
 	for _, tt := range []struct{ i, to, want, within float64 }{
 		{15e-9, 105, 3.84e-6, 1e-9}, {2e-6, 75, 64e-6, 1e-9}, {5e-9, 100, 897.6e-9, 0.01},
 	} {
-		if got := Scale(tt.i, 25, tt.to, 10); math.Abs(got/tt.want-1) > tt.within {
+		if got := Scale(tt.i, Reference, tt.to, Doubling); math.Abs(got/tt.want-1) > tt.within {
 			t.Errorf("%v A at %v °C is %v, want %v", tt.i, tt.to, got, tt.want)
 		}
+	}
+	// A builder saw 0.32 mA at about 40 °C fall to 75 µA at about 20 °C: ×2.07 per 10 K (derived from the observation).
+	if got := Scale(0.32e-3, 40, 20, Doubling); math.Abs(got/75e-6-1) > 0.07 {
+		t.Errorf("0.32 mA at 40 °C is %v A at 20 °C, want about 75 µA", got)
+	}
+	if per10K := math.Pow(0.32e-3/75e-6, 10.0/20); math.Abs(per10K-2.07) > 0.02 {
+		t.Errorf("the observation gives ×%.2f per 10 K, want ×2.07", per10K)
 	}
 }
 
@@ -47,7 +54,14 @@ func TestBring(t *testing.T) {
 		{"but not at none", 2e-7, at.With(screening.Voltage, 1), quantity.Exactly, Rule{AnyVoltage: true, LeastVoltage: 2}, 0, 0, false, "at least 2 V"},
 		{"voltage not stated", 2e-7, at.Without(screening.Voltage), quantity.Exactly, Rule{}, 0, 0, false, "not stated: ir@20 V"},
 		{"temperature not stated: a room's", 2e-7, at.Without(screening.PartTemperature), quantity.Exactly, Rule{}, 2e-7, quantity.Exactly, false, "25 ± 5 °C"},
-		{"not for germanium", 2e-7, at.Without(screening.PartTemperature), quantity.Exactly, Rule{NeedTemperature: true}, 0, 0, false, "state the part's temperature"},
+		{"not for germanium", 2e-7, at.Without(screening.PartTemperature), quantity.Exactly, Rule{NeedTemperature: true}, 0, 0, false, "state its temperature"},
+		// From 15 °C, with a doubling per 8 K, the factor to 25 °C is 2^(10/8) = 2.378: 0.42 µA may be 1.0 µA, 0.43 µA more.
+		{"germanium that clears the limit in any room", 4.2e-7, at.Without(screening.PartTemperature), quantity.Exactly, Rule{NeedTemperature: true, ClearsAnyRoom: true}, 4.2e-7 * math.Exp2(1.25), quantity.AtMost, false, "assumed a room's, 15 to 35 °C"},
+		{"germanium that a cold room could bring over it", 4.3e-7, at.Without(screening.PartTemperature), quantity.Exactly, Rule{NeedTemperature: true, ClearsAnyRoom: true}, 0, 0, false, "state its temperature"},
+		{"at least so much clears no room", 1e-8, at.Without(screening.PartTemperature), quantity.AtLeast, Rule{NeedTemperature: true, ClearsAnyRoom: true}, 0, 0, false, "state its temperature"},
+		{"hot and to be seen cool: no upper bound", 4e-7, at.With(screening.PartTemperature, 45), quantity.Exactly, Rule{SeenCool: true}, 1e-7, quantity.Exactly, true, "cool"},
+		{"another voltage that counts as the same", 2e-7, at.With(screening.Voltage, 9), quantity.Exactly, Rule{Same: screening.Span{Low: 0.15, High: 1.02}}, 2e-7, quantity.Exactly, false, ""},
+		{"below the least voltage, and too much already", 2e-6, at.With(screening.Voltage, 1), quantity.Exactly, Rule{AnyVoltage: true, LeastVoltage: 2}, 2e-6, quantity.AtLeast, false, "no less"},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
 			c := Bring(screening.Part{}, screening.Reading{Of: "ir", Value: tt.value, At: tt.at, Sense: tt.sense}, limit, tt.rule)
@@ -69,5 +83,17 @@ func TestUncertaintyOfTheLaw(t *testing.T) {
 	want := 1e-6 * math.Hypot(0.37841/math.Sqrt(3), 2*math.Ln2/10*3/math.Sqrt(3))
 	if math.Abs(c.U/want-1) > 1e-4 {
 		t.Errorf("u = %v, want %v", c.U, want)
+	}
+}
+
+func TestBringTakesTheVoltageThatCounts(t *testing.T) {
+	limit := screening.Limit{On: "iceo", At: screening.At(screening.VCE, 20).With(screening.PartTemperature, 25), High: 1e-6}
+	r := screening.Reading{Of: "iceo", Value: 2e-7, At: limit.At.With(screening.VCE, 30)}
+	if c := Bring(screening.Part{}, r, limit, Rule{Across: screening.VCE}); !c.OK || c.Reading.Sense != quantity.AtMost {
+		t.Errorf("VCE of 30 V against 20 V: %+v", c)
+	}
+	r.At = screening.At(screening.Voltage, 30).With(screening.PartTemperature, 25)
+	if c := Bring(screening.Part{}, r, limit, Rule{Across: screening.VCE}); c.OK || !strings.Contains(c.Why, "voltage of the reading is not stated") {
+		t.Errorf("VCE not stated: %+v", c)
 	}
 }
