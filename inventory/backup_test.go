@@ -6,6 +6,7 @@ import (
 	"errors"
 	"os"
 	"path/filepath"
+	"strings"
 	"testing"
 
 	"goodbin/screening"
@@ -106,7 +107,8 @@ func TestABackupOfDamageIsRefusedAndTheOldOneStays(t *testing.T) {
 	if after, err := os.ReadFile(path); err != nil || !bytes.Equal(before, after) {
 		t.Errorf("the older backup was replaced, %v", err)
 	}
-	if _, err := w.GetPart(ID{l.ID, 1}); !errors.Is(err, ErrCorrupt) {
+	_, err = w.GetPart(ID{l.ID, 1})
+	if !errors.Is(err, ErrCorrupt) || !strings.Contains(err.Error(), "part 1-01") || !strings.Contains(err.Error(), "backup") {
 		t.Errorf("reading the damaged record: %v", err)
 	}
 	put(func([]byte) []byte { return whole })

@@ -20,8 +20,9 @@ func fill(v reflect.Value, n *int) {
 	*n++
 	switch x := v.Addr().Interface().(type) {
 	case *screening.Condition:
-		for i, variable := range screening.Variables() {
-			*x = x.With(variable, float64(*n+i)/7)
+		all := screening.Variables()
+		for i := range screening.MaxConditions {
+			*x = x.With(all[(*n+i)%len(all)], float64(*n+i)/7)
 		}
 		return
 	case *time.Time:

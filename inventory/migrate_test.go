@@ -65,10 +65,10 @@ func TestAWorkbookOfEverySchemaOpens(t *testing.T) {
 			t.Fatalf("schema %d: %+v, %v", schema, p, err)
 		}
 		r := p.Part.Readings[1]
-		after, _ := r.At.Get(screening.After)
-		got := fmt.Sprintf("%s, %s, %s of %.4g %s after %.4g s, %d repeats, %s, %s, %s", p.Part.Claim.Ratings[0].Section, r.Of, r.Sense, r.Value,
-			r.Unit.Symbol(), after, len(r.Repeats), p.Outcome.Verdict, p.Outcome.AsClaim.Traits[0].Name, p.Count)
-		if want := "text 11, text 69, at least of 23.67 F after 12.14 s, 2 repeats, accept, text 127, about 144"; got != want {
+		vce, _ := r.At.Get(screening.VCE)
+		got := fmt.Sprintf("%s, %s, %s of %.4g %s at VCE %.4g V, %d repeats, %s, %s, %s", p.Part.Claim.Ratings[0].Section, r.Of, r.Sense, r.Value,
+			r.Unit.Symbol(), vce, len(r.Repeats), p.Outcome.Verdict, p.Outcome.AsClaim.Traits[0].Name, p.Count)
+		if want := "text 11, text 70, at least of 24 F at VCE 11 V, 2 repeats, accept, text 129, about 146"; got != want {
 			t.Errorf("schema %d: the part reads\n%s\nwant\n%s", schema, got, want)
 		}
 		if w.Position().Part != p.ID {

@@ -9,6 +9,7 @@ import (
 	"runtime"
 	"runtime/debug"
 	"strconv"
+	"strings"
 	"time"
 	"unicode/utf8"
 
@@ -107,7 +108,11 @@ func guard(path string, read func() error) (err error) {
 			err = corrupt(path, fmt.Errorf("%v", r))
 		}
 	}()
-	return read()
+	err = read()
+	if errors.Is(err, ErrCorrupt) && !strings.Contains(err.Error(), quote(path)) {
+		return corrupt(path, err) // a record's error names the record; the file and what to do come here
+	}
+	return err
 }
 
 func corrupt(path string, cause error) error {

@@ -155,6 +155,9 @@ var variables = screening.Variables()
 
 func conditionFrom(record conditionRecord) (screening.Condition, error) {
 	var c screening.Condition
+	if len(record) > screening.MaxConditions {
+		return c, fmt.Errorf("%w: %d conditions for one value", errVersion, len(record))
+	}
 	for name, x := range record {
 		v, ok := screening.VariableNamed(name)
 		if !ok {

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -106,7 +105,7 @@ func gainRecipe(p *promise, l screening.Limit) screening.Recipe {
 	collector, _, emitter := p.signs()
 	lines := []string{
 		fmt.Sprintf("emitter to supply %s; collector through R_C = %s (%s) to supply %s, %s", emitter, ohms(rc),
-			book.Watts((supply-vce)*ic, 2), collector, volts(supply)),
+			quantity.Format((supply-vce)*ic, quantity.Watt, 2), collector, volts(supply)),
 		fmt.Sprintf("base through R_B ≈ %s to supply %s; change it until R_C carries %s, that is until the part shows %s", ohms(rb), collector,
 			quantity.Format(ic, quantity.Ampere, 0), volts(vce)),
 		"IB is the voltage across R_B over R_B; gain is IC over IB",
@@ -151,14 +150,14 @@ func lampRecipe(p *promise) screening.Recipe {
 		Title: fmt.Sprintf("lamp test at about %s", quantity.Format(current, quantity.Ampere, 2)),
 		Lines: []string{
 			fmt.Sprintf("emitter to supply %s; collector through a %s %s lamp to supply %s, %s with a 1 A fuse", emitter, volts(lampVolts),
-				book.Watts(lampWatts, 0), collector, volts(lampVolts)),
+				quantity.Format(lampWatts, quantity.Watt, 0), collector, volts(lampVolts)),
 			"base open: the lamp stays dark; glowing is a short or heavy leakage",
 			fmt.Sprintf("base through R_B = %s (%s) to supply %s: the lamp lights. Read the volts collector to emitter and across R_B", ohms(rb),
-				book.Watts((lampVolts-vbe)*base, 2), collector),
+				quantity.Format((lampVolts-vbe)*base, quantity.Watt, 2), collector),
 			fmt.Sprintf("IC is about %s when the lamp is fully lit; IC over IB is the least the gain can be: enter it as hfe@ic=%s=%.0f..",
 				quantity.Format(current, quantity.Ampere, 2), quantity.Format(current, quantity.Ampere, 2), math.Floor(current/base)),
 			fmt.Sprintf("a part that stays half on turns up to %s into heat: a second or two only, or fix it to metal; the lamp gets hot too",
-				book.Watts(lampWatts/4, 2)),
+				quantity.Format(lampWatts/4, quantity.Watt, 2)),
 		},
 		Values: map[string]float64{
 			"supply": lampVolts, "lamp-power": lampWatts, "collector-current": current, "base-current": base, "base-resistance": rb,

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -127,7 +126,7 @@ func heat(p *promise) (screening.Caution, bool) {
 	return screening.Caution{
 		Code: "gain-test-heat",
 		Text: fmt.Sprintf("at %s the part turns %s into heat: read within a second or two, let it cool, and fix a power type to metal; sheets "+
-			"pulse it for 300 µs", r.At, book.Watts(watts, 2)),
+			"pulse it for 300 µs", r.At, quantity.Format(watts, quantity.Watt, 2)),
 		Values: map[string]float64{"power": watts},
 		Source: screening.Source{Document: "2N3055 and TIP data sheets: pulses of 300 µs, 2 % duty", Status: screening.Published},
 	}, true

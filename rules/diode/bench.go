@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -32,7 +31,7 @@ func about(x float64, unit quantity.Unit) string {
 	place := math.Pow10(int(math.Floor(math.Log10(x))) - 1)
 	figures := max(1, significant(math.Round(x/place)))
 	if unit == quantity.Watt {
-		return book.Watts(x, figures)
+		return quantity.Format(x, quantity.Watt, figures)
 	}
 	return quantity.Format(x, unit, figures)
 }

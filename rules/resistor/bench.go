@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -118,7 +117,7 @@ func fourWire(c screening.Claim, nominal float64) screening.Recipe {
 		Lines: []string{
 			"on two wires the leads and clips add 0.2 to 0.5 Ω, " + quantity.Format(0.3/nominal, quantity.Ratio, 2) + " of this value",
 			"set a current-limited supply to " + quantity.Format(current, quantity.Ampere, 3) + " (at most " +
-				quantity.Format(testShare, quantity.Ratio, 0) + " of its power: " + book.Watts(current*volts, 2) +
+				quantity.Format(testShare, quantity.Ratio, 0) + " of its power: " + quantity.Format(current*volts, quantity.Watt, 2) +
 				") and send it through the resistor",
 			"read the volts with a second pair of probes at the resistor's body, inside the current clips: about " +
 				quantity.Format(volts, quantity.Volt, 3),

@@ -180,7 +180,7 @@ func limits(c screening.Claim) ([]screening.Limit, error) {
 
 func untested(part screening.Part, _ []screening.Finding) []string {
 	if p, ok := part.Claim.Nominal(Power.Name, ""); ok {
-		return []string{"rated power (" + book.Watts(p, 0) + ") and value under load"}
+		return []string{"rated power (" + quantity.Format(p, quantity.Watt, 0) + ") and value under load"}
 	}
 	return []string{"rated power and value under load"}
 }

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -71,7 +70,7 @@ func overPower(c screening.Claim, r *screening.Reading) string {
 	if !claimed || !stated || i*r.Value <= p {
 		return ""
 	}
-	return fmt.Sprintf("that reading put %s into a part of %s", book.Watts(i*r.Value, 2), book.Watts(p, 0))
+	return fmt.Sprintf("that reading put %s into a part of %s", quantity.Format(i*r.Value, quantity.Watt, 2), quantity.Format(p, quantity.Watt, 0))
 }
 
 // lesser answers a voltage too near its edge with a wider tolerance, and one that cannot be held against the claim (none, no test current,
@@ -191,7 +190,7 @@ func honest(x, u float64) float64 {
 // untested says that power is not tested. What was wanted and not measured, such as the slope, is listed without it.
 func untested(part screening.Part, _ []screening.Finding) []string {
 	if p, ok := part.Claim.Nominal(screening.Ptot.Name, ""); ok {
-		return []string{"power (rated " + book.Watts(p, 0) + ")"}
+		return []string{"power (rated " + quantity.Format(p, quantity.Watt, 0) + ")"}
 	}
 	return []string{"power (unknown: assume the smallest for this body)"}
 }

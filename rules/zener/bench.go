@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -174,7 +173,7 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	vz, current, known := operating(part.Claim)
 	var all []screening.Caution
 	if _, rated := part.Claim.Nominal(screening.Ptot.Name, ""); !rated {
-		text := "power unknown: assume the smallest for this body, and keep volts × amperes below " + book.Watts(smallestPower, 0)
+		text := "power unknown: assume the smallest for this body, and keep volts × amperes below " + quantity.Format(smallestPower, quantity.Watt, 0)
 		values := map[string]float64{"power": smallestPower}
 		if known {
 			text += ", " + about(smallestPower/vz, quantity.Ampere) + " at " + volts(vz)
@@ -219,7 +218,7 @@ func about(x float64, unit quantity.Unit) string {
 		figures = 1
 	}
 	if unit == quantity.Watt {
-		return book.Watts(x, figures)
+		return quantity.Format(x, quantity.Watt, figures)
 	}
 	return quantity.Format(x, unit, figures)
 }
