@@ -1,6 +1,7 @@
 package tui
 
 import (
+	"cmp"
 	"errors"
 	"slices"
 
@@ -34,6 +35,7 @@ type bench struct {
 	lotTable table
 	form     form
 	editing  inventory.Lot // the lot that the form corrects; the zero Lot for a new one
+	from     benchMode     // what the form was opened over; benchOpening where it is the first page
 
 	grid grid
 }
@@ -87,7 +89,7 @@ func (b *bench) about() []string {
 			"The line at the top asks, you answer: a number and Enter, on the numeric pad alone. A bare number counts in the unit that stands behind " +
 				"the field; 2010u, 2,01m and 4k7 work as well, as do <0.1uA, >400V and OL. Several values separated by spaces are a series. " +
 				"A condition follows an at sign: 61m@120Hz. NAME=VALUE gives a reading that was not asked for; temperature=24C holds for " +
-				"the parts that follow as well, until another one is typed.",
+				"the parts that follow as well, until another one is typed. treated=1 says that a part was re-formed or dried, once.",
 			"Looks are answered with 0 (no) and 1 (yes); 00 says no to every look that is left.",
 			"A sign alone and then Enter is a command, so that the numeric pad does everything. Every answer is on the disk before the next " +
 				"question appears.",
@@ -100,25 +102,34 @@ func (b *bench) about() []string {
 	return []string{"Every lot of the workbook, the last one first."}
 }
 
-// leave goes one level up: from the grid or the form to the list of lots.
+// leave goes one level up: from the grid to the list of lots, from the form to what it was opened over.
 func (b *bench) leave() (tea.Cmd, bool) {
 	switch {
 	case b.mode == benchGrid && b.grid.leave():
 		return nil, true
-	case b.mode == benchGrid, b.mode == benchForm && len(b.lots) > 0:
+	case b.mode == benchForm && b.from == benchGrid:
+		b.mode = benchOpening // read anew: the lot may have been undone meanwhile
+		return b.d.openLot(b.grid.lot.ID, b.grid.part.ID, b.grid.column()), true
+	case b.canLeave():
 		return b.d.listLots(), true
 	}
 	return nil, false
+}
+
+func (b *bench) canLeave() bool {
+	return b.mode == benchGrid || b.mode == benchForm && b.from != benchOpening
 }
 
 func (b *bench) receive(msg tea.Msg) tea.Cmd {
 	switch msg := msg.(type) {
 	case lotsListed:
 		b.lots, b.held = msg.lots, msg.held
-		b.mode = benchHome
 		if len(b.lots) == 0 {
+			b.mode = benchOpening // nothing lies under the form
 			b.startForm(inventory.Lot{})
+			return nil
 		}
+		b.mode = benchHome
 	case lotOpened:
 		return b.open(msg)
 	case partSaved:
@@ -132,12 +143,12 @@ func (b *bench) receive(msg tea.Msg) tea.Cmd {
 		b.grid.notSaved(msg.err)
 		b.d.messages.fail("nothing was kept: " + errorText(msg.err))
 	case failed:
+		b.grid.notSaved(msg.err)
+		if (b.mode == benchGrid || b.mode == benchOpening) && errors.Is(msg.err, inventory.ErrNotFound) {
+			return b.d.listLots() // the lot itself was undone
+		}
 		if b.mode == benchOpening {
 			b.mode = benchHome
-		}
-		b.grid.notSaved(msg.err)
-		if b.mode == benchGrid && errors.Is(msg.err, inventory.ErrNotFound) {
-			return b.d.listLots() // the lot itself was undone
 		}
 	case wentBack:
 		switch {
@@ -190,12 +201,11 @@ func (b *bench) position() inventory.Position {
 	if b.mode != benchGrid {
 		return b.d.wb.Position()
 	}
-	at := inventory.Position{Lot: b.grid.lot.ID, Part: b.grid.part.ID, Column: b.grid.pin}
-	if at.Column == "" {
-		at.Column = stayHere
-	}
-	return at
+	return inventory.Position{Lot: b.grid.lot.ID, Part: b.grid.part.ID, Column: b.grid.column()}
 }
+
+// column is the question in hand, as a position spells it.
+func (g *grid) column() string { return cmp.Or(g.pin, stayHere) }
 
 // stayHere, as the column of a position, lands on the very part, even where nothing is left to ask of it.
 const stayHere = "."

@@ -100,6 +100,9 @@ func (g *grid) withClaim(p inventory.Part, text string) (inventory.Part, string,
 		return p, "", err
 	}
 	p.Header, p.Part.Claim = text, parsed.Claim
+	if parsed.Treated > 0 {
+		p.Part.Treated = parsed.Treated
+	}
 	w := g.walkOf(p)
 	if err := g.addParsed(w, parsed); err != nil {
 		return p, "", err
@@ -113,6 +116,9 @@ func (g *grid) withClaim(p inventory.Part, text string) (inventory.Part, string,
 // withMissingClaim adds what the claim lacks; the part then has a claim of its own.
 func (g *grid) withMissingClaim(p inventory.Part, q screening.Question, text string) (inventory.Part, string, error) {
 	if _, err := entry.AnswerClaim(g.book, q, text); err != nil {
+		if whole, action, wholeErr := g.withClaim(p, strings.TrimSpace(g.claimText()+" "+text)); wholeErr == nil {
+			return whole, action, nil // all that is printed was typed, not only what was asked
+		}
 		return p, "", err
 	}
 	name := string(q.Field.Name)
@@ -129,8 +135,11 @@ func (g *grid) withWords(p inventory.Part, text string) (inventory.Part, string,
 	if err != nil {
 		return p, "", err
 	}
-	if !parsed.Claim.IsZero() {
-		return p, "", errors.New("what it claims is corrected with F9; here go readings, such as temperature=24C")
+	if !parsed.Claim.IsZero() { // "izt=5mA": it joins what the part claims
+		return g.withClaim(p, strings.TrimSpace(g.claimText()+" "+text))
+	}
+	if parsed.Treated > 0 {
+		p.Part.Treated = parsed.Treated
 	}
 	w := g.walkOf(p)
 	if err := g.addParsed(w, parsed); err != nil {
@@ -143,8 +152,9 @@ func (g *grid) addParsed(w *screening.Walk, parsed entry.Parsed) error {
 	for _, o := range parsed.Look {
 		w.See(o.Check, o.Fault)
 	}
+	questions := w.Questions()
 	for _, r := range parsed.Readings {
-		if err := w.Record(r); err != nil && !errors.Is(err, screening.ErrStillLive) {
+		if err := w.Record(entry.Asked(r, questions)); err != nil && !errors.Is(err, screening.ErrStillLive) {
 			return err
 		}
 	}
@@ -265,7 +275,7 @@ func (g *grid) saved(msg partSaved) tea.Cmd {
 	g.askedColumns(g.walk)
 	if q, open := g.question(); open {
 		if sent.key == q.Key() && q.Ask == screening.AskGate {
-			g.d.messages.fail("DANGER: the part still carries more than may remain. Do not touch it: discharge it, then measure again")
+			g.d.messages.fail("DANGER: " + remaining(&msg.part) + " remain. Hands off: discharge, measure again")
 		}
 		return nil
 	}
@@ -276,6 +286,12 @@ func (g *grid) saved(msg partSaved) tea.Cmd {
 		return g.d.ring(Bells(j.Verdict))
 	}
 	return nil
+}
+
+// remaining is the voltage that was found on a part last.
+func remaining(p *inventory.Part) string {
+	r, _ := p.Part.Reading(screening.RemainingVoltage.Name, "")
+	return entry.Value(r)
 }
 
 // notSaved gives the text back: nothing of it was kept.
@@ -300,6 +316,10 @@ func (g *grid) skip(q screening.Question, open bool) tea.Cmd {
 		return nil
 	}
 	key := keyOf(q)
+	if q.Ask == screening.AskClaim && key != rowClaim {
+		g.problem = errors.New("nothing can be judged without it: type it, or lay the part aside and type what the next one claims")
+		return nil
+	}
 	g.clear()
 	if !slices.Contains(g.part.Skipped, key) {
 		g.part.Skipped = append(slices.Clone(g.part.Skipped), key)
@@ -356,8 +376,11 @@ func (g *grid) goOn() tea.Cmd {
 	if g.part.ID.Number == 0 {
 		g.walk.AskWanted(true)
 	}
-	if _, open := g.question(); !open {
+	switch _, open := g.question(); {
+	case !open:
 		return g.d.messages.say("nothing more could be tested on " + g.idText())
+	case g.fresh():
+		return g.d.messages.say("of " + g.idText() + " what is only wanted will be asked as well")
 	}
 	return nil
 }

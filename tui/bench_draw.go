@@ -1,6 +1,7 @@
 package tui
 
 import (
+	"cmp"
 	"fmt"
 	"slices"
 	"strconv"
@@ -13,18 +14,18 @@ import (
 	"goodbin/screening/entry"
 )
 
-// gridColumn is one reading as a column of the grid.
+// gridColumn is one reading as a column of the grid; of a part with sections all of them stand in it.
 type gridColumn struct {
-	of      screening.Characteristic
-	section string
-	title   string
+	of    screening.Characteristic
+	title string
 }
 
-func (c gridColumn) key() string { return string(c.of) + "/" + c.section }
+// holds reports whether a question belongs into the column.
+func (c gridColumn) holds(key string) bool { return strings.HasPrefix(key, string(c.of)+"/") }
 
 // findColumns lists the readings that the walk asks of a part of this lot, then those that some part holds beside them.
 func (g *grid) findColumns() {
-	g.columns, g.usable = nil, 0
+	g.columns, g.usable, g.sectioned = nil, 0, false
 	g.askedColumns(g.walkOf(inventory.Part{ID: inventory.ID{Lot: g.lot.ID}}))
 	for i := range g.parts {
 		g.heldColumns(&g.parts[i])
@@ -51,14 +52,11 @@ func (g *grid) heldColumns(p *inventory.Part) {
 }
 
 func (g *grid) addColumn(of screening.Characteristic, section string) {
-	if of == screening.RemainingVoltage.Name || slices.ContainsFunc(g.columns, func(c gridColumn) bool { return c.of == of && c.section == section }) {
+	g.sectioned = g.sectioned || section != ""
+	if of == screening.RemainingVoltage.Name || slices.ContainsFunc(g.columns, func(c gridColumn) bool { return c.of == of }) {
 		return
 	}
-	title := g.book.Definition(of).Symbol
-	if section != "" {
-		title += " " + section
-	}
-	g.columns = append(g.columns, gridColumn{of, section, g.d.t.clean(title)})
+	g.columns = append(g.columns, gridColumn{of, g.d.t.clean(g.book.Definition(of).Symbol)})
 }
 
 // The widths of the grid's columns.
@@ -66,8 +64,16 @@ const (
 	lookW    = 5
 	claimsW  = 16
 	cellW    = 9
+	cellsW   = 13 // of a reading of several sections
 	verdictW = 11
 )
+
+func (g *grid) readingWidth() int {
+	if g.sectioned {
+		return cellsW
+	}
+	return cellW
+}
 
 // fixedWidth is what the grid's columns take beside the readings.
 func (g *grid) fixedWidth() int {
@@ -89,22 +95,22 @@ func (g *grid) tableColumns(w int) (cols []column, shown []gridColumn) {
 	}
 	cols = append(cols, column{title: "look", w: lookW})
 	shown = slices.Clone(g.columns)
-	most := max(0, (w-g.fixedWidth())/(cellW+1))
+	most := max(0, (w-g.fixedWidth())/(g.readingWidth()+1))
 	if q, ok := g.question(); ok && len(shown) > most && most > 0 {
-		at := slices.IndexFunc(shown, func(c gridColumn) bool { return c.key() == keyOf(q) })
+		at := slices.IndexFunc(shown, func(c gridColumn) bool { return c.holds(keyOf(q)) })
 		if at >= most {
 			shown[most-1] = shown[at]
 		}
 	}
 	shown = shown[:min(most, len(shown))]
 	for _, c := range shown {
-		cols = append(cols, column{title: c.title, w: cellW, right: true})
+		cols = append(cols, column{title: c.title, w: g.readingWidth(), right: true})
 	}
 	return append(cols, column{title: "verdict", w: verdictW}), shown
 }
 
 // tableWidth is how wide the grid would like to be.
-func (g *grid) tableWidth() int { return g.fixedWidth() + (cellW+1)*len(g.columns) + 1 }
+func (g *grid) tableWidth() int { return g.fixedWidth() + (g.readingWidth()+1)*len(g.columns) + 1 }
 
 // gridRows are the parts of the lot as the table shows them; the last one is the part that is not kept yet.
 type gridRows struct {
@@ -137,7 +143,12 @@ func (r gridRows) cells(i int, dst []string) {
 	}
 	cells = append(cells, inHand(r.look(p), strings.HasPrefix(hand, "look:")))
 	for _, c := range r.shown {
-		cells = append(cells, inHand(t.clean(r.value(p, c)), hand == c.key()))
+		in := c.holds(hand)
+		section := ""
+		if in {
+			_, section, _ = strings.Cut(hand, "/")
+		}
+		cells = append(cells, inHand(t.clean(r.value(p, c, section)), in))
 	}
 	_ = append(cells, r.verdict(i, p))
 }
@@ -177,16 +188,46 @@ func (r gridRows) look(p inventory.Part) string {
 	return text
 }
 
-func (r gridRows) value(p inventory.Part, c gridColumn) string {
-	for _, reading := range slices.Backward(p.Part.Readings) {
-		if reading.Of == c.of && reading.Section == c.section {
-			return shortValue(reading)
+// value is a reading in its cell: of one section where that is in hand, else of all: "8.4+9.1 µF".
+func (r gridRows) value(p inventory.Part, c gridColumn, section string) string {
+	var sections, values []string
+	for _, reading := range slices.Backward(p.Part.Readings) { // the last one counts
+		if reading.Of == c.of && (section == "" || reading.Section == section) && !slices.Contains(sections, reading.Section) {
+			sections = append(sections, reading.Section)
+			values = append(values, shortValue(reading))
 		}
 	}
-	if slices.Contains(p.Skipped, c.key()) {
+	switch {
+	case len(values) > 0:
+		return joinSections(sections, values)
+	case slices.ContainsFunc(p.Skipped, c.holds):
 		return "skipped"
 	}
 	return ""
+}
+
+// joinSections puts the readings of several sections into one text; a unit that they share stands once.
+func joinSections(sections, values []string) string {
+	order := make([]int, len(sections))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortFunc(order, func(a, b int) int { return cmp.Compare(sections[a], sections[b]) })
+	var text strings.Builder
+	for n, i := range order {
+		number, unit, _ := strings.Cut(values[i], " ")
+		if n+1 < len(order) {
+			_, next, _ := strings.Cut(values[order[n+1]], " ")
+			if unit == next {
+				text.WriteString(number + "+")
+			} else {
+				text.WriteString(values[i] + "+")
+			}
+			continue
+		}
+		text.WriteString(values[i])
+	}
+	return text.String()
 }
 
 // shortValue prints a reading in a cell: "2.010 mF", "<100 nA", "OL".
@@ -207,7 +248,11 @@ func shortValue(r screening.Reading) string {
 // draw shows the lot's line, the prompt, the grid, and the findings of the part in hand.
 func (g *grid) draw(w, h int) ([]string, spot) {
 	t := g.d.t
-	prompt, at := g.drawPrompt(w, max(promptHeight, h-7))
+	most := max(promptHeight, h-7)
+	if slices.ContainsFunc(g.cautions(g.question()), func(c screening.Caution) bool { return c.Level == screening.Danger }) {
+		most = max(promptHeight, h-1) // nothing matters more at this step
+	}
+	prompt, at := g.drawPrompt(w, most)
 	f := benchFrameFor(w, h, len(prompt), g.tableWidth(), len(g.parts)+1)
 	lines := []string{t.label.paint(fit(g.lotLine(w), w, t.g.more))}
 	lines = append(lines, block(prompt, w, len(prompt), t.g.more)...)
@@ -249,17 +294,41 @@ func (g *grid) lotLine(w int) string {
 func (g *grid) card() cardData {
 	if g.fresh() && g.done >= 0 && g.done < len(g.parts) {
 		p := g.parts[g.done]
-		j, err := g.walkOf(p).Judgement()
-		return cardData{id: p.ID.String(), book: g.book, allKey: "F6", part: p, judged: j, err: err}
+		w := g.walkOf(p)
+		j, err := w.Judgement()
+		return cardData{id: p.ID.String(), book: g.book, allKey: "F6", part: p, judged: j, err: err, told: toldAtGate(w)}
 	}
 	q, open := g.question()
 	j, err := g.walk.Judgement()
-	c := cardData{id: g.idText(), book: g.book, allKey: "F6", part: g.part, judged: j, err: err, open: open && g.pin == ""}
+	c := cardData{
+		id: g.idText(), book: g.book, allKey: "F6", part: g.part, judged: j, err: err, told: toldAtGate(g.walk),
+		unclaimed: q.Ask == screening.AskClaim && g.fresh(), atGate: q.Ask == screening.AskGate,
+	}
+	_, c.open = g.questionOf(g.part, g.walk, "")
 	if open && q.Ask == screening.AskReading {
 		c.asked = &q
 	}
 	c.answered, c.questions = g.progress()
 	return c
+}
+
+// toldAtGate are the codes of the cautions that the gate has spoken, where it is shut: the volts remaining were found low enough since the
+// last test under voltage. The gate will speak them again after the next one.
+func toldAtGate(w *screening.Walk) []string {
+	var codes []string
+	for _, q := range w.Questions() {
+		if q.Ask == screening.AskGate && q.Answered {
+			for _, c := range q.Cautions {
+				codes = append(codes, c.Code)
+			}
+		}
+	}
+	return codes
+}
+
+// untold leaves out the cautions that were told.
+func untold(cautions []screening.Caution, told []string) []screening.Caution {
+	return slices.DeleteFunc(slices.Clone(cautions), func(c screening.Caution) bool { return slices.Contains(told, c.Code) })
 }
 
 func (g *grid) showFindings() tea.Cmd {
@@ -278,10 +347,22 @@ func (g *grid) showFindings() tea.Cmd {
 // showRecipe opens the ways to measure what is asked.
 func (g *grid) showRecipe() tea.Cmd {
 	q, open := g.question()
-	if !open || q.Ask != screening.AskReading {
-		return g.d.messages.say("go to a reading with Left or Right; F5 then says how to measure it")
-	}
 	t := g.d.t
+	switch {
+	case open && q.Ask == screening.AskLook:
+		return showPager(&pager{title: "What to look for", lines: func(w int) []string {
+			lines := append(wrap(t.clean(q.Check.Question), w), "")
+			if q.Check.Help != "" {
+				lines = append(append(lines, wrap(t.clean(q.Check.Help), w)...), "")
+			}
+			for _, l := range wrap(t.clean(q.Check.Source.String()), w) {
+				lines = append(lines, t.faint.paint(l))
+			}
+			return lines
+		}})
+	case !open || q.Ask != screening.AskReading:
+		return g.d.messages.say("F5 says how a reading is measured: go to one with Left or Right")
+	}
 	var recipes []screening.Recipe
 	if g.book.Recipes != nil && q.Limit != nil {
 		if j, err := g.walk.Judgement(); err == nil {

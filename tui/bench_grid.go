@@ -2,6 +2,7 @@ package tui
 
 import (
 	"slices"
+	"strings"
 
 	"github.com/charmbracelet/bubbles/key"
 	tea "github.com/charmbracelet/bubbletea"
@@ -41,9 +42,10 @@ type grid struct {
 	lastKey  string
 	done     int // the row whose verdict was reached last; -1 while there is none
 
-	columns []gridColumn
-	usable  int // parts of the lot that are accepted or regraded
-	rows    table
+	columns   []gridColumn
+	sectioned bool // some part has sections
+	usable    int  // parts of the lot that are accepted or regraded
+	rows      table
 }
 
 // flight is an answer on its way to the disk.
@@ -239,14 +241,23 @@ func (b *bench) gridKey(msg tea.KeyMsg) tea.Cmd {
 	return nil
 }
 
-// typeKey takes a key into the field. After an alarm the first letter replaces the text, so that the value is simply typed again.
+// typeKey takes a key into the field. After an alarm or a refusal the first figure replaces the text, so that the value is simply typed
+// again; a letter goes on with it, since what was missing may be the unit.
 func (g *grid) typeKey(msg tea.KeyMsg) {
-	if g.alarm != nil && msg.Type == tea.KeyRunes {
+	if (g.alarm != nil || g.problem != nil) && g.startsAnew(msg) {
 		g.in = input{}
 	}
 	if g.in.key(msg) {
 		g.alarm, g.problem = nil, nil
 	}
+}
+
+func (g *grid) startsAnew(msg tea.KeyMsg) bool {
+	if msg.Type != tea.KeyRunes || len(msg.Runes) == 0 || g.in.at < len(g.in.text) || strings.Contains(strings.TrimSpace(g.in.String()), " ") {
+		return false
+	}
+	q, _ := g.question()
+	return q.Ask == screening.AskLook || strings.ContainsRune("0123456789.,<>+-*/", msg.Runes[0])
 }
 
 // step goes to another row, to the same reading there where it was being looked at.

@@ -25,7 +25,7 @@ const (
 
 // startForm begins a new lot, or the correction of one.
 func (b *bench) startForm(lot inventory.Lot) {
-	b.mode, b.editing = benchForm, lot
+	b.from, b.mode, b.editing = b.mode, benchForm, lot
 	b.form = form{title: "New lot", fields: []formField{
 		fieldKind: {
 			label: "what is it", hint: "the first letters will do: " + strings.Join(kindNames(b.d.kinds), ", "),
@@ -63,7 +63,7 @@ func (b *bench) headerHint() string {
 	if book, err := kindFor(b.d.kinds, b.form.text(fieldKind)); err == nil {
 		example = book.ExampleClaim()
 	}
-	return "as printed, once for the whole lot: " + example + ". Empty: a tin of mixed parts, each with a claim of its own"
+	return "as printed, such as " + example + "; empty: a tin of mixed parts, each with a claim of its own"
 }
 
 // kindFor finds the kind of a word or of its first letters.
@@ -109,8 +109,8 @@ func (b *bench) understandHeader(text string) ([]string, error) {
 	if err != nil {
 		return nil, err
 	}
-	if len(parsed.Readings)+len(parsed.Look) > 0 {
-		return nil, fmt.Errorf("a lot's header is what is printed on the parts; readings and looks are typed for each part")
+	if len(parsed.Readings)+len(parsed.Look) > 0 || parsed.Treated > 0 {
+		return nil, fmt.Errorf("a lot's header is what is printed on the parts; readings, looks and treated= are typed for each part")
 	}
 	if _, err := screening.Judge(book, screening.Part{Kind: book.Kind, Claim: parsed.Claim}, b.d.policy); err != nil {
 		return nil, err

@@ -22,9 +22,6 @@ func (g *grid) drawPrompt(w, most int) ([]string, spot) {
 	at.y = len(lines)
 	lines = append(lines, field)
 	lines = append(lines, g.underField(q, open, w)...)
-	for len(lines) < promptHeight {
-		lines = append(lines, "")
-	}
 	warnings := t.cautionLines(g.cautions(q, open), " ", w)
 	if room := max(0, most-len(lines)); len(warnings) > room {
 		warnings = warnings[:room]
@@ -32,10 +29,11 @@ func (g *grid) drawPrompt(w, most int) ([]string, spot) {
 			warnings[room-1] = t.danger.paint(fit(" "+t.g.more+" the rest of this warning: F6", w, t.g.more))
 		}
 	}
-	if len(warnings) > 0 && lines[len(lines)-1] == "" {
-		lines = lines[:len(lines)-1]
+	lines = append(lines, warnings...)
+	for len(lines) < promptHeight {
+		lines = append(lines, "")
 	}
-	return append(lines, warnings...), at
+	return lines, at
 }
 
 // cautionLines words cautions in full, the gravest first.
@@ -79,6 +77,9 @@ func (g *grid) questionLines(q screening.Question, open bool, w int) []string {
 func (g *grid) questionText(q screening.Question, open bool) (text, right string) {
 	if !open {
 		v, _ := g.walk.Judgement()
+		if v.Verdict == screening.Treat {
+			return "waits: treat it, type treated=1 (2 after the second time), then measure again: Left and Right go to the readings", ""
+		}
 		return "is done: " + v.Verdict.String() + ". Enter goes on, Left and Right correct, / asks for more", ""
 	}
 	switch {
@@ -91,7 +92,10 @@ func (g *grid) questionText(q screening.Question, open bool) (text, right string
 	case screening.AskClaim:
 		return "the claim lacks the " + q.Field.Label, ""
 	case screening.AskGate:
-		return "volts across it now, before it is touched?", "first of all"
+		if len(g.part.Part.Look)+len(g.part.Part.Readings) == 0 {
+			return "volts across it now, before it is touched?", "first of all"
+		}
+		return "volts that remain across it now, before it is touched?", "before going on"
 	case screening.AskLook:
 		return q.Check.Question, "look"
 	}
@@ -141,7 +145,7 @@ func (g *grid) fieldLine(q screening.Question, open bool, w int) (string, spot) 
 	text, cursor := g.in.draw(t, fieldW)
 	line := " " + t.g.marker + " " + t.field.paint(text) + " " + unit
 	used := left + fieldW + 1 + width(unit)
-	if room := w - used - 4; room > 8 && g.problem == nil && g.alarm == nil {
+	if room := w - used - 4; room > 8 && keyOf(q) != rowClaim && g.problem == nil && g.alarm == nil {
 		line += "   " + t.note.paint(fit(g.echo(q, open), room, t.g.more))
 	}
 	return line, spot{x: left + cursor}
@@ -158,7 +162,10 @@ func (g *grid) unit(q screening.Question, open bool) string {
 	case screening.AskGate:
 		return "V"
 	case screening.AskLook:
-		if g.looksLeft() > 1 {
+		switch text := strings.TrimSpace(g.in.String()); {
+		case text != "" && strings.Contains("+*/-", text):
+			return "" // what it does stands there instead
+		case g.looksLeft() > 1:
 			return "0 no   1 yes   00 no to all looks"
 		}
 		return "0 no   1 yes"
@@ -177,24 +184,25 @@ func (g *grid) looksLeft() int {
 	return n
 }
 
+// commandEcho says what a sign alone would do.
+var commandEcho = map[string]string{
+	"+": "Enter skips this question",
+	"*": "Enter measures the last one again",
+	"/": "Enter asks for more of this part",
+	"-": "Enter takes the last answer back",
+}
+
 // echo is what the text in the field would do.
 func (g *grid) echo(q screening.Question, open bool) string {
 	t := g.d.t
 	text := strings.TrimSpace(g.in.String())
-	switch text {
-	case "":
+	switch does, isCommand := commandEcho[text]; {
+	case text == "":
 		return ""
-	case "+":
-		return "Enter skips this question"
-	case "*":
-		if keyOf(q) == rowClaim {
-			return t.clean("Enter: the same as above, " + g.claimAbove())
-		}
-		return "Enter measures the last one again"
-	case "/":
-		return "Enter asks for more of this part"
-	case "-":
-		return "Enter takes the last answer back"
+	case text == "*" && keyOf(q) == rowClaim:
+		return t.clean("Enter: the same as above, " + g.claimAbove())
+	case isCommand:
+		return does
 	}
 	if q.Ask == screening.AskClaim && keyOf(q) != rowClaim {
 		c, err := entry.AnswerClaim(g.book, q, text)
@@ -217,6 +225,9 @@ func (g *grid) echo(q screening.Question, open bool) string {
 		echo := "= " + entry.Value(r)
 		if !r.At.IsZero() && r.At != q.At {
 			echo += " at " + r.At.String()
+		}
+		if coarse := entry.Coarse(r); coarse != "" {
+			echo += ", " + coarse
 		}
 		return t.clean(echo)
 	}
@@ -241,17 +252,54 @@ func (g *grid) underField(q screening.Question, open bool, w int) []string {
 	case !open:
 		return nil
 	case keyOf(q) == rowClaim:
-		return paintAll(t.faint, "as printed on it: 100/25 1974, 8+8/450; * is the same as above, + is nothing", 2)
+		return append(g.understood(w), paintAll(t.faint, g.claimHelp(), 2)...)
 	case q.Ask == screening.AskLook && q.Check.Help != "":
 		return paintAll(t.faint, q.Check.Help, 2)
 	case q.Ask == screening.AskClaim:
-		return paintAll(t.faint, strings.TrimSpace(q.Field.Help+" such as "+q.Field.Example), 2)
+		return paintAll(t.faint, claimFieldHelp(q.Field), 2)
 	case q.Ask == screening.AskGate:
 		return paintAll(t.faint, fmt.Sprintf("at most %d V may remain; measure again after discharging", screening.SafeVoltage), 2)
 	case q.Why != "" && q.Why != "not measured":
 		return paintAll(t.label, q.Why, 2)
 	}
 	return paintAll(t.faint, q.Field.Help, 2)
+}
+
+// understood are the lines under a claim that is being typed: what each word is taken for.
+func (g *grid) understood(w int) []string {
+	text := strings.TrimSpace(g.in.String())
+	echo := ""
+	if parsed, err := entry.Words(g.book, strings.Fields(text)); err == nil && text != "" {
+		echo = "= " + parsed.Claim.String()
+	} else if _, isCommand := commandEcho[text]; isCommand {
+		q, _ := g.question()
+		echo = g.echo(q, true)
+	}
+	lines := wrapHang("   ", g.d.t.clean(echo), w-1, 2, g.d.t.g.more)
+	for i := range lines {
+		lines[i] = g.d.t.note.paint(lines[i])
+	}
+	return lines
+}
+
+// claimFieldHelp says what goes into the field of one thing that the claim lacks.
+func claimFieldHelp(f screening.Field) string {
+	if f.Help == "" {
+		return "such as " + f.Example
+	}
+	return f.Help + "; such as " + f.Example
+}
+
+// claimHelp says what goes into the field of a claim.
+func (g *grid) claimHelp() string {
+	help := "as printed, such as " + g.book.ExampleClaim()
+	if g.pin == rowClaim {
+		return help + "; the readings stay"
+	}
+	if above := g.claimAbove(); above != "" {
+		help += "; * as above"
+	}
+	return help + "; + nothing printed"
 }
 
 // alarmText asks whether a reading that looks like a slip is meant.
@@ -279,7 +327,7 @@ func (g *grid) cautions(q screening.Question, open bool) []screening.Caution {
 			if err != nil {
 				return nil
 			}
-			return g.book.Cautions(j.Part, screening.AtMeasure)
+			return untold(g.book.Cautions(j.Part, screening.AtMeasure), toldAtGate(g.walk))
 		}
 	}
 	return nil

@@ -25,6 +25,10 @@ type cardData struct {
 	allKey    string              // the key that shows everything of the part
 	answered  int
 	questions int
+
+	told      []string // codes of cautions that were told and seen to
+	unclaimed bool     // what it claims is being asked
+	atGate    bool     // the volts remaining are being asked
 }
 
 // largeFrom is the height of a card from which the verdict is written in large letters.
@@ -37,6 +41,8 @@ func (t *theme) card(c cardData, w, h int) []string {
 	}
 	lines := []string{t.strong.paint(fit(c.id+"  "+t.clean(c.judged.Part.Claim.String()), w, t.g.more))}
 	switch {
+	case c.unclaimed:
+		return append(lines, t.faint.paint(fit("nothing is known of it yet", w, t.g.more)))
 	case c.err != nil:
 		for _, l := range wrap(t.clean(errorText(c.err)+"; F9 corrects what it claims"), w) {
 			lines = append(lines, t.error.paint(l))
@@ -53,6 +59,12 @@ func (t *theme) card(c cardData, w, h int) []string {
 // openLines say how far a part is that is still being measured.
 func (t *theme) openLines(c cardData, w int) []string {
 	text := strconv.Itoa(c.answered) + " of " + strconv.Itoa(c.questions) + " readings; no verdict yet"
+	if c.atGate {
+		text = "measuring begins with the volts that remain"
+		if c.answered > 0 {
+			text = "the verdict waits for the volts that remain"
+		}
+	}
 	var lines []string
 	lines = append(lines, t.faint.paint(fit(text, w, t.g.more)))
 	for _, r := range c.judged.Reasons {
@@ -73,34 +85,38 @@ func (t *theme) verdictLines(c cardData, w, h int) []string {
 	if j.RegradedAs != nil {
 		beside += ", as " + t.clean(j.RegradedAs.Text)
 	}
-	lines := t.banner(j.Verdict, beside, w, h >= largeFrom)
-	most := 2
-	if h < largeFrom {
-		most = 1
-	}
-	if j.RegradedAs != nil && h < largeFrom {
-		lines = append(lines, fit("as "+t.clean(j.RegradedAs.Text), w, t.g.more))
+	large := h >= largeFrom
+	lines := t.banner(j.Verdict, beside, w, large)
+	steps, reasons := 1, 2
+	if large {
+		steps, reasons = 2, 3
+	} else if j.RegradedAs != nil {
+		lines = append(lines, wrapHang("as ", t.clean(j.RegradedAs.Text), w, 2, t.g.more)...)
 	}
 	for i, r := range weighty(j.Reasons) {
-		if i == most+1 {
+		if i == reasons || j.RegradedAs != nil && !large && r.Text == j.RegradedAs.Text {
 			break
 		}
-		lines = append(lines, wrapHang("", t.clean(r.Text), w, most, t.g.more)...)
+		limit := 2 // what decides is said in full, what comments on it in a line
+		if i > 0 && !large {
+			limit = 1
+		}
+		lines = append(lines, wrapHang("", t.clean(r.Text), w, limit, t.g.more)...)
 	}
 	if untested := c.notTested(); untested != "" {
-		for _, l := range wrapHang("not tested: ", t.clean(untested), w, 2, t.g.more) {
+		for _, l := range wrapHang("not tested: ", t.clean(untested), w, reasons, t.g.more) {
 			lines = append(lines, t.label.paint(l))
 		}
 	}
-	for _, s := range j.Next[:min(len(j.Next), most)] {
-		for _, l := range wrapHang(t.g.marker+" ", t.clean(s.Text), w, most, t.g.more) {
+	for _, s := range j.Next[:min(len(j.Next), steps)] {
+		for _, l := range wrapHang(t.g.marker+" ", t.clean(s.Text), w, 3, t.g.more) {
 			lines = append(lines, t.strong.paint(l))
 		}
 	}
-	if j.Assumed && h >= largeFrom {
+	if j.Assumed && large {
 		lines = append(lines, t.faint.paint(fit("no meter named: its accuracy is assumed", w, t.g.more)))
 	}
-	warnings := t.cautionLines(j.Cautions, "", w)
+	warnings := t.cautionLines(untold(j.Cautions, c.told), "", w)
 	if room := max(2, h/4); len(warnings) > room {
 		warnings = append(warnings[:room-1:room-1], t.danger.paint(fit(t.g.more+" the rest of this warning: "+c.allKey, w, t.g.more)))
 	}
@@ -147,13 +163,14 @@ func (c *cardData) nameOf(of screening.Characteristic, section string) string {
 	return name
 }
 
-// headlines chooses one finding per criterion and section: what decides it, at the grade reached.
+// headlines chooses one finding per criterion and section: what decides it, at the grade reached. A limit of a stricter grade decides
+// nothing where the part was taken at a laxer one: beside an accept it would read as a failure.
 func headlines(j screening.Judgement, asked *screening.Question) []screening.Finding {
 	var heads []screening.Finding
 	rank := func(f *screening.Finding) int {
-		r := [...]int{screening.Missing: 0, screening.Close: 2, screening.Pass: 4, screening.Fail: 6}[f.Outcome]
+		r := [...]int{screening.Missing: 0, screening.Close: 1, screening.Pass: 2, screening.Fail: 3}[f.Outcome]
 		if f.Limit.Grade == j.Grade || f.Limit.Grade == screening.AnyGrade || j.Grade == screening.AnyGrade && f.Limit.Grade == screening.Serviceable {
-			r++
+			r += 4
 		}
 		return r
 	}
@@ -199,6 +216,9 @@ func urgency(f screening.Finding) int {
 // many lines as are left for each.
 func (t *theme) findingLines(c cardData, w, h int) []string {
 	heads := headlines(c.judged, c.asked)
+	if len(c.judged.Stops) > 0 { // what was not measured does not matter any more
+		heads = slices.DeleteFunc(heads, func(f screening.Finding) bool { return f.Evidence() == nil })
+	}
 	if len(heads) == 0 || h <= 0 {
 		return nil
 	}
@@ -219,7 +239,7 @@ func (t *theme) findingLines(c cardData, w, h int) []string {
 		case i > 0 && len(lines)+2*(len(heads)-i) <= h || i == 0 && 2*len(heads) <= h:
 			lines = append(lines, full[i][:2]...)
 		default:
-			lines = append(lines, t.findingLine(&heads[i], w))
+			lines = append(lines, t.findingLine(&c, &heads[i], w))
 		}
 	}
 	return lines[:min(len(lines), h)]
@@ -228,8 +248,11 @@ func (t *theme) findingLines(c cardData, w, h int) []string {
 // finding shows one limit in full: what was read, the scale, the rule with its numbers, the source.
 func (t *theme) finding(c *cardData, f *screening.Finding, w int) []string {
 	name, read := t.clean(c.nameOf(f.Limit.On, f.Limit.Section)), t.clean(readingText(f))
+	if c.ambiguous(f) {
+		name += ": " + t.clean(criterionName(f))
+	}
 	if width(name)+width(read)+width(outcomeText(f))+3 > w {
-		name = t.clean(findingName(f))
+		name = t.clean(c.findingName(f))
 	}
 	lines := []string{
 		between(t.strong.paint(name)+"  "+read, t.outcomeInk(f.Outcome).paint(outcomeText(f)), w, t.g.more),
@@ -250,23 +273,33 @@ func (t *theme) finding(c *cardData, f *screening.Finding, w int) []string {
 			lines = append(lines, t.label.paint(l))
 		}
 	}
-	source := f.Limit.Source.String()
-	if g := f.Limit.Grade.String(); g != "" {
-		source = g + ": " + source
-	}
-	for _, l := range wrapHang("  ", t.clean(source), w, 2, t.g.more) {
+	for _, l := range wrapHang("  ", t.clean(sourceText(f.Limit)), w, 2, t.g.more) {
 		lines = append(lines, t.faint.paint(l))
 	}
 	return lines
 }
 
+// sourceText says how good a limit asks a part to be, how well the figure is known, and where it is from: "serviceable, published: Lelon
+// RGA". What is cut where there is no room for it is the document, never how well it is known.
+func sourceText(l screening.Limit) string {
+	where := strings.TrimSuffix(screening.Source{Document: l.Source.Document, Clause: l.Source.Clause}.String(), " ()")
+	text := l.Source.Status.String()
+	if g := l.Grade.String(); g != "" {
+		text = g + ", " + text
+	}
+	if where == "" {
+		return text
+	}
+	return text + ": " + where
+}
+
 // findingLine shows one limit in a line: its name, what was read, a small scale, the outcome.
-func (t *theme) findingLine(f *screening.Finding, w int) string {
-	const nameW, valueW, outcomeW = 13, 9, 8
-	name := fit(t.clean(findingName(f)), nameW, t.g.more) + " "
+func (t *theme) findingLine(c *cardData, f *screening.Finding, w int) string {
+	const nameW, valueW, outcomeW = 13, 9, 11 // "unconfirmed" is the longest
+	name := fit(t.clean(c.findingName(f)), nameW, t.g.more) + " "
 	value := "none"
 	if e := f.Evidence(); e != nil {
-		value = t.clean(entry.Value(*e))
+		value = t.clean(shortValue(*e))
 	}
 	line := name + fitRight(value, valueW, t.g.more) + " "
 	if room := w - nameW - valueW - outcomeW - 3; room >= 8 {
@@ -275,8 +308,22 @@ func (t *theme) findingLine(f *screening.Finding, w int) string {
 	return t.outcomeInk(f.Outcome).paint(fit(line+outcomeText(f), w, t.g.more))
 }
 
-func findingName(f *screening.Finding) string {
+// ambiguous reports whether one reading answers several criteria, so that its name alone does not say which one is meant.
+func (c *cardData) ambiguous(f *screening.Finding) bool {
+	return slices.ContainsFunc(c.judged.Findings, func(other screening.Finding) bool {
+		return other.Limit.On == f.Limit.On && other.Limit.Section == f.Limit.Section && other.Limit.Criterion != f.Limit.Criterion
+	})
+}
+
+func criterionName(f *screening.Finding) string {
+	return strings.ReplaceAll(string(f.Limit.Criterion), "-", " ")
+}
+
+func (c *cardData) findingName(f *screening.Finding) string {
 	name := strings.ReplaceAll(string(f.Limit.On), "-", " ")
+	if c.ambiguous(f) {
+		name = criterionName(f)
+	}
 	if f.Limit.Section != "" {
 		name += " " + f.Limit.Section
 	}

@@ -1,5 +1,7 @@
 package tui
 
+import "strings"
+
 // footer writes the keys of a page that are marked short into one line; what does not fit is dropped from the right, help and close
 // never.
 func (t *theme) footer(groups []keyGroup, global globalKeys, w int) string {
@@ -36,8 +38,11 @@ func footerWords(b binding) string {
 	return help
 }
 
+// footerKey is the key in the footer. Of a sign that is typed Enter is left out: the prompt asks for it as soon as the sign stands there.
+func footerKey(b binding) string { return strings.TrimSuffix(b.Help().Key, " Enter") }
+
 func (t *theme) keyText(b binding) string {
-	return t.key.paint(b.Help().Key) + " " + footerWords(b) + "  "
+	return t.key.paint(footerKey(b)) + " " + footerWords(b) + "  "
 }
 
-func (t *theme) keyWidth(b binding) int { return width(b.Help().Key) + 1 + width(footerWords(b)) + 2 }
+func (t *theme) keyWidth(b binding) int { return width(footerKey(b)) + 1 + width(footerWords(b)) + 2 }

@@ -56,7 +56,7 @@ func newGridKeys() gridKeys {
 		again:    typed(true, "*", "again: the last reading once more, the values become a series"),
 		more:     typed(true, "/", "more: go on after a stop, or with what could be tested beside it"),
 		back:     typed(true, "-", "undo: take the last answer back"),
-		recipe:   bind(true, []string{"f5", "ctrl+r"}, "F5", "recipe: how to measure it with what people own"),
+		recipe:   bind(true, []string{"f5", "ctrl+r"}, "F5", "recipe: how to measure it with what people own; what to look for"),
 		findings: bind(true, []string{"f6", "ctrl+f"}, "F6", "all: every finding with formula and source"),
 		lots:     bind(true, []string{"f7", "ctrl+o"}, "F7", "lots: the list of them"),
 		newLot:   bind(false, []string{"f8", "ctrl+n"}, "F8", "new lot"),

@@ -33,6 +33,7 @@ type page interface {
 	keys() []keyGroup                // of its present state
 	typing() bool                    // something is typed in the focused field, so a letter is a letter
 	leave() (cmd tea.Cmd, left bool) // one level up; false: there is none
+	canLeave() bool                  // whether there is one
 	about() []string                 // what help says before the keys
 	paused() bool                    // it waits for the disk: keys wait as well
 }
@@ -219,6 +220,8 @@ func (m *model) draw() ([]string, spot) {
 			m.w, m.h, minWidth, minHeight, fullWidth)
 		return block(wrap(text, m.w), m.w, m.h, ""), spot{off: true}
 	}
+	global := m.global
+	global.leave.SetEnabled(m.overlay != nil || m.page().canLeave())
 	lines := []string{m.header(f.header.w)}
 	var body []string
 	var at spot
@@ -231,7 +234,7 @@ func (m *model) draw() ([]string, spot) {
 	}
 	at.y += f.body.y
 	lines = append(lines, body...)
-	lines = append(lines, m.messages.draw(t, f.message.w), t.footer(groups, m.global, f.footer.w))
+	lines = append(lines, m.messages.draw(t, f.message.w), t.footer(groups, global, f.footer.w))
 	return lines, at
 }
 

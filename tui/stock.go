@@ -192,6 +192,9 @@ func (s *stock) move(by int) tea.Cmd {
 	return s.openSelected()
 }
 
+// canLeave: under the stock lies the bench.
+func (s *stock) canLeave() bool { return true }
+
 // leave ends what was begun, then the filter.
 func (s *stock) leave() (tea.Cmd, bool) {
 	switch {

@@ -27,6 +27,7 @@ type stockAct struct {
 	kind    actKind
 	row     inventory.Row
 	in      input
+	offered bool // the text in the field is what the workbook holds: what is typed replaces it, an arrow key goes into it
 	problem error
 }
 
@@ -36,7 +37,7 @@ func (s *stock) begin(kind actKind) tea.Cmd {
 	if !ok {
 		return s.d.messages.say("no part is selected")
 	}
-	s.act = &stockAct{kind: kind, row: row}
+	s.act = &stockAct{kind: kind, row: row, offered: kind == actMove || kind == actRecount}
 	switch kind {
 	case actMove:
 		s.act.in.set(row.Place)
@@ -65,8 +66,11 @@ func (a *stockAct) question() (text, hint string) {
 
 func (s *stock) actKey(msg tea.KeyMsg) tea.Cmd {
 	if !key.Matches(msg, s.k.open.Binding) {
+		if s.act.offered && msg.Type == tea.KeyRunes {
+			s.act.in = input{}
+		}
 		if s.act.in.key(msg) {
-			s.act.problem = nil
+			s.act.problem, s.act.offered = nil, false
 		}
 		return nil
 	}
@@ -99,7 +103,11 @@ func (a *stockAct) understood(wb *inventory.Workbook) (text string, act func() e
 		}
 		return id.String() + ": " + count.String() + " there", func() error { return wb.Recount(id, count) }, nil
 	}
-	return id.String() + " lies in " + typed, func() error { return moveTo(wb, id, typed) }, nil
+	where := typed
+	if where == "" {
+		where = "the place of its lot"
+	}
+	return id.String() + " lies in " + where, func() error { return moveTo(wb, id, typed) }, nil
 }
 
 // moveTo gives a part a place of its own.

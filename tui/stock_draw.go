@@ -28,9 +28,12 @@ func (r stockRows) cells(i int, dst []string) {
 		return
 	}
 	row := &r.s.rows[k]
-	left := row.Count.String()
-	if row.Count.Level == inventory.Exact {
-		left = strconv.Itoa(row.Left)
+	left := strconv.Itoa(row.Left)
+	switch row.Count.Level {
+	case inventory.About:
+		left = "~" + left
+	case inventory.Unknown:
+		left = "?"
 	}
 	verdict := t.verdictWord(row.Verdict)
 	if row.Stale {

@@ -53,7 +53,7 @@ func TestStockShowsAllOfAPart(t *testing.T) {
 func TestStockTakeReturnRecountAndPlace(t *testing.T) {
 	d := newStockDesk(t)
 	get := func() inventory.Part { return d.part(2) }
-	d.press("f7", "ctrl+u")
+	d.press("f7") // what is typed replaces the count that stands there
 	d.answer("about 40")
 	if c := get().Count; c != (inventory.Count{N: 40, Level: inventory.About}) {
 		t.Fatalf("count %v", c)
@@ -70,7 +70,7 @@ func TestStockTakeReturnRecountAndPlace(t *testing.T) {
 	if p := get(); p.Taken != 2 {
 		t.Fatalf("taken %d after returning one", p.Taken)
 	}
-	d.press("f8", "ctrl+u")
+	d.press("f8")
 	d.answer("drawer 12")
 	if p := get(); p.Place != "drawer 12" {
 		t.Fatalf("place %q", p.Place)
@@ -80,6 +80,11 @@ func TestStockTakeReturnRecountAndPlace(t *testing.T) {
 	d.mustShow("undone: 1-02: place drawer 12")
 	if p := get(); p.Place != "" {
 		t.Fatalf("place %q after undo", p.Place)
+	}
+	d.press("f8", "right")
+	d.answer("!") // an arrow key goes into the text that stands there
+	if p := get(); p.Place != "shelf B!" && p.Place != "!" {
+		t.Fatalf("place %q", p.Place)
 	}
 }
 

@@ -23,17 +23,24 @@ const benchExamples = `  goodbin bench                    the pages
 
 // linesHelp says what can be typed at any prompt of the linear mode.
 const linesHelp = `An answer is a value in the unit that the prompt names, such as 2010 or 2010u or 61m@120Hz; >400V, <0.1uA and OL work too; several
-values separated by spaces are repeats of one reading. NAME=VALUE gives a reading that was not asked for, such as temperature=24C.
+values separated by spaces are repeats of one reading. NAME=VALUE gives a reading that was not asked for, such as temperature=24C;
+treated=1 says that the part was re-formed or dried, once. Looks take y and n, or 1 and 0; 00 says no to every look that is left.
 At any prompt:
-  (empty)          skip this question
-  b  back          take the last answer back
-  r  repeat        measure the last reading again
-  ?  help          this help, and how to measure what is asked
+  (empty) or +     skip this question
+  b  back  -       take the last answer back
+  r  repeat  *     measure the last reading again
+  ?                how to measure or answer what is asked
+  h  help          this help
   n  next          go to the next part (where a question takes yes or no, n is no: type next)
+  1-03             go to that part of the lot, to correct it: NAME=VALUE replaces a reading
   w  wanted        ask for the readings that are wanted and not needed, too
   g  go on         go on after a stop, and ask skipped questions again
+  /                whichever of these two there is
   l  lot           begin another lot
   q  quit          leave; every answer is kept`
+
+// linesKeys is the help in one line; it follows the answer to "?".
+const linesKeys = "Enter skips, b back, r repeat, n next part, w wanted, g go on, l lot, q quit; h explains them"
 
 func (a *app) benchCommand() *cobra.Command {
 	var lines, bell bool
@@ -109,6 +116,7 @@ var (
 	errQuit = errors.New("quit")
 	errLot  = errors.New("another lot")
 	errNext = errors.New("next part")
+	errGoTo = errors.New("the part in hand was changed")
 )
 
 func (a *app) benchLines(ctx context.Context, bell bool) error {

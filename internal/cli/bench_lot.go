@@ -16,7 +16,7 @@ const benchPage = "bench"
 
 // run goes on where the person was, then from lot to lot until they quit.
 func (l *lines) run(ctx context.Context) error {
-	if err := l.say("goodbin, line by line; ? is help, q leaves"); err != nil {
+	if err := l.say("goodbin, line by line; ? says more of what is asked, h lists the commands, q leaves"); err != nil {
 		return err
 	}
 	resumed, err := l.resume()
@@ -98,7 +98,7 @@ func (l *lines) newLot(ctx context.Context) error {
 	for _, more := range []struct {
 		prompt string
 		to     *string
-	}{{"where they come from (empty: not said)", &lot.Source}, {"where they lie (empty: not said)", &lot.Place}} {
+	}{{"where they will lie, such as shelf B (empty: not said)", &lot.Place}, {"where they come from, such as bequest (empty: not said)", &lot.Source}} {
 		err := l.answer(ctx, more.prompt, func(text string) error {
 			if done, err := l.common(text, linesHelp); done || err != nil {
 				return err
@@ -141,7 +141,7 @@ func (l *lines) book1(name string) (*screening.Rulebook, error) {
 func (l *lines) askHeader(ctx context.Context, lot *inventory.Lot) error {
 	prompt := "what is printed on them, such as " + l.book.ExampleClaim() + " (empty: they differ)"
 	return l.answer(ctx, prompt, func(text string) error {
-		if done, err := l.common(text, linesHelp+"\n"+claimHelp(l.book)); done || err != nil {
+		if done, err := l.common(text, claimHelp(l.book)+"\n"+linesKeys); done || err != nil {
 			return err
 		}
 		if text == "" {
@@ -198,13 +198,20 @@ func (l *lines) common(text, help string) (done bool, err error) {
 	switch strings.ToLower(text) {
 	case "q", "quit":
 		return true, errQuit
-	case "?", "help", "h":
-		for line := range strings.Lines(help) {
-			if err := l.say("%s", strings.TrimRight(line, "\n")); err != nil {
-				return true, err
-			}
-		}
-		return true, retry{}
+	case "?":
+		return true, l.sayLines(help)
+	case "h", "help":
+		return true, l.sayLines(linesHelp)
 	}
 	return false, nil
+}
+
+// sayLines says a text of several lines; the prompt is then asked again.
+func (l *lines) sayLines(text string) error {
+	for line := range strings.Lines(text) {
+		if err := l.say("%s", strings.TrimRight(line, "\n")); err != nil {
+			return err
+		}
+	}
+	return retry{}
 }

@@ -15,10 +15,13 @@ import (
 // parts goes from part to part of the lot until the person quits or begins another lot.
 func (l *lines) parts(ctx context.Context) error {
 	for {
-		if err := l.onePart(ctx); !errors.Is(err, errNext) {
+		switch err := l.onePart(ctx); {
+		case errors.Is(err, errGoTo):
+		case errors.Is(err, errNext):
+			l.part = inventory.Part{ID: inventory.ID{Lot: l.lot.ID}}
+		default:
 			return err
 		}
-		l.part = inventory.Part{ID: inventory.ID{Lot: l.lot.ID}}
 		l.stand()
 	}
 }
@@ -61,7 +64,7 @@ func (l *lines) beginPart(ctx context.Context) error {
 	}
 	if l.lot.Mixed && l.part.Header == "" {
 		err := l.answer(ctx, "what is printed on it, such as "+l.book.ExampleClaim(), func(text string) error {
-			if done, err := l.common(text, linesHelp+"\n"+claimHelp(l.book)); done || err != nil {
+			if done, err := l.common(text, claimHelp(l.book)+"\n"+linesKeys); done || err != nil {
 				return err
 			}
 			switch strings.ToLower(text) {
@@ -133,7 +136,13 @@ func (l *lines) save(action string) error {
 
 // tellCautions says each caution once a part, before the step it is about.
 func (l *lines) tellCautions(q screening.Question) error {
-	for _, c := range q.Cautions {
+	cautions := q.Cautions
+	if q.Ask == screening.AskReading && q.Field.UnderVoltage && l.book.Cautions != nil {
+		if j, err := l.walk.Judgement(); err == nil {
+			cautions = append(slices.Clip(cautions), l.book.Cautions(j.Part, screening.AtMeasure)...)
+		}
+	}
+	for _, c := range cautions {
 		if l.warn[c.Text] {
 			continue
 		}
@@ -164,6 +173,9 @@ func (l *lines) tellVerdict() error {
 // afterVerdict waits for what to do with a part of which nothing more is asked.
 func (l *lines) afterVerdict(ctx context.Context) error {
 	prompt := "next part: Enter (b back, r repeat, w ask what is wanted too, l another lot, q quit)"
+	if j, err := l.walk.Judgement(); err == nil && j.Verdict == screening.Treat {
+		prompt = "next part: Enter (once it is treated: treated=1, then the readings anew, NAME=VALUE; b back, w ask what is wanted too, q quit)"
+	}
 	if l.walk.Stopped() {
 		prompt = "next part: Enter (g go on with this one, b back, r repeat, l another lot, q quit)"
 	}
@@ -192,11 +204,20 @@ func (l *lines) command(ctx context.Context, q screening.Question, text string) 
 	case "w", "wanted":
 		l.walk.AskWanted(true)
 		return nil
-	case "g", "go", "go on", "/":
-		l.part.Skipped, l.part.GoOn = nil, true
-		l.walk.GoOn()
-		l.walk.Unskip()
+	case "g", "go", "go on":
+		l.goOn()
 		return nil
+	case "/":
+		if l.walk.Stopped() {
+			l.goOn()
+		} else {
+			l.walk.Unskip()
+			l.walk.AskWanted(true)
+		}
+		return nil
+	}
+	if id, err := inventory.ParseID(text); err == nil && strings.Contains(text, "-") {
+		return l.goTo(id)
 	}
 	if strings.Contains(text, "=") {
 		return l.unasked(text)
@@ -205,6 +226,28 @@ func (l *lines) command(ctx context.Context, q screening.Question, text string) 
 		return again("nothing is asked; Enter goes to the next part, ? is help")
 	}
 	return errAnswer
+}
+
+func (l *lines) goOn() {
+	l.part.Skipped, l.part.GoOn = nil, true
+	l.walk.GoOn()
+	l.walk.Unskip()
+}
+
+// goTo brings another part of the lot into the hand.
+func (l *lines) goTo(id inventory.ID) error {
+	if id.Lot != l.lot.ID {
+		return again("%s lies in another lot; this is lot %d", id, l.lot.ID)
+	}
+	part, err := l.w.GetPart(id)
+	if errors.Is(err, inventory.ErrNotFound) {
+		return again("there is no part %s yet", id)
+	}
+	if err != nil {
+		return err
+	}
+	l.part = part
+	return errGoTo
 }
 
 // errAnswer says that a text is no command.
@@ -265,13 +308,19 @@ func (l *lines) unasked(text string) error {
 		return refusal(err)
 	}
 	if !parsed.Claim.IsZero() {
-		return again("here go readings, such as temperature=24C; what is printed belongs to the lot or the part's first line")
+		return l.claimMore(text)
+	}
+	if parsed.Treated > 0 {
+		l.part.Part = l.walk.Part()
+		l.part.Part.Treated = parsed.Treated
+		l.startWalk()
 	}
 	for _, o := range parsed.Look {
 		l.walk.See(o.Check, o.Fault)
 	}
+	questions := l.walk.Questions()
 	for _, r := range parsed.Readings {
-		if err := l.walk.Record(r); err != nil && !errors.Is(err, screening.ErrStillLive) {
+		if err := l.walk.Record(entry.Asked(r, questions)); err != nil && !errors.Is(err, screening.ErrStillLive) {
 			return refusal(err)
 		}
 	}

@@ -21,6 +21,9 @@ func (l *lines) question(ctx context.Context, q screening.Question) error {
 			if fault, ok := yesOrNo(text); ok {
 				return l.look(q, fault)
 			}
+			if text == "00" {
+				return l.nothingSeen()
+			}
 		}
 		if err := l.command(ctx, q, text); !errors.Is(err, errAnswer) {
 			return err
@@ -90,6 +93,16 @@ func (l *lines) look(q screening.Question, fault bool) error {
 	return l.save("looked for " + q.Check.Name + ": no")
 }
 
+// nothingSeen answers no to every look that is left.
+func (l *lines) nothingSeen() error {
+	for _, q := range l.walk.Questions() {
+		if q.Ask == screening.AskLook && !q.Answered {
+			l.walk.See(q.Check.Name, false)
+		}
+	}
+	return l.save("looked: nothing seen")
+}
+
 // claim adds one rating or trait that was missing; the part then has a claim of its own.
 func (l *lines) claim(q screening.Question, text string) error {
 	more, err := entry.AnswerClaim(l.book, q, text)
@@ -116,6 +129,28 @@ func (l *lines) claim(q screening.Question, text string) error {
 	return l.save(q.Field.Label + " " + clean(text) + " claimed")
 }
 
+// claimMore adds words to what the part claims, "izt=5mA"; it then has a claim of its own.
+func (l *lines) claimMore(text string) error {
+	header := l.part.Header
+	if header == "" {
+		header = l.lot.Header
+	}
+	header = strings.TrimSpace(header + " " + text)
+	parsed, err := entry.Words(l.book, strings.Fields(header))
+	switch {
+	case err != nil:
+		return refusal(err)
+	case len(parsed.Readings)+len(parsed.Look) > 0:
+		return again("a claim and a reading are typed one after the other")
+	}
+	if _, _, err := complete(l.book, parsed.Claim); err != nil {
+		return refusal(err)
+	}
+	l.part.Header = header
+	l.walk.SetClaim(parsed.Claim)
+	return l.save("claims " + clean(text))
+}
+
 // reading takes one reading. One that looks like a slip of a power of ten is asked about before it is kept.
 func (l *lines) reading(ctx context.Context, q screening.Question, text string) error {
 	r, err := entry.Answer(q, text)
@@ -137,8 +172,14 @@ func (l *lines) reading(ctx context.Context, q screening.Question, text string) 
 	if q.Ask == screening.AskReading {
 		l.last = q
 	}
-	if saveErr := l.save(q.Field.Label + " " + entry.Value(r)); saveErr != nil {
+	said := q.Field.Label + " " + entry.Value(r)
+	if saveErr := l.save(said); saveErr != nil {
 		return saveErr
+	}
+	if coarse := entry.Coarse(r); coarse != "" && q.Ask == screening.AskReading {
+		if err := l.say("%s is taken %s", said, coarse); err != nil {
+			return err
+		}
 	}
 	if err != nil {
 		return l.say("DANGER: the part still carries %s. Do not touch it; discharge it again, then measure the volts that remain", entry.Value(r))
@@ -172,34 +213,41 @@ func (l *lines) confirm(ctx context.Context, r screening.Reading, alarm screenin
 
 // helpFor is the help at a prompt: what can be typed, what is asked, and how to measure it.
 func (l *lines) helpFor(q screening.Question) string {
+	if q.Ask == screening.AskNothing {
+		return linesKeys
+	}
 	var b strings.Builder
-	b.WriteString(linesHelp)
 	switch q.Ask {
 	case screening.AskLook:
-		b.WriteString("\n" + q.Check.Question + " " + q.Check.Help)
+		b.WriteString(q.Check.Question + " " + q.Check.Help)
 	case screening.AskClaim, screening.AskReading, screening.AskGate:
-		fmt.Fprintf(&b, "\n%s: %s", q.Field.Label, q.Field.Help)
+		fmt.Fprintf(&b, "%s: %s", q.Field.Label, q.Field.Help)
 	}
-	if q.Limit == nil {
-		return b.String()
+	if q.Limit != nil {
+		l.writeLimit(&b, *q.Limit)
 	}
-	fmt.Fprintf(&b, "\nlimit: %s; %s", screening.Allowed(*q.Limit), q.Limit.Source)
-	if formula := q.Limit.FormulaText(); formula != "" {
+	b.WriteString("\n" + linesKeys)
+	return b.String()
+}
+
+// writeLimit says what a limit allows, why, and how to measure it.
+func (l *lines) writeLimit(b *strings.Builder, limit screening.Limit) {
+	fmt.Fprintf(b, "\nlimit: %s; %s", screening.Allowed(limit), limit.Source)
+	if formula := limit.FormulaText(); formula != "" {
 		b.WriteString("\n" + formula)
 	}
 	if l.book.Recipes == nil {
-		return b.String()
+		return
 	}
 	j, err := l.walk.Judgement()
 	if err != nil {
-		return b.String()
+		return
 	}
-	for _, r := range l.book.Recipes(j.Part, *q.Limit) {
+	for _, r := range l.book.Recipes(j.Part, limit) {
 		b.WriteString("\n" + r.Title)
 		for _, line := range r.Lines {
 			b.WriteString("\n  " + line)
 		}
 		b.WriteString("\n  source: " + r.Source.String())
 	}
-	return b.String()
 }

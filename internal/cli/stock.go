@@ -42,7 +42,7 @@ func (a *app) stockCommand() *cobra.Command {
 	flags.StringSliceVar(&f.verdicts, "verdict", nil, "only these `VERDICTS`, whatever their state: accept, regrade, treat, undecided, barred, reject")
 	flags.StringVar(&f.place, "place", "", "only parts in a `PLACE` that begins so")
 	flags.StringVar(&f.order, "by", "usable", "`ORDER`: usable, id or place")
-	flags.IntVar(&f.limit, "limit", 0, "at most so many; 0 is all")
+	flags.IntVar(&f.limit, "limit", 0, "at most `N` parts; 0 is all")
 	return cmd
 }
 

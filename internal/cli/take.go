@@ -92,6 +92,7 @@ func (a *app) recountCommand() *cobra.Command {
 
 // countOf reads "12", "about 40" or "unknown".
 func countOf(words []string) (inventory.Count, error) {
+	words = strings.Fields(strings.Join(words, " ")) // "about 40" may come as one word
 	count := inventory.Count{Level: inventory.Exact}
 	if len(words) == 1 && strings.EqualFold(words[0], "unknown") {
 		return inventory.Count{Level: inventory.Unknown}, nil

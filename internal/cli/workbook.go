@@ -131,7 +131,7 @@ func isWorkbookError(err error) bool {
 func workbookHint(err error) string {
 	switch {
 	case errors.Is(err, inventory.ErrBusy):
-		return "close the other goodbin, or read a copy: goodbin backup COPY works meanwhile, then goodbin stock --workbook COPY"
+		return "goodbin backup COPY works all the same; then goodbin stock --workbook COPY"
 	case errors.Is(err, inventory.ErrForeign):
 		return "name another file with --workbook"
 	case errors.Is(err, inventory.ErrNewer):

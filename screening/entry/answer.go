@@ -47,6 +47,18 @@ func Answer(q screening.Question, text string) (screening.Reading, error) {
 	return r, nil
 }
 
+// Asked completes a reading that was given by its name, NAME=VALUE, while a walk is under way: a condition that was left out is the one that
+// the walk asks this reading at, as it would be at the prompt.
+func Asked(r screening.Reading, questions []screening.Question) screening.Reading {
+	for _, q := range questions {
+		if q.Ask == screening.AskReading && q.Field.Name == r.Of && q.Section == r.Section {
+			r.At = r.At.Fill(q.At)
+			return r
+		}
+	}
+	return r
+}
+
 // AnswerClaim reads what a person types where a walk asks for one rating or trait that is missing.
 func AnswerClaim(book *screening.Rulebook, q screening.Question, text string) (screening.Claim, error) {
 	value, err := tidy(text)

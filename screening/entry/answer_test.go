@@ -73,6 +73,38 @@ func TestAnswers(t *testing.T) {
 	}
 }
 
+func TestReadingGivenByNameTakesTheConditionThatIsAsked(t *testing.T) {
+	esr := questionFor(t, "can", "esr", math.Inf(-1), 0.1, screening.At(screening.Frequency, 120))
+	qs := []screening.Question{questionFor(t, "can", "capacitance", 1, 2, screening.Condition{}), esr}
+	bare := screening.Reading{Of: "esr", Value: 3}
+	if got := Asked(bare, qs).At; got != esr.At {
+		t.Errorf("taken at %s", got)
+	}
+	stated := screening.Reading{Of: "esr", At: screening.At(screening.Frequency, 100e3)}
+	if got := Asked(stated, qs).At; got != stated.At {
+		t.Errorf("a condition that was typed was changed to %s", got)
+	}
+	if got := Asked(screening.Reading{Of: "leakage"}, qs).At; !got.IsZero() {
+		t.Errorf("what is not asked was taken at %s", got)
+	}
+}
+
+func TestReadingsTypedWithTooFewDigitsAreSaid(t *testing.T) {
+	resistance := questionFor(t, "can", "esr", math.Inf(-1), 1e3, screening.Condition{})
+	for text, want := range map[string]string{
+		"1k": "to the nearest 1 kΩ: type every digit that is shown", "1.00k": "", "1002": "", "61m": "", "3m": "to the nearest 1 mΩ: type every digit that is shown",
+		"9": "", "<1": "", "1 1": "", "0": "",
+	} {
+		r, err := Answer(resistance, text)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := Coarse(r); got != want {
+			t.Errorf("%s: %q, want %q", text, got, want)
+		}
+	}
+}
+
 func TestPromptUnit(t *testing.T) {
 	inf := math.Inf(1)
 	tests := []struct {

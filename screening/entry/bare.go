@@ -189,17 +189,43 @@ func (p *parser) unknownWord(word string) error {
 	if near := Nearest(word, words); near != nil {
 		return e.hint("did you mean %s?", orList(near))
 	}
+	if _, ok := p.book.ClaimField(screening.TraitType); ok && looksLikeType(word) {
+		return e.hint("a type that no table here holds is written %s=%s, with what else is known of it", screening.TraitType, clean(word))
+	}
 	return e.hint("it claims %s; a reading has its name before it: NAME=VALUE", p.examples())
 }
+
+// mostExamples bounds the examples in an error: it is read out loud, too.
+const mostExamples = 6
 
 // examples lists what the kind's claims look like.
 func (p *parser) examples() string {
 	var examples []string
 	for i := range p.book.Claims {
 		f := &p.book.Claims[i]
-		if f.Example != "" {
-			examples = append(examples, string(f.Name)+" ("+f.Example+")")
+		if f.Example == "" {
+			continue
 		}
+		if len(examples) == mostExamples {
+			return strings.Join(examples, ", ") + " and others"
+		}
+		examples = append(examples, string(f.Name)+" ("+f.Example+")")
 	}
 	return strings.Join(examples, ", ")
+}
+
+// looksLikeType reports whether a word is letters and digits as a maker's type number is: "GT308B", "2SC945", "OC71".
+func looksLikeType(word string) bool {
+	letters, digits := 0, 0
+	for _, r := range word {
+		switch {
+		case r >= 'A' && r <= 'Z':
+			letters++
+		case r >= '0' && r <= '9':
+			digits++
+		case r != '-' && r != '/':
+			return false
+		}
+	}
+	return letters > 0 && digits > 1
 }

@@ -1,6 +1,7 @@
 package entry
 
 import (
+	"math"
 	"strconv"
 	"strings"
 
@@ -92,6 +93,18 @@ func readingText(f screening.Field, r screening.Reading) string {
 		text += " at " + at
 	}
 	return text
+}
+
+// coarse is how large the last digit of a reading may be against it before Coarse speaks: one digit up to five.
+const coarse = 0.2
+
+// Coarse says that a reading was typed with so few digits that its last one alone decides much: "1 kΩ" proves no tolerance where the meter
+// showed 1.002. It is "" for any other reading.
+func Coarse(r screening.Reading) string {
+	if r.Over || r.Sense != quantity.Exactly || len(r.Repeats) > 1 || r.Value == 0 || r.Step < coarse*math.Abs(r.Value)*(1-1e-9) {
+		return ""
+	}
+	return "to the nearest " + quantity.Format(r.Step, r.Unit, 1) + ": type every digit that is shown"
 }
 
 // Value prints what a reading says: "2010 µF", "< 0.1 µA", "OL (> 2 MΩ)", "180.7 (mean of 3)".

@@ -1,6 +1,7 @@
 package entry
 
 import (
+	"errors"
 	"math"
 	"strings"
 	"testing"
@@ -306,6 +307,20 @@ func checkPrintable(t *testing.T, text string) {
 	for _, r := range text {
 		if r < ' ' || r == 0x7f || r >= 0x80 && r < 0xa0 {
 			t.Fatalf("%q holds a control character", text)
+		}
+	}
+}
+
+func TestAnUnknownTypeNumberIsToldHowToBeClaimed(t *testing.T) {
+	book := bookOf(t, "transistor")
+	_, err := Words(book, []string{"QX308B"})
+	var e *Error
+	if !errors.As(err, &e) || !strings.Contains(e.Hint, "type=QX308B") {
+		t.Fatalf("%v, hint %q", err, e.Hint)
+	}
+	for word, want := range map[string]bool{"2SC945": true, "OC71": true, "npn": false, "A": false, "film": false} {
+		if looksLikeType(word) != want {
+			t.Errorf("%s looks like a type number: %v", word, !want)
 		}
 	}
 }
