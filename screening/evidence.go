@@ -137,6 +137,10 @@ func (j *judging) hold(f *Finding, r *Reading) {
 	if f.Outcome == Close && !f.Unconfirmed {
 		f.Wants.Accuracy = j.accuracyNeeded(f, r)
 		f.Why = "too near the limit for this meter"
+		// Where the digits make up half of what the meter may be off, more digits settle more than a better meter.
+		if r.Step > 0 && 2*r.Step >= r.Spec/2 {
+			f.TooCoarse, f.Why = true, "read to too few digits: the last one is worth "+quantity.Format(r.Step, r.Unit, 0)
+		}
 	}
 }
 

@@ -229,6 +229,9 @@ func (j *judging) settleStep(s criterionState, f *Finding) Step {
 		return Step{Code: CodeConfirmFigure, Text: text, Gap: f.Wants}
 	}
 	text := "REPEAT " + name
+	if f.TooCoarse {
+		return Step{Code: CodeRepeat, Text: text + " with every digit that the meter shows, on its lowest range", Gap: f.Wants}
+	}
 	if f.Wants.Accuracy > 0 {
 		text += ": needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2)
 	}

@@ -187,6 +187,17 @@ func TestUndecidedNamesTheReadingAndTheAccuracy(t *testing.T) {
 	}
 }
 
+func TestTooFewDigitsAreNamedAsTheCause(t *testing.T) {
+	coarse := toyPart(100, 1e-4, math.NaN(), screening.Reading{Of: "quick", Unit: quantity.Volt, Value: 0.7, Step: 0.1})
+	j, err := screening.Judge(toy(), coarse, screening.DefaultPolicy())
+	if err != nil || j.Next[0].Text != "REPEAT quick value with every digit that the meter shows, on its lowest range" {
+		t.Errorf("the step is %q, %v", j.Next[0].Text, err)
+	}
+	if j.Reasons[0].Text != "quick value: read to too few digits: the last one is worth 100 mV" {
+		t.Errorf("the reason is %q", j.Reasons[0].Text)
+	}
+}
+
 // JCGM 106:2012 as recomputed from memory of its printed figures (status: from memory, recomputes), and the normal table.
 func TestConformanceProbability(t *testing.T) {
 	cases := []struct {

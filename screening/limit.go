@@ -139,6 +139,7 @@ type Finding struct {
 	NearLimit   bool     // passed at the soft probability only
 	Unconfirmed bool     // would have failed, were the figure's status better
 	Wants       Gap      // for Missing and Close: what would settle it
+	TooCoarse   bool     // for Close: the last digits typed make up most of the uncertainty
 	Unstated    Variable // for Missing: the condition that the reading would have to state
 	Why         string   // in words, for Missing and Close
 }

@@ -163,9 +163,13 @@ func (w *Walk) Retract() bool {
 	return true
 }
 
-// Next returns the first question that is open; AskNothing where the walk is done or stopped.
+// Next returns the first question that is open; AskNothing where the walk is done or stopped. A part that was put under voltage is not left
+// before it is found discharged, whatever the verdict.
 func (w *Walk) Next() Question {
 	if w.Stopped() {
+		if gate, asked := w.gateQuestion(); asked && !gate.Answered && !gate.Skipped && w.underVoltage() {
+			return gate
+		}
 		return Question{}
 	}
 	for _, q := range w.Questions() {
@@ -227,6 +231,14 @@ func (w *Walk) gateQuestion() (Question, bool) {
 	}, true
 }
 
+// underVoltage reports whether a test under voltage was made.
+func (w *Walk) underVoltage() bool {
+	return slices.ContainsFunc(w.part.Readings, func(r Reading) bool {
+		f := w.book.bench(r.Of)
+		return f != nil && f.UnderVoltage
+	})
+}
+
 // discharged reports whether the part was last found at or below SafeVoltage, with no test under voltage since.
 func (w *Walk) discharged() bool {
 	safe := false
@@ -260,6 +272,9 @@ func (w *Walk) readingQuestions() []Question {
 				continue
 			}
 			field := w.book.Bench[order]
+			if field.UnderVoltage && f.Outcome == Missing && len(w.judged.Stops) > 0 {
+				continue // a part that was stopped by eye is not put under voltage, also when the walk goes on
+			}
 			q := Question{
 				// A part's temperature is read, not set: whoever fills a reading in from the question must not take the limit's.
 				Ask: AskReading, Field: field, Section: f.Limit.Section, At: f.Limit.At.Without(PartTemperature), Need: f.Need, Limit: &f.Limit,

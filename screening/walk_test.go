@@ -111,7 +111,8 @@ func TestWalkRefusesWhatTheKindDoesNotHave(t *testing.T) {
 	}
 }
 
-func TestWalkGateKeepsHandsOffAChargedPart(t *testing.T) {
+// charging makes the slow reading of the toy a test under voltage, with a gate.
+func charging() *screening.Rulebook {
 	book := toy()
 	book.Bench[1].UnderVoltage = true
 	book.Cautions = func(_ screening.Part, m screening.Moment) []screening.Caution {
@@ -120,6 +121,45 @@ func TestWalkGateKeepsHandsOffAChargedPart(t *testing.T) {
 		}
 		return nil
 	}
+	return book
+}
+
+func TestWalkARejectedPartIsNotLeftCharged(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(charging(), relative(0.001), toyPart(none, none, none))
+	_ = w.Record(exactly("remaining-voltage", quantity.Volt, 0))
+	answerLooks(w)
+	_ = w.Record(exactly("slow", quantity.Ampere, 1e-4))
+	_ = w.Record(exactly("quick", quantity.Volt, 0.1))
+	if !w.Stopped() {
+		t.Fatal("0.1 V does not reject")
+	}
+	if q := w.Next(); q.Ask != screening.AskGate {
+		t.Fatalf("after a test under voltage a rejected part is left with %+v", q)
+	}
+	_ = w.Record(exactly("remaining-voltage", quantity.Volt, 1))
+	if q := w.Next(); q.Ask != screening.AskNothing {
+		t.Errorf("once discharged it still asks %+v", q)
+	}
+}
+
+func TestWalkAPartStoppedByEyeIsNotPutUnderVoltage(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(charging(), relative(0.001), toyPart(none, none, none))
+	_ = w.Record(exactly("remaining-voltage", quantity.Volt, 0))
+	w.See("cracked", true)
+	w.See("burnt", false)
+	w.GoOn()
+	for q := w.Next(); q.Ask != screening.AskNothing; q = w.Next() {
+		if q.Field.Name == "slow" {
+			t.Fatal("a cracked part is asked for a test under voltage")
+		}
+		w.Skip(q)
+	}
+}
+
+func TestWalkGateKeepsHandsOffAChargedPart(t *testing.T) {
+	book := charging()
 	none := math.NaN()
 	w := screening.NewWalk(book, relative(0.001), toyPart(none, none, none))
 	if q := w.Next(); q.Ask != screening.AskGate || len(q.Cautions) != 1 {

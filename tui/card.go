@@ -10,7 +10,6 @@ import (
 	"goodbin/inventory"
 	"goodbin/screening"
 	"goodbin/screening/entry"
-	"goodbin/screening/quantity"
 )
 
 // cardData is what is shown of one part: its verdict with the reasons, and each limit with the reading on it.
@@ -338,11 +337,7 @@ func readingText(f *screening.Finding) string {
 		}
 		return ""
 	}
-	text := entry.Value(*e)
-	if e.U > 0 {
-		text += " ± " + quantity.Format(coverage*e.U, e.Unit, 2)
-	}
-	return text
+	return entry.Measured(*e)
 }
 
 func outcomeText(f *screening.Finding) string {

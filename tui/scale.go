@@ -5,11 +5,9 @@ import (
 	"strings"
 
 	"goodbin/screening"
+	"goodbin/screening/entry"
 	"goodbin/screening/quantity"
 )
-
-// coverage is how many standard uncertainties are drawn on either side of a reading: about 95 % of a normal distribution.
-const coverage = 2
 
 // axis is the stretch of values that a scale shows, with the cells it is drawn on.
 type axis struct {
@@ -96,7 +94,7 @@ func (t *theme) scale(l screening.Limit, r *screening.Reading, w int) string {
 // drawReading lays a reading and its spread over the cells of a scale.
 func (t *theme) drawReading(cells []string, a axis, r screening.Reading) {
 	last := len(cells) - 1
-	from, to := a.cell(r.Value-coverage*r.U), a.cell(r.Value+coverage*r.U)
+	from, to := a.cell(r.Value-entry.Coverage*r.U), a.cell(r.Value+entry.Coverage*r.U)
 	opened, closed := t.g.opened, t.g.closed
 	switch r.Sense {
 	case quantity.AtLeast:

@@ -153,7 +153,7 @@ func (a *app) printFindings(book *screening.Rulebook, j screening.Judgement) err
 	if len(shown) == 0 {
 		return nil
 	}
-	rows := [][]string{{"", "limit", "reading ± u", "margin", "grade", "set"}}
+	rows := [][]string{{"", "limit", "reading ± 2u", "margin", "grade", "set"}}
 	for _, f := range shown {
 		rows = append(rows, findingCells(book, f))
 	}
@@ -228,7 +228,7 @@ func findingCells(book *screening.Rulebook, f *screening.Finding) []string {
 	return []string{outcome, on + " " + screening.Allowed(*l), evidenceText(f), marginText(f.Margin), l.Grade.String(), string(l.Set)}
 }
 
-// evidenceText prints what was held against the limit, with its standard uncertainty.
+// evidenceText prints what was held against the limit, with its expanded uncertainty.
 func evidenceText(f *screening.Finding) string {
 	r := f.Evidence()
 	switch {
@@ -237,11 +237,7 @@ func evidenceText(f *screening.Finding) string {
 	case r == nil:
 		return "-"
 	}
-	text := entry.Value(*r)
-	if r.U > 0 && r.Sense == quantity.Exactly {
-		text += " ± " + quantity.Format(r.U, r.Unit, 2)
-	}
-	return text
+	return entry.Measured(*r)
 }
 
 func marginText(margin float64) string {

@@ -123,3 +123,19 @@ func Value(r screening.Reading) string {
 		return text
 	}
 }
+
+// Coverage is the coverage factor k of the uncertainties that people are shown: ±2 standard uncertainties, about 95 % (JCGM 100, 6.3.3).
+const Coverage = 2
+
+// Measured prints what a reading says with its expanded uncertainty: "61 ± 29 mΩ". One that only bounds prints as [Value].
+func Measured(r screening.Reading) string {
+	if r.Over || r.Sense != quantity.Exactly || !(r.U > 0) {
+		return Value(r)
+	}
+	v := quantity.Value{Number: r.Value, Unit: r.Unit, Step: r.Step}
+	if n := len(r.Repeats); n > 1 {
+		v.Step /= 10
+		return v.PlusMinus(Coverage*r.U) + " (mean of " + strconv.Itoa(n) + ")"
+	}
+	return v.PlusMinus(Coverage * r.U)
+}

@@ -137,3 +137,31 @@ func TestValuesMadeByTheProgramPrint(t *testing.T) {
 		}
 	}
 }
+
+func TestPlusMinusKeepsThePrefixOfTheValue(t *testing.T) {
+	for _, c := range []struct {
+		text string
+		unit quantity.Unit
+		half float64
+		want string
+	}{
+		{"61m", quantity.Ohm, 29.4e-3, "61 ± 29 mΩ"},
+		{"0.06", quantity.Ohm, 30e-3, "0.06 ± 0.030 Ω"},
+		{"2010u", quantity.Farad, 70e-6, "2010 ± 70 µF"},
+		{"4.71k", quantity.Ohm, 54.8, "4.71 ± 0.055 kΩ"},
+		{"180", quantity.One, 21, "180 ± 21"},
+		{"24C", quantity.Celsius, 3.46, "24 ± 3.5 °C"},
+		{"5%", quantity.Ratio, 0.004, "5 ± 0.40 %"},
+		{"2min", quantity.Second, 1, "2 min"},
+		{"<0.1uA", quantity.Ampere, 1e-8, "< 0.1 µA"},
+		{"61m", quantity.Ohm, 0, "61 mΩ"},
+	} {
+		v, err := quantity.Parse(c.text, c.unit)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := v.PlusMinus(c.half); got != c.want {
+			t.Errorf("%s ± %g prints %q; want %q", c.text, c.half, got, c.want)
+		}
+	}
+}

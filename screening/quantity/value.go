@@ -1,6 +1,9 @@
 package quantity
 
-import "math"
+import (
+	"math"
+	"strings"
+)
 
 // Value is one number as read.
 type Value struct {
@@ -41,6 +44,43 @@ func (v Value) String() string {
 		b = appendPlaced(b, d, p)
 	}
 	return string(appendUnit(b, p, v.Unit, &printedSigns))
+}
+
+// PlusMinus prints a value with a half-width beside it, both in the prefix of the value: "61 ± 29 mΩ". The half-width has two significant
+// digits. A value that only bounds, or a half-width that is not above zero, prints as [Value.String].
+func (v Value) PlusMinus(half float64) string {
+	text := v.String()
+	if v.Over || v.Sense != Exactly || !(half > 0) || math.IsInf(half, 0) {
+		return text
+	}
+	number, unit, _ := strings.Cut(text, " ")
+	prefix, ok := strings.CutSuffix(unit, v.Unit.Symbol())
+	if !ok {
+		return text // minutes
+	}
+	p := ratioExponent(v.Unit)
+	switch prefix {
+	case "p":
+		p = -12
+	case "n":
+		p = -9
+	case "µ":
+		p = -6
+	case "m":
+		p = -3
+	case "k":
+		p = 3
+	case "M":
+		p = 6
+	case "G":
+		p = 9
+	}
+	b := append(make([]byte, 0, bufferSize), number...)
+	b = appendPlaced(append(b, " ± "...), round(half, 2), p)
+	if unit != "" {
+		b = append(append(b, ' '), unit...)
+	}
+	return string(b)
 }
 
 // roundTo rounds to the decimal place 10^last, and to at least one significant digit.
