@@ -124,7 +124,7 @@ func openRegular(path string) (*os.File, error) {
 }
 
 // bulkGCPercent is how far the memory may grow between collections while a file is screened.
-const bulkGCPercent = 400
+const bulkGCPercent = 200
 
 // screeningRun is one screening of a file.
 type screeningRun struct {
