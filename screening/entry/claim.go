@@ -29,53 +29,26 @@ func (p *parser) rating(t *target, value string) (screening.Rating, error) {
 		}
 		return r, nil
 	}
-	low, high, ranged := strings.Cut(value, "..")
-	if !ranged {
-		n, err := p.number(f.Definition, value)
-		if err != nil {
-			return r, err
-		}
-		switch n.Sense {
-		case quantity.AtMost:
-			r.Low, r.High = math.Inf(-1), n.Number
-		case quantity.AtLeast:
-			r.Low, r.High = n.Number, math.Inf(1)
-		default:
-			r.Nominal, r.Low, r.High = n.Number, n.Number, n.Number
+	if strings.Contains(value, "..") {
+		var err error
+		if r.Low, r.High, err = quantity.ParseRange(value, f.Unit); err != nil {
+			return r, named(f.Definition, err)
 		}
 		return r, nil
 	}
-	var err error
-	if r.Low, err = p.bound(f.Definition, low, math.Inf(-1)); err != nil {
+	n, err := p.number(f.Definition, value)
+	if err != nil {
 		return r, err
 	}
-	if r.High, err = p.bound(f.Definition, high, math.Inf(1)); err != nil {
-		return r, err
-	}
-	switch {
-	case math.IsInf(r.Low, -1) && math.IsInf(r.High, 1):
-		return r, problem(string(f.Name), "%s has no bound", shown(value))
-	case r.Low > r.High:
-		return r, problem(string(f.Name), "%s: the low bound is above the high one", shown(value)).
-			hint("each bound carries its own prefix and unit: %s", f.Example)
+	switch n.Sense {
+	case quantity.AtMost:
+		r.Low, r.High = math.Inf(-1), n.Number
+	case quantity.AtLeast:
+		r.Low, r.High = n.Number, math.Inf(1)
+	default:
+		r.Nominal, r.Low, r.High = n.Number, n.Number, n.Number
 	}
 	return r, nil
-}
-
-// bound reads one end of a range; an empty one is open.
-func (p *parser) bound(d screening.Definition, text string, open float64) (float64, error) {
-	text = strings.TrimSpace(text)
-	if text == "" {
-		return open, nil
-	}
-	n, err := p.number(d, text)
-	if err != nil {
-		return 0, err
-	}
-	if n.Sense != quantity.Exactly {
-		return 0, problem(string(d.Name), "%s: a bound is a plain value", shown(text))
-	}
-	return n.Number, nil
 }
 
 // traitText turns what was typed for a trait into its canonical text. A trait with listed words and nothing else takes only these.
