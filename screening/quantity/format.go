@@ -17,13 +17,7 @@ const (
 // temperatures no prefix, ratios print in percent, whole minutes as minutes. NaN prints as "–", an infinity as "∞" or "-∞".
 func Format(x float64, unit Unit, digits int) string {
 	var buf [bufferSize]byte
-	return string(appendFormat(buf[:0], x, unit, digits, &printedSigns))
-}
-
-// FormatASCII is [Format] in ASCII: "u" for µ, "ohm" for Ω, "C" for °C, "inf" for ∞, "-" for NaN.
-func FormatASCII(x float64, unit Unit, digits int) string {
-	var buf [bufferSize]byte
-	return string(appendFormat(buf[:0], x, unit, digits, &asciiSigns))
+	return string(appendFormat(buf[:0], x, unit, digits))
 }
 
 // Short is [Format] with the shortest text that [Parse] reads back to 12 significant digits.
@@ -32,32 +26,21 @@ func Short(x float64, unit Unit) string { return Format(x, unit, 0) }
 // bufferSize holds any value that a bench sees, so that printing allocates the string only.
 const bufferSize = 48
 
-// signs are the characters outside digits and plain letters.
-type signs struct {
-	ascii                    bool
-	micro, unknown, infinity string
-}
-
-var (
-	printedSigns = signs{micro: "µ", unknown: "–", infinity: "∞"}
-	asciiSigns   = signs{ascii: true, micro: "u", unknown: "-", infinity: "inf"}
-)
-
-func appendFormat(b []byte, x float64, unit Unit, digits int, g *signs) []byte {
+func appendFormat(b []byte, x float64, unit Unit, digits int) []byte {
 	switch {
 	case math.IsNaN(x):
-		return append(b, g.unknown...)
+		return append(b, "–"...)
 	case math.IsInf(x, 1):
-		return append(b, g.infinity...)
+		return append(b, "∞"...)
 	case math.IsInf(x, -1):
-		return append(append(b, '-'), g.infinity...)
+		return append(b, "-∞"...)
 	}
 	if unit == Second && wholeMinutes(x) {
 		return append(appendPlaced(b, round(x/60, 0), 0), " min"...)
 	}
 	d := round(x, digits)
 	p := choosePrefix(&d, unit)
-	return appendUnit(appendPlaced(b, d, p), p, unit, g)
+	return appendUnit(appendPlaced(b, d, p), p, unit)
 }
 
 func wholeMinutes(x float64) bool { return math.Abs(x) >= 60 && math.Mod(x, 60) == 0 }
@@ -181,11 +164,8 @@ func appendSplit(b, digits []byte, whole int) []byte {
 	return append(b, digits[whole:]...)
 }
 
-func appendUnit(b []byte, p int, unit Unit, g *signs) []byte {
+func appendUnit(b []byte, p int, unit Unit) []byte {
 	symbol := unit.Symbol()
-	if g.ascii {
-		symbol = unit.ASCII()
-	}
 	if symbol == "" {
 		return b
 	}
@@ -193,7 +173,7 @@ func appendUnit(b []byte, p int, unit Unit, g *signs) []byte {
 	switch {
 	case p == ratioExponent(unit):
 	case p == -6:
-		b = append(b, g.micro...)
+		b = append(b, "µ"...)
 	default:
 		b = append(b, "pnum kMG"[(p+12)/3])
 	}

@@ -65,25 +65,6 @@ func TestFormat(t *testing.T) {
 	}
 }
 
-func TestFormatASCII(t *testing.T) {
-	for _, c := range []struct {
-		x    float64
-		unit quantity.Unit
-		want string
-	}{
-		{4.7e-3, quantity.Ohm, "4.7 mohm"},
-		{45e-6, quantity.Ampere, "45 uA"},
-		{24, quantity.Celsius, "24 C"},
-		{120, quantity.Second, "2 min"},
-		{math.NaN(), quantity.Volt, "-"},
-		{math.Inf(-1), quantity.Volt, "-inf"},
-	} {
-		if got := quantity.FormatASCII(c.x, c.unit, 2); got != c.want {
-			t.Errorf("FormatASCII(%g, %q) = %q; want %q", c.x, c.unit.Symbol(), got, c.want)
-		}
-	}
-}
-
 func TestValuePrintsTheDigitsThatWereTyped(t *testing.T) {
 	for _, c := range []struct {
 		text string

@@ -31,7 +31,7 @@ func (v Value) String() string {
 	}
 	plain := !(v.Step > 0) || math.IsInf(v.Step, 0) || v.Number-v.Number != 0
 	if plain || v.Unit == Second && wholeMinutes(v.Number) {
-		return string(appendFormat(b, v.Number, v.Unit, 0, &printedSigns))
+		return string(appendFormat(b, v.Number, v.Unit, 0))
 	}
 	last := round(v.Step, 0).exponent
 	d := roundTo(v.Number, last)
@@ -43,7 +43,7 @@ func (v Value) String() string {
 		p = honestPrefix(p, last, v.Unit)
 		b = appendPlaced(b, d, p)
 	}
-	return string(appendUnit(b, p, v.Unit, &printedSigns))
+	return string(appendUnit(b, p, v.Unit))
 }
 
 // PlusMinus prints a value with a half-width beside it, both in the prefix of the value: "61 ± 29 mΩ". The half-width has two significant
