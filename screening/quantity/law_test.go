@@ -24,11 +24,10 @@ func TestParseReadsBackWhatShortPrints(t *testing.T) {
 		if rapid.Bool().Draw(t, "negative") {
 			x = -x
 		}
-		for _, text := range []string{quantity.Short(x, unit)} {
-			v, err := quantity.Parse(text, unit)
-			if err != nil || math.Abs(v.Number-x) > 1e-12*math.Abs(x) {
-				t.Fatalf("%g prints %q, which reads %g, %v", x, text, v.Number, err)
-			}
+		text := quantity.Short(x, unit)
+		v, err := quantity.Parse(text, unit)
+		if err != nil || math.Abs(v.Number-x) > 1e-12*math.Abs(x) {
+			t.Fatalf("%g prints %q, which reads %g, %v", x, text, v.Number, err)
 		}
 	})
 }
