@@ -3,6 +3,7 @@ package bipolar
 import (
 	"fmt"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -139,7 +140,7 @@ func appendNote(notes []screening.Reason, text string) []screening.Reason {
 			return notes
 		}
 	}
-	return append(notes, note("", text))
+	return append(notes, book.Note("", "%s", text))
 }
 
 // adjustGain refuses a gain that is mostly leakage, and takes a low one away from the sheet's current for what it is: no evidence.

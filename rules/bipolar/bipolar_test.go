@@ -5,6 +5,7 @@ import (
 	"strings"
 	"testing"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -306,6 +307,24 @@ func verdictCases() []verdictCase {
 			verdict:  screening.Undecided, says: "gain reading is not valid",
 		},
 		{
+			name:     "leakage is 11 % of the collector current: refused too",
+			claim:    words("type=TIP31C"),
+			readings: []screening.Reading{read(VBE, 0.55, none), read(HFE, 60, at(ic, 1.8e-3, vce, 9.0)), read(ICEO, 0.2e-3, at(vce, 9.0))},
+			verdict:  screening.Undecided, says: "gain reading is not valid",
+		},
+		{
+			name:     "leakage is 9 % of the collector current: the gain stands, as far as it says anything",
+			claim:    words("type=TIP31C"),
+			readings: []screening.Reading{read(VBE, 0.55, none), read(HFE, 60, at(ic, 2.2e-3, vce, 9.0)), read(ICEO, 0.2e-3, at(vce, 9.0))},
+			verdict:  screening.Accept, says: "informative only",
+		},
+		{
+			name:     "below the whole type's range no group of it is offered",
+			claim:    words("type=S8050", "group=C"),
+			readings: []screening.Reading{read(VBE, 0.68, none), read(HFE, 97, at(ic, 50e-3, vce, 1.0)), atMost(read(ICEO, 0.1e-6, at(vce, 20.0)))},
+			verdict:  screening.Reject,
+		},
+		{
 			name:  "across the mains",
 			claim: words("type=2N3904"), readings: sound2N3904, look: []screening.Observation{{Check: "mains-or-cracked", Fault: true}},
 			verdict: screening.Barred,
@@ -337,13 +356,6 @@ func TestVerdicts(t *testing.T) {
 			}
 		})
 	}
-	// Every verdict that a transistor can have; there is no treatment for one.
-	for _, v := range screening.Verdicts() {
-		if v != screening.Treat && seen[v] == 0 {
-			t.Errorf("no case ends in %s", v)
-		}
-		if v == screening.Treat && seen[v] > 0 {
-			t.Errorf("a transistor was given the verdict treat")
-		}
-	}
+	// There is no treatment for a transistor.
+	booktest.EveryVerdict(t, seen, screening.Treat)
 }

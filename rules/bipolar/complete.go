@@ -6,6 +6,7 @@ import (
 	"slices"
 	"strings"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/types"
 	"goodbin/screening"
 )
@@ -25,19 +26,15 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 			return c, nil, err
 		}
 	case name != "":
-		notes = append(notes, note("", fmt.Sprintf("%s is in no table: it is judged on general limits only", name)))
+		notes = append(notes, book.Note("", "%s is in no table: it is judged on general limits only", name))
 	case c.Trait(screening.TraitMaterial) == "":
 		c = c.WithTrait(screening.TraitMaterial, silicon)
-		notes = append(notes, note("", "no material claimed: taken as silicon; say ge for germanium"))
+		notes = append(notes, book.Note("", "no material claimed: taken as silicon; say ge for germanium"))
 	}
 	if !known && c.Trait(screening.TraitGroup) != "" {
-		notes = append(notes, note(HFE.Name, "a gain group belongs to its type: without a known type it says nothing"))
+		notes = append(notes, book.Note(HFE.Name, "a gain group belongs to its type: without a known type it says nothing"))
 	}
 	return c, notes, nil
-}
-
-func note(of screening.Characteristic, text string) screening.Reason {
-	return screening.Reason{Code: screening.CodeNote, Text: text, Of: of}
 }
 
 // completeFrom adds one row of the type table to a claim. What the part itself claims stays; what an earlier completion added from the
@@ -129,17 +126,6 @@ func groupError(row *types.Row, group string) error {
 
 // isOwn reports whether a rating is the part's own rather than its type's.
 func isOwn(r *screening.Rating) bool { return r.Typed != "" || r.Source == (screening.Source{}) }
-
-func withoutRating(c screening.Claim, of screening.Characteristic) screening.Claim {
-	kept := make([]screening.Rating, 0, len(c.Ratings))
-	for _, r := range c.Ratings {
-		if r.Of != of {
-			kept = append(kept, r)
-		}
-	}
-	c.Ratings = kept
-	return c
-}
 
 // promise is a completed claim seen as the limits need it.
 type promise struct {

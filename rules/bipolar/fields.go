@@ -4,6 +4,7 @@ import (
 	"math"
 	"time"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -60,27 +61,23 @@ const (
 
 const polarityLabel, materialLabel = "polarity (npn or pnp)", "material (si or ge)"
 
-func trait(name, label string) screening.Definition {
-	return screening.Definition{Name: screening.Characteristic(name), Label: label}
-}
-
 // claims lists what is printed on a transistor or stands in its sheet.
 func claims() []screening.Field {
 	return []screening.Field{
 		{
-			Definition: trait(screening.TraitType, "type"), Trait: true, Example: "BC547B", AcceptText: acceptType,
+			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "BC547B", AcceptText: acceptType,
 			Help: "the type number as printed, with its gain group",
 		},
 		{
-			Definition: trait(screening.TraitGroup, "gain group"), Trait: true, Example: "group=B", AcceptText: types.GroupNamed,
+			Definition: book.Trait(screening.TraitGroup, "gain group"), Trait: true, Example: "group=B", AcceptText: types.GroupNamed,
 			Help: "the letter or number after the type; it belongs to that type",
 		},
 		{
-			Definition: trait(screening.TraitPolarity, polarityLabel), Trait: true, Required: true, Example: npn,
+			Definition: book.Trait(screening.TraitPolarity, polarityLabel), Trait: true, Required: true, Example: npn,
 			Help: "npn or pnp; a known type says it", Ask: "SAY whether it is npn or pnp: polarity=npn or polarity=pnp", Words: []screening.Word{{Word: "npn", Text: npn}, {Word: "pnp", Text: pnp}},
 		},
 		{
-			Definition: trait(screening.TraitMaterial, materialLabel), Trait: true, Required: true, Example: silicon,
+			Definition: book.Trait(screening.TraitMaterial, materialLabel), Trait: true, Required: true, Example: silicon,
 			Help: "si or ge; a known type says it, and a part without a type number is taken as silicon",
 			Ask:  "SAY whether it is silicon or germanium: material=si or material=ge",
 			Words: []screening.Word{
@@ -88,7 +85,7 @@ func claims() []screening.Field {
 			},
 		},
 		{
-			Definition: trait(screening.TraitTechnology, "technology"), Trait: true, Example: darlington,
+			Definition: book.Trait(screening.TraitTechnology, "technology"), Trait: true, Example: darlington,
 			Help: "darlington for two transistors in one case", Words: []screening.Word{{Word: darlington, Text: darlington}},
 		},
 		{Definition: HFE, Example: "rated:hfe@ic=2mA,vce=5V=200..450", Help: "the gain it claims, at the current of its sheet"},
@@ -99,9 +96,9 @@ func claims() []screening.Field {
 		{Definition: screening.Ptot, Example: "rated:ptot=500mW", Help: "the power it claims to dissipate"},
 		{Definition: FT, Example: "rated:ft=150MHz", Help: "the frequency at which its gain has fallen to 1"},
 		{Definition: ICBO, Example: "rated:icbo@30V=..15nA", Help: "the collector-base leakage its sheet allows"},
-		{Definition: trait(screening.TraitCase, "case"), Trait: true, Example: "case=TO-92", Help: "the outline"},
-		{Definition: trait(screening.TraitPinout, "pinout"), Trait: true, Example: "pinout=C-B-E", Help: "the leads in order; check with a meter"},
-		{Definition: trait(screening.TraitDated, "maker's date"), Trait: true, Example: "dated=1974", Help: "year or decade of making"},
+		book.CaseField("case=TO-92"),
+		{Definition: book.Trait(screening.TraitPinout, "pinout"), Trait: true, Example: "pinout=C-B-E", Help: "the leads in order; check with a meter"},
+		book.DatedField(),
 	}
 }
 

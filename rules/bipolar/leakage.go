@@ -3,6 +3,7 @@ package bipolar
 import (
 	"fmt"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -64,7 +65,7 @@ func (p *promise) openBaseGermanium(all []screening.Limit) []screening.Limit {
 	l := reject
 	l.Grade = screening.AnyGrade
 	l.High = ICEOFrom(icbo.High, gain.Low)
-	l.Source = weakened(sourceOf(&icbo))
+	l.Source = weakened(book.SourceOf(&icbo))
 	l.Formula = func() string {
 		return fmt.Sprintf("(1 + %s)·%s = %s", quantity.Format(gain.Low, quantity.One, 0), quantity.Format(icbo.High, quantity.Ampere, 0),
 			quantity.Format(l.High, quantity.Ampere, 3))

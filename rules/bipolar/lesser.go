@@ -4,6 +4,7 @@ import (
 	"math"
 	"slices"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -22,7 +23,8 @@ func lesser(part screening.Part, findings []screening.Finding) []screening.Lesse
 	x := failed.Evidence().Value
 	var claims []screening.Lesser
 	group, grouped := p.claimedGroup()
-	plain := withoutRating(part.Claim.WithTrait(screening.TraitGroup, ""), HFE.Name)
+	plain := part.Claim.WithTrait(screening.TraitGroup, "")
+	plain.Ratings = book.Without(plain.Ratings, HFE.Name)
 	promised, hasType := p.row.Rating(HFE.Name)
 	for _, g := range p.row.Groups {
 		if g.Name == group.Name || x < g.Gain.Low || x > g.Gain.High || hasType && x < promised.Low {

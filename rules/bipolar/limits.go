@@ -55,35 +55,27 @@ func limit(on *screening.Definition, criterion screening.Criterion, name string)
 func limitOf(on *screening.Definition, criterion screening.Criterion, r *screening.Rating) screening.Limit {
 	return screening.Limit{
 		On: on.Name, Unit: on.Unit, Criterion: criterion, At: r.At, Low: r.Low, High: r.High,
-		Set: screening.GeneralSet, InUse: true, Source: sourceOf(r),
+		Set: screening.GeneralSet, InUse: true, Source: book.SourceOf(r),
 	}
-}
-
-// sourceOf names the source of a rating: the table's, or the part's own marking.
-func sourceOf(r *screening.Rating) screening.Source {
-	if r.Source == (screening.Source{}) {
-		return screening.Source{Document: "claimed by the part", Status: screening.House}
-	}
-	return r.Source
 }
 
 // mustBeClaimed makes a criterion that only a claim answers.
 func mustBeClaimed(of *screening.Definition, criterion screening.Criterion, grade screening.Grade, why string) screening.Limit {
 	return screening.Limit{
 		On: of.Name, Unit: of.Unit, Criterion: criterion, Low: -inf, High: inf, Evidence: screening.ByRating, Grade: grade,
-		Set: screening.GeneralSet, InUse: true, Source: screening.Source{Document: why, Status: screening.House}, Note: why,
+		Set: screening.GeneralSet, InUse: true, Source: screening.Source{Document: "house rule", Status: screening.House}, Note: why,
 	}
 }
 
-// someLimits is about how many limits a transistor has.
-const someLimits = 20
+// fewestLimits is how many limits most transistors have; each further gain of their sheet adds two.
+const fewestLimits = 10
 
 // limits lists what a transistor of this claim must meet.
 func limits(c screening.Claim) ([]screening.Limit, error) {
 	p := promiseOf(c)
-	all := p.polarityLimits(make([]screening.Limit, 0, someLimits))
+	all := p.polarityLimits(make([]screening.Limit, 0, fewestLimits+2*len(p.row.Points)))
 	if p.material == "" {
-		material := trait(screening.TraitMaterial, materialLabel)
+		material := book.Trait(screening.TraitMaterial, materialLabel)
 		return append(all, mustBeClaimed(&material, CriterionMaterial, screening.AnyGrade,
 			"every limit of a transistor depends on what it is made of, and a type number that is in no table does not say")), nil
 	}
@@ -96,7 +88,7 @@ func limits(c screening.Claim) ([]screening.Limit, error) {
 // polarityLimits ask that the part conducts or amplifies the way round that its polarity says.
 func (p *promise) polarityLimits(all []screening.Limit) []screening.Limit {
 	if p.polarity == "" {
-		polarity := trait(screening.TraitPolarity, polarityLabel)
+		polarity := book.Trait(screening.TraitPolarity, polarityLabel)
 		return append(all, mustBeClaimed(&polarity, CriterionPolarity, screening.AnyGrade,
 			"the readings prove a polarity only where one is claimed"))
 	}

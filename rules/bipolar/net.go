@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -38,7 +39,7 @@ func derive(part screening.Part) ([]screening.Reading, []screening.Reason) {
 		case reason == "":
 			derived = append(derived, net)
 		case germanium:
-			why = append(why, note(HFENet.Name, "no net gain: "+reason))
+			why = append(why, book.Note(HFENet.Name, "no net gain: %s", reason))
 		}
 	}
 	return derived, why

@@ -138,9 +138,12 @@ func TestNetGainUncertainty(t *testing.T) {
 	}{
 		{"75 µA of 1 mA", gain(1e-3), leak, true, ""},
 		{"75 µA of 100 µA: ±20 % is passed", gain(100e-6), read(ICEO, 75e-6, at(vce, 9.0, warm, 20.0)), true, ""},
+		{"88 µA of 100 µA: ±22 % is too much", gain(100e-6), read(ICEO, 88e-6, at(vce, 9.0, warm, 20.0)), false, "more than 20 %"},
 		{"85 µA of 90 µA: the difference drowns", gain(90e-6), read(ICEO, 85e-6, at(vce, 9.0, warm, 20.0)), false, "more than 20 %"},
 		{"all of it is leakage", gain(70e-6), leak, false, "the base controls nothing"},
 		{"the temperatures differ", gain(1e-3), read(ICEO, 75e-6, at(vce, 9.0, warm, 27.0)), false, "same temperature and the same VCE or more"},
+		{"they differ by 3 K", gain(1e-3), read(ICEO, 75e-6, at(vce, 9.0, warm, 23.0)), false, "same temperature and the same VCE or more"},
+		{"they differ by 2 K", gain(1e-3), read(ICEO, 75e-6, at(vce, 9.0, warm, 22.0)), true, ""},
 		{"the leakage was read at a lower voltage", gain(1e-3), read(ICEO, 75e-6, at(vce, 4.5, warm, 20.0)), false, "same VCE or more"},
 		{"at a higher voltage it bounds", gain(1e-3), read(ICEO, 75e-6, at(vce, 18.0, warm, 20.0)), true, ""},
 		{"bounded too loosely", gain(100e-6), read(ICEO, 75e-6, at(vce, 18.0, warm, 20.0)), false, "more than 20 %"},

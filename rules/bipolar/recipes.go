@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -44,7 +45,7 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 		return []screening.Recipe{{
 			Title:  "the part's temperature",
 			Lines:  []string{"let the part lie for an hour where you measure, away from lamp, sun and soldering iron", "read a room thermometer beside it"},
-			Source: house("bench practice"),
+			Source: book.Practice,
 		}}
 	}
 	return nil
@@ -71,7 +72,7 @@ func vbeRecipe(p *promise) screening.Recipe {
 				leadAt(base, "plus"), leadAt(emitter, "minus")),
 			"read the volts; OL both ways round is an open junction, near 0 V both ways a short",
 		},
-		Source: house("bench practice"),
+		Source: book.Practice,
 	}
 }
 
@@ -183,7 +184,7 @@ func leakageRecipe(p *promise, l screening.Limit) screening.Recipe {
 			"wait until it is steady; keep light, breath and fingers away",
 		},
 		Values: map[string]float64{"supply": v, "series-resistance": r, "resistor-power": v * v / r, "limit-voltage": l.High * r},
-		Source: house("bench practice"),
+		Source: book.Practice,
 	}
 }
 
@@ -202,7 +203,7 @@ func collectorRecipe(p *promise, l screening.Limit) screening.Recipe {
 				quantity.Format(l.High, quantity.Ampere, 3), volts(l.High*r)),
 		},
 		Values: map[string]float64{"supply": v, "series-resistance": r, "resistor-power": v * v / r, "limit-voltage": l.High * r},
-		Source: house("bench practice"),
+		Source: book.Practice,
 	}
 }
 

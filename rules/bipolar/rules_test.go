@@ -1,60 +1,20 @@
 package bipolar
 
 import (
-	"encoding/csv"
 	"math"
-	"os"
 	"slices"
-	"strconv"
 	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/rules/types"
 	"goodbin/screening"
 )
 
-// reference reads the table of transistors as it was collected.
-func reference(t *testing.T) []map[string]string {
-	t.Helper()
-	text, err := os.ReadFile("../types/testdata/types-ref.csv")
-	if err != nil {
-		t.Fatal(err)
-	}
-	lines, err := csv.NewReader(strings.NewReader(string(text))).ReadAll()
-	if err != nil {
-		t.Fatal(err)
-	}
-	var rows []map[string]string
-	for _, line := range lines[1:] {
-		row := map[string]string{}
-		for i, cell := range line {
-			row[lines[0][i]] = cell
-		}
-		rows = append(rows, row)
-	}
-	return rows
-}
-
-func cell(t *testing.T, text string, empty float64) float64 {
-	t.Helper()
-	if text == "" {
-		return empty
-	}
-	x, err := strconv.ParseFloat(text, 64)
-	if err != nil {
-		t.Fatal(err)
-	}
-	return x
-}
-
 func TestEveryTypesLimitsEqualItsRow(t *testing.T) {
-	rows := reference(t)
-	if len(rows) != 99 {
-		t.Fatalf("%d rows, want 99", len(rows))
-	}
-	for _, ref := range rows {
+	for _, ref := range booktest.Reference(t, "../types/testdata/types-ref.csv", 99) {
 		name := ref["type"]
 		claim, _, err := complete(words("type=" + name))
 		if err != nil {
@@ -75,9 +35,9 @@ func TestEveryTypesLimitsEqualItsRow(t *testing.T) {
 			Low, High float64
 			IC        float64
 		}
-		wantGain := bounds{on, cell(t, ref["hfe_min"], 0), cell(t, ref["hfe_max"], inf), cell(t, ref["hfe_ic_ma"], 0) * 1e-3}
-		wantVBR := bounds{On: "vbr", Low: cell(t, ref["vceo_v"], 0), High: inf}
-		wantICBO := bounds{On: "icbo", Low: -inf, High: cell(t, ref["icbo_max_a"], 0)}
+		wantGain := bounds{on, booktest.Number(t, ref["hfe_min"], 0), booktest.Number(t, ref["hfe_max"], inf), booktest.Number(t, ref["hfe_ic_ma"], 0) * 1e-3}
+		wantVBR := bounds{On: "vbr", Low: booktest.Number(t, ref["vceo_v"], 0), High: inf}
+		wantICBO := bounds{On: "icbo", Low: -inf, High: booktest.Number(t, ref["icbo_max_a"], 0)}
 		var spec, serviceable, breakdown, cutOff bool
 		for _, l := range all {
 			collector, _ := l.At.Get(screening.IC)
@@ -95,8 +55,7 @@ func TestEveryTypesLimitsEqualItsRow(t *testing.T) {
 
 // Under simple acceptance the bounds belong to the range (BC547 group B: 200 to 450 at 2 mA, 5 V).
 func TestGainBoundaries(t *testing.T) {
-	policy := screening.DefaultPolicy()
-	policy.Rule, policy.Meters = screening.SimpleAcceptance, map[string]screening.Meter{"": screening.ExactMeter()}
+	policy := booktest.Exactly()
 	for gain, want := range map[float64]screening.Verdict{
 		199.9: screening.Regrade, 200: screening.Accept, 450: screening.Accept, 450.1: screening.Regrade, 109.9: screening.Reject,
 	} {
@@ -158,19 +117,7 @@ func TestSoundPartsAreNeverRejected(t *testing.T) {
 }
 
 func BenchmarkJudge(b *testing.B) {
-	book, policy := Book(), screening.DefaultPolicy()
-	part := screening.Part{Claim: words("type=BC547B"), Readings: []screening.Reading{
-		read(VBE, 0.65, none), read(HFE, 290, at(ic, 2e-3, vce, 5.0)), atMost(read(ICEO, 0.1e-6, at(vce, 20.0))),
-	}}
-	var findings int
-	for b.Loop() {
-		j, err := screening.Judge(book, part, policy)
-		if err != nil {
-			b.Fatal(err)
-		}
-		findings = len(j.Findings)
-	}
-	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(findings), "ns/finding")
+	booktest.Benchmark(b, Book(), "BC547B vbe=0.65 hfe@ic=2mA,vce=5V=290 iceo@20V=..0.1uA")
 }
 
 // A gain limit that asks the same at both grades is shown once, unless the reading is sure enough for one of them only.

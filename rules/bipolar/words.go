@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -65,8 +66,7 @@ func gainOnlyInformative(findings []screening.Finding) bool {
 
 // From these values on a caution is given: the voltage at which a supply can hurt, and the power at which a small part warms in seconds.
 const (
-	touchVoltage = 60.0 // V DC, as for stored charge (second-hand)
-	warmPower    = 0.1  // W (house)
+	warmPower = 0.1 // W (house)
 )
 
 // cautions warn at the measuring step: what spoils the part, what spoils the reading, what can hurt.
@@ -82,15 +82,15 @@ func cautions(part screening.Part, when screening.Moment) []screening.Caution {
 			Values: map[string]float64{"doubling": junction.Doubling}, Source: junction.DoublingSource,
 		})
 	}
-	if p.vceo > touchVoltage {
+	if p.vceo > book.TouchVoltage {
 		all = append(all, screening.Caution{
 			Code: "test-voltage", Level: screening.Danger,
 			Text: fmt.Sprintf("a breakdown test of this type goes to %s: above %s a supply can kill. Limit it to 1 mA (%s in series), one hand, "+
 				"nobody alone, and do as your local code and licensed practice say; a test at %s or less is enough for a first verdict",
-				quantity.Format(p.vceo, quantity.Volt, 0), quantity.Format(touchVoltage, quantity.Volt, 0),
+				quantity.Format(p.vceo, quantity.Volt, 0), quantity.Format(book.TouchVoltage, quantity.Volt, 0),
 				quantity.Format(p.vceo/1e-3, quantity.Ohm, 2), quantity.Format(20, quantity.Volt, 0)),
 			Values: map[string]float64{"voltage": p.vceo, "series-resistance": p.vceo / 1e-3},
-			Source: screening.Source{Document: "touch limit of 60 V DC", Status: screening.SecondHand},
+			Source: book.TouchSource,
 		})
 	}
 	if c, ok := heat(p); ok {

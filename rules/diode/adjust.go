@@ -5,6 +5,7 @@ import (
 	"math"
 	"slices"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -27,11 +28,18 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	say := func(of screening.Characteristic, text string) {
 		if text != "" && !said[text] {
 			said[text] = true
-			reasons = append(reasons, note(of, "%s", text))
+			reasons = append(reasons, book.Note(of, "%s", text))
 		}
 	}
 	for i := range findings {
 		f := &findings[i]
+		if turnedRound(part, f.Limit.Section) {
+			f.Outcome, f.Unconfirmed, f.Why = screening.Missing, false, turnedWords
+			if f.Limit.Criterion == breakdownCriterion {
+				f.Wants = screening.Gap{}
+			}
+			continue
+		}
 		if f.Outcome == screening.Missing {
 			wordGap(f)
 		} else if f.Limit.Criterion == blockingCriterion && f.Limit.On == screening.IR.Name {
@@ -54,6 +62,17 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		}
 	}
 	return findings, reasons
+}
+
+// turnedWords says what a diode measured the wrong way round looks like.
+const turnedWords = "open forward and a junction's drop in reverse: the probes were the wrong way round; type each reading as the other"
+
+// turnedRound reports whether a section's readings are those of a sound diode whose probes were the wrong way round: that is no fault of the
+// diode, and not evidence of anything else either.
+func turnedRound(part screening.Part, section string) bool {
+	forward, ok1 := part.Reading(screening.VF.Name, section)
+	reverse, ok2 := part.Reading(screening.VBR.Name, section)
+	return ok1 && ok2 && forward.Over && reverse.Sense == quantity.Exactly && reverse.Value >= shorted && reverse.Value <= severalJunctions
 }
 
 // wordGap says of a limit without evidence what its reading lacks, and leaves it to untested to say how far blocking was proved.

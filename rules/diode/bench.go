@@ -4,44 +4,21 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
 
 const (
 	reverseCurrent = 1e-3 // A, to which a reverse test is limited even into a short (house)
-	touchVoltage   = 60.0 // V DC, from which a supply can hurt (second-hand)
 	battery        = 9.0  // V
 	longTest       = 5.0  // W, above which a forward test is a matter of a second or of a heat sink (house)
 )
-
-var practice = screening.Source{Document: "bench practice", Status: screening.CommonPractice}
 
 // reverseTest computes the series resistor that holds a supply to 1 mA into a short: R = V/1 mA, P = V²/R.
 func reverseTest(volts float64) (ohms, watts float64) {
 	ohms = volts / reverseCurrent
 	return ohms, volts * reverseCurrent
-}
-
-// about prints a computed value in two figures, without empty ones.
-func about(x float64, unit quantity.Unit) string {
-	if x <= 0 {
-		return quantity.Format(x, unit, 0)
-	}
-	place := math.Pow10(int(math.Floor(math.Log10(x))) - 1)
-	figures := max(1, significant(math.Round(x/place)))
-	if unit == quantity.Watt {
-		return quantity.Format(x, quantity.Watt, figures)
-	}
-	return quantity.Format(x, unit, figures)
-}
-
-// significant counts the figures of a whole number below 100 without its trailing zero.
-func significant(n float64) int {
-	if math.Mod(n, 10) == 0 {
-		return 1
-	}
-	return 2
 }
 
 // cautions warns before a reverse test: the current limit, and from 60 V the supply itself.
@@ -55,24 +32,24 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	all := []screening.Caution{{
 		Code: "reverse-test", Level: screening.Notice,
 		Text: fmt.Sprintf("limit every reverse test to %s: %s in series at %s (%s into a short). Without it one slip of the supply destroys a good diode",
-			quantity.Format(reverseCurrent, quantity.Ampere, 0), about(ohms, quantity.Ohm), quantity.Format(supply, quantity.Volt, 0),
-			about(watts, quantity.Watt)),
-		Values: map[string]float64{"supply": supply, "series-resistance": ohms, "resistor-power": watts}, Source: practice,
+			quantity.Format(reverseCurrent, quantity.Ampere, 0), book.About(ohms, quantity.Ohm), quantity.Format(supply, quantity.Volt, 0),
+			book.About(watts, quantity.Watt)),
+		Values: map[string]float64{"supply": supply, "series-resistance": ohms, "resistor-power": watts}, Source: book.Practice,
 	}}
-	if known && rated > touchVoltage {
+	if known && rated > book.TouchVoltage {
 		ohms, watts := reverseTest(rated)
 		all = append(all, screening.Caution{
 			Code: "test-voltage", Level: screening.Danger,
 			Text: fmt.Sprintf("proving %s needs a supply that can kill. It is not needed for a first verdict: what was proved is said with it. "+
 				"If you must: %s in series, %s into a short, rated for the voltage; a cover over the part (it may burst), one hand, nobody alone, "+
 				"volts measured down to %.0f V before you touch anything; above %.0f V do as your local code and licensed practice say",
-				quantity.Format(rated, quantity.Volt, 0), about(ohms, quantity.Ohm), about(watts, quantity.Watt),
-				float64(screening.SafeVoltage), touchVoltage),
+				quantity.Format(rated, quantity.Volt, 0), book.About(ohms, quantity.Ohm), book.About(watts, quantity.Watt),
+				float64(screening.SafeVoltage), book.TouchVoltage),
 			Values: map[string]float64{
-				"supply": rated, "series-resistance": ohms, "resistor-power": watts, "touch-voltage": touchVoltage,
+				"supply": rated, "series-resistance": ohms, "resistor-power": watts, "touch-voltage": book.TouchVoltage,
 				"safe-voltage": screening.SafeVoltage,
 			},
-			Source: screening.Source{Document: "60 V as the touch limit of equipment safety standards", Status: screening.SecondHand},
+			Source: book.TouchSource,
 		})
 	}
 	return all
@@ -106,18 +83,18 @@ func forwardRecipe(c screening.Claim, l screening.Limit) screening.Recipe {
 	watts := current * (battery - drop)
 	lines := []string{
 		"diode test, red probe on the anode (the end without the band): read volts",
-		"without a diode test: " + quantity.Format(battery, quantity.Volt, 0) + " through " + about(ohms, quantity.Ohm) + " (" +
-			about(watts, quantity.Watt) + " in it) gives " + quantity.Format(current, quantity.Ampere, 0) + "; read the volts across the diode",
+		"without a diode test: " + quantity.Format(battery, quantity.Volt, 0) + " through " + book.About(ohms, quantity.Ohm) + " (" +
+			book.About(watts, quantity.Watt) + " in it) gives " + quantity.Format(current, quantity.Ampere, 0) + "; read the volts across the diode",
 	}
 	if current > smallCurrent {
 		lines[0] = "a diode test sends too little current for this one"
 	}
 	if watts > longTest {
 		lines = append(lines, "the resistor gets hot: a current-limited supply does it better; a second is enough, the diode takes "+
-			about(current*l.High, quantity.Watt))
+			book.About(current*l.High, quantity.Watt))
 	}
 	return screening.Recipe{
-		Title: "Forward voltage", Lines: lines, Source: practice,
+		Title: "Forward voltage", Lines: lines, Source: book.Practice,
 		Values: map[string]float64{"supply": battery, "series-resistance": ohms, "resistor-power": watts, "test-current": current},
 	}
 }
@@ -126,7 +103,7 @@ func turnedProbes() screening.Recipe {
 	return screening.Recipe{
 		Title:  "Blocking, with the diode test",
 		Lines:  []string{"turn the probes round: a sound diode shows OL; type OL. Any number of volts is leakage or a breakdown: type that"},
-		Values: map[string]float64{"supply": screening.VBR.Over.Value}, Source: practice,
+		Values: map[string]float64{"supply": screening.VBR.Over.Value}, Source: book.Practice,
 	}
 }
 
@@ -135,17 +112,17 @@ func reverseRecipe(volts float64) screening.Recipe {
 	ohms, watts := reverseTest(volts)
 	text := quantity.Format(volts, quantity.Volt, 0)
 	lines := []string{
-		"supply " + text + ", " + about(ohms, quantity.Ohm) + " (" + about(watts, quantity.Watt) +
+		"supply " + text + ", " + book.About(ohms, quantity.Ohm) + " (" + book.About(watts, quantity.Watt) +
 			" into a short) in series, cathode (the band) to plus",
-		"read the volts across the resistor: current = volts ÷ " + about(ohms, quantity.Ohm) + "; near 0 V it blocks: type vbr=>" +
+		"read the volts across the resistor: current = volts ÷ " + book.About(ohms, quantity.Ohm) + "; near 0 V it blocks: type vbr=>" +
 			volt(volts) + ", or the current as ir@" + volt(volts) + "=…",
 		"if the resistor takes volts, the rest stands across the diode: that is its breakdown, type it as vbr",
 	}
-	if volts > touchVoltage {
+	if volts > book.TouchVoltage {
 		lines = append([]string{"only with the caution for this voltage; a lower one proves less and is said so"}, lines...)
 	}
 	return screening.Recipe{
-		Title: "Blocking at " + text, Lines: lines, Source: practice,
+		Title: "Blocking at " + text, Lines: lines, Source: book.Practice,
 		Values: map[string]float64{"supply": volts, "series-resistance": ohms, "resistor-power": watts, "test-current": reverseCurrent},
 	}
 }

@@ -6,6 +6,7 @@ import (
 	"slices"
 	"strings"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -31,7 +32,7 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	if name != "" {
 		row, ok := types.Lookup(Kind, name)
 		if !ok {
-			notes = append(notes, note(screening.VF.Name, "type %s is not in the table: claim what its sheet says, such as rated:vrrm=400V", name))
+			notes = append(notes, book.Note(screening.VF.Name, "type %s is not in the table: claim what its sheet says, such as rated:vrrm=400V", name))
 		} else {
 			if err := contradicts(c, row); err != nil {
 				return c, nil, err
@@ -43,7 +44,7 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 		_, hasCurrent := r.At.Get(screening.Current)
 		_, hasVoltage := r.At.Get(screening.Voltage)
 		if r.Of == screening.VF.Name && !hasCurrent || r.Of == screening.IR.Name && !hasVoltage {
-			notes = append(notes, note(r.Of, "rated:%s=%s is not used: it does not say at which current or voltage it holds", r.Of, r))
+			notes = append(notes, book.Note(r.Of, "rated:%s=%s is not used: it does not say at which current or voltage it holds", r.Of, r))
 		}
 	}
 	return c, notes, nil
@@ -55,10 +56,6 @@ func technologyNames() string {
 		names = append(names, t.name)
 	}
 	return strings.Join(names, ", ")
-}
-
-func note(of screening.Characteristic, format string, args ...any) screening.Reason {
-	return screening.Reason{Code: screening.CodeNote, Of: of, Text: fmt.Sprintf(format, args...)}
 }
 
 // contradicts says where a claim and the table's row for its type cannot both be true.
@@ -137,15 +134,7 @@ func sheet(c screening.Claim, of screening.Characteristic, at screening.Variable
 func leakMost(c screening.Claim) most {
 	m := load().leakage[technologyOf(c).material]
 	if r, _, ok := sheet(c, screening.IR.Name, screening.Voltage); ok && r.High > m.value {
-		return most{r.High, claimed(r)}
+		return most{r.High, book.SourceOf(&r)}
 	}
 	return m
-}
-
-// claimed is the source of a rating: the table's, or the part's own claim.
-func claimed(r screening.Rating) screening.Source {
-	if r.Source.Status != screening.NoStatus {
-		return r.Source
-	}
-	return screening.Source{Document: "the rating claimed for the part", Status: screening.Published}
 }

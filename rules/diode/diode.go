@@ -17,8 +17,8 @@ import (
 // Kind is the kind's name.
 const Kind = types.Diode
 
-// Version names the state of this rulebook's tables.
-const Version = "diode 2"
+// edition goes up when a rule in code changes; a change of the tables changes the version by itself.
+const edition = "3"
 
 // Ratings of a diode.
 var (
@@ -49,28 +49,24 @@ const testerCurrent = 1e-3
 // Book returns the rulebook.
 func Book() *screening.Rulebook {
 	return &screening.Rulebook{
-		Kind: Kind, Label: "diode", Tables: Version + ", " + types.Version(),
+		Kind: Kind, Label: "diode", Tables: book.Version(Kind, edition, expectedCSV, soundCSV, leakageCSV, variantsCSV) + ", " + types.Version(),
 		Claims: claims(), Bench: bench(), Look: []screening.Check{book.MainsOrCracked()},
 		Complete: complete, Limits: limits, Convert: convert, Adjust: adjust, Untested: untested, Cautions: cautions, Recipes: recipes,
 	}
 }
 
-func trait(name, label string) screening.Definition {
-	return screening.Definition{Name: screening.Characteristic(name), Label: label}
-}
-
 func claims() []screening.Field {
 	return []screening.Field{
 		{
-			Definition: trait(screening.TraitType, "type"), Trait: true, Example: "1N4148", AcceptText: acceptType,
+			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "1N4148", AcceptText: acceptType,
 			Help: "the type number as printed; a known one says all the rest",
 		},
 		{
-			Definition: trait(screening.TraitTechnology, "technology"), Trait: true, Example: "rectifier", Words: technologyWords(),
+			Definition: book.Trait(screening.TraitTechnology, "technology"), Trait: true, Example: "rectifier", Words: technologyWords(),
 			Help: "rectifier, signal, fast, ultrafast, schottky, point-contact, gold-bonded; unknown where you cannot tell",
 		},
 		{
-			Definition: trait(screening.TraitMaterial, "material (si or ge)"), Trait: true, Example: "si", Help: "si or ge",
+			Definition: book.Trait(screening.TraitMaterial, "material (si or ge)"), Trait: true, Example: "si", Help: "si or ge",
 			Words: []screening.Word{
 				{Word: "si", Text: "si"}, {Word: silicon, Text: "si"}, {Word: "ge", Text: "ge"}, {Word: germanium, Text: "ge"},
 			},
@@ -84,7 +80,7 @@ func claims() []screening.Field {
 			Help: "the forward current it claims to carry; not tested",
 		},
 		{
-			Definition: trait(TraitDual, "two diodes in one case"), Trait: true, Example: "dual",
+			Definition: book.Trait(TraitDual, "two diodes in one case"), Trait: true, Example: "dual",
 			Help: "dual, common-cathode, common-anode or series; measure both: vf/1=… vf/2=…",
 			Words: []screening.Word{
 				{Word: "dual", Text: "dual"},
@@ -97,8 +93,8 @@ func claims() []screening.Field {
 		{Definition: screening.VF, Example: "rated:vf@1A=..1.1V", Help: "the highest forward voltage its sheet allows, at a current"},
 		{Definition: screening.IR, Example: "rated:ir@400V=..5uA", Help: "the highest reverse current its sheet allows, at a voltage"},
 		{Definition: TRR, Example: "rated:trr=50ns", Help: "the recovery time of its sheet; not tested"},
-		{Definition: trait(screening.TraitCase, "case"), Trait: true, Example: "case=DO-41", Help: "the outline"},
-		{Definition: trait(screening.TraitDated, "maker's date"), Trait: true, Example: "dated=1974", Help: "year or decade of making"},
+		book.CaseField("case=DO-41"),
+		book.DatedField(),
 	}
 }
 

@@ -1,16 +1,14 @@
 package diode
 
 import (
-	"encoding/csv"
 	"math"
-	"os"
 	"slices"
-	"strconv"
 	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/entry"
@@ -20,36 +18,7 @@ import (
 // judge judges a part from the words that a person types.
 func judge(t testing.TB, words string, policy screening.Policy) screening.Judgement {
 	t.Helper()
-	p, err := entry.Words(Book(), strings.Fields(words))
-	if err != nil {
-		t.Fatalf("%s: %v", words, err)
-	}
-	j, err := screening.Judge(Book(), screening.Part{Claim: p.Claim, Look: p.Look, Readings: p.Readings}, policy)
-	if err != nil {
-		t.Fatalf("%s: %v", words, err)
-	}
-	return j
-}
-
-func exactly() screening.Policy {
-	p := screening.DefaultPolicy()
-	p.Rule = screening.SimpleAcceptance
-	p.Meters = map[string]screening.Meter{"": screening.ExactMeter()}
-	return p
-}
-
-func texts(j screening.Judgement) string {
-	var b strings.Builder
-	for _, r := range j.Reasons {
-		b.WriteString(r.Code + ": " + r.Text + "\n")
-	}
-	for _, s := range j.Next {
-		b.WriteString(s.Code + ": " + s.Text + "\n")
-	}
-	for _, u := range j.Untested {
-		b.WriteString("untested: " + u + "\n")
-	}
-	return b.String()
+	return booktest.Judge(t, Book(), words, policy)
 }
 
 var verdictCases = []struct {
@@ -73,12 +42,17 @@ var verdictCases = []struct {
 	{"no claim at all", "vf=0.61 vbr=>30V", screening.Accept, screening.Serviceable, "no rating known"},
 	{"unmarked that drops 0.25 V", "vf=0.25 vbr=OL", screening.Accept, screening.Serviceable, "cannot tell which"},
 	{"rated by the words on it", "rectifier 1000V 1A vf=0.55 vbr=>30V", screening.Accept, screening.WithinSpec, "(rated 1000 V)"},
+	{"unmarked silicon that the meter cannot tell from 10 µA", "vf=0.61 ir@20V=10.1uA temperature=25C", screening.Accept, screening.Serviceable, ""},
+	{"the sheet's drop even at twice its current", "1N4007 vf@2A=1.05 vbr=OL", screening.Accept, screening.WithinSpec, ""},
 	{"a signal diode of an older sheet: 85 V breakdown of 100", "1N914 vf=0.62 vbr=85V", screening.Accept, screening.Serviceable, ""},
 
 	{"breaks down at 250 V of 1000", "1N4007 vf=0.52 vbr=250V", screening.Reject, screening.AnyGrade, "reverse breakdown voltage reads 250 V; at least 1.00 kV"},
 	{"breaks down somewhere below 5 V", "1N4007 vf=0.52 vbr=<5V", screening.Reject, screening.AnyGrade, "fails"},
+	{"its own rating stands before the laxest sheet's", "1N914 rated:vrrm=100V vf=0.62 vbr=85V", screening.Reject, screening.AnyGrade, "at least 100 V"},
 	{"below the laxest sheet", "1N914 vf=0.62 vbr=60V", screening.Reject, screening.AnyGrade, "at least 75"},
 	{"shorted", "1N4007 vf=0.00 vbr=0.00", screening.Reject, screening.AnyGrade, "reads shorted"},
+	{"a short is not turned round", "1N4148 vf=OL vbr=0.02", screening.Reject, screening.AnyGrade, "reads 20.0 mV"},
+	{"nor is a Zener", "1N4148 vf=OL vbr=5.1V", screening.Reject, screening.AnyGrade, "reads 5.10 V"},
 	{"open", "1N4148 vf=OL vbr=OL", screening.Reject, screening.AnyGrade, "light-emitting"},
 	{"silicon that leaks 100 µA at 20 V", "1N4148 vf=0.62 ir@20V=100uA temperature=23C", screening.Reject, screening.AnyGrade, "at most 10.0 µA"},
 	{"a reading hot may refute", "1N4148 vf=0.62 ir@20V=100uA temperature=45C", screening.Reject, screening.AnyGrade, "comes to 25.0 µA"},
@@ -94,6 +68,7 @@ var verdictCases = []struct {
 	// The limit is 500 µA; from 15 °C with a doubling per 8 K the factor is 2.378, so up to 210 µA no room brings it over.
 	{"germanium without its temperature, too much for a cold room", "OA91 vf=0.31 ir@10V=230uA", screening.Undecided, screening.AnyGrade, "measure: STATE the temperature of the reading: reverse current"},
 	{"hot and above the limit never accepts", "1N4148 vf=0.62 ir@20V=15uA temperature=45C", screening.Undecided, screening.AnyGrade, "let it cool"},
+	{"measured the wrong way round", "1N4148 vf=OL vbr=0.62", screening.Undecided, screening.AnyGrade, "the probes were the wrong way round"},
 	{"a dual with one half measured", "MBR20100CT vf/1=0.25 vbr/1=OL", screening.Undecided, screening.AnyGrade, "OL shows that it blocks (vbr=OL), section 2"},
 	{"too little current says little", "1N4148 vf@10uA=0.45 vbr=OL", screening.Undecided, screening.AnyGrade, "forward voltage"},
 
@@ -107,25 +82,18 @@ func TestVerdicts(t *testing.T) {
 			j := judge(t, tt.words, screening.DefaultPolicy())
 			seen[j.Verdict]++
 			if j.Verdict != tt.verdict || j.Grade != tt.grade {
-				t.Errorf("%s: %s %s, want %s %s\n%s", tt.words, j.Verdict, j.Grade, tt.verdict, tt.grade, texts(j))
+				t.Errorf("%s: %s %s, want %s %s\n%s", tt.words, j.Verdict, j.Grade, tt.verdict, tt.grade, booktest.Texts(j))
 			}
-			if !strings.Contains(texts(j), tt.says) {
-				t.Errorf("%s: nothing says %q:\n%s", tt.words, tt.says, texts(j))
+			if !strings.Contains(booktest.Texts(j), tt.says) {
+				t.Errorf("%s: nothing says %q:\n%s", tt.words, tt.says, booktest.Texts(j))
 			}
-			if j.RegradedAs != nil {
-				t.Errorf("%s: as %q; a diode has no lesser claim", tt.words, j.RegradedAs.Text)
+			if as := booktest.As(j); as != "" {
+				t.Errorf("%s: as %q; a diode has no lesser claim", tt.words, as)
 			}
 		})
 	}
 	// A diode is not regraded and not treated: what breaks down below its rating is damaged.
-	for _, v := range []screening.Verdict{screening.Accept, screening.Undecided, screening.Barred, screening.Reject} {
-		if seen[v] == 0 {
-			t.Errorf("no case gives %s", v)
-		}
-	}
-	if seen[screening.Regrade]+seen[screening.Treat] != 0 {
-		t.Errorf("a diode was regraded or treated: %v", seen)
-	}
+	booktest.EveryVerdict(t, seen, screening.Regrade, screening.Treat)
 }
 
 // refRow is one row of the published list of diodes.
@@ -138,28 +106,11 @@ type refRow struct {
 
 func refRows(t testing.TB) []refRow {
 	t.Helper()
-	f, err := os.Open("../types/testdata/diode-ref.csv")
-	if err != nil {
-		t.Fatal(err)
-	}
-	defer f.Close()
-	all, err := csv.NewReader(f).ReadAll()
-	if err != nil || len(all) < 50 {
-		t.Fatalf("%d rows, %v", len(all), err)
-	}
-	column := func(row []string, name string) string { return row[slices.Index(all[0], name)] }
-	number := func(row []string, name string) float64 {
-		x, err := strconv.ParseFloat(column(row, name), 64)
-		if err != nil {
-			t.Fatalf("%s, %s: %v", row[0], name, err)
-		}
-		return x
-	}
 	var rows []refRow
-	for _, row := range all[1:] {
+	for _, ref := range booktest.Reference(t, "../types/testdata/diode-ref.csv", 54) {
+		number := func(column string) float64 { return booktest.Number(t, ref[column], math.NaN()) }
 		rows = append(rows, refRow{
-			row[0], column(row, "tag") == "SEEN", number(row, "vrrm_v"), number(row, "vf_max_v"), number(row, "vf_at_a"),
-			number(row, "ir_max_a"), number(row, "vr_v"),
+			ref["type"], ref["tag"] == "SEEN", number("vrrm_v"), number("vf_max_v"), number("vf_at_a"), number("ir_max_a"), number("vr_v"),
 		})
 	}
 	return rows
@@ -202,7 +153,7 @@ func hold(t *testing.T, row refRow, section string, of screening.Definition, at 
 		}
 		j, err := screening.Judge(Book(), screening.Part{
 			Claim: screening.Claim{}.WithTrait(screening.TraitType, row.name), Readings: []screening.Reading{r},
-		}, exactly())
+		}, booktest.Exactly())
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -228,12 +179,13 @@ func hold(t *testing.T, row refRow, section string, of screening.Definition, at 
 
 func TestClaimsThatContradictThemselves(t *testing.T) {
 	for words, want := range map[string]string{
-		"1N4148 schottky":   `"schottky" is claimed, but 1N4148 is signal`,
-		"1N4148 ge":         `"ge" is claimed, but 1N4148 is si`,
-		"1N4001 1000V":      "1 kV is claimed, but 1N4001 is rated 50 V",
-		"rated:vrrm=0":      "no reverse voltage",
-		"technology=valve":  "",
-		"material=selenium": "",
+		"1N4148 rated:vrrm=101V": "vrrm: 101 V is claimed, but 1N4148 is rated 100 V",
+		"1N4148 schottky":        `"schottky" is claimed, but 1N4148 is signal`,
+		"1N4148 ge":              `"ge" is claimed, but 1N4148 is si`,
+		"1N4001 1000V":           "1 kV is claimed, but 1N4001 is rated 50 V",
+		"rated:vrrm=0":           "no reverse voltage",
+		"technology=valve":       "",
+		"material=selenium":      "",
 	} {
 		p, err := entry.Words(Book(), strings.Fields(words))
 		if err == nil {
@@ -244,12 +196,12 @@ func TestClaimsThatContradictThemselves(t *testing.T) {
 		}
 	}
 	j := judge(t, "type=XY9999 vf=0.6 vbr=OL", screening.DefaultPolicy())
-	if !strings.Contains(texts(j), "not in the table") || j.Verdict != screening.Accept {
-		t.Errorf("an unknown type: %s\n%s", j.Verdict, texts(j))
+	if !strings.Contains(booktest.Texts(j), "not in the table") || j.Verdict != screening.Accept {
+		t.Errorf("an unknown type: %s\n%s", j.Verdict, booktest.Texts(j))
 	}
 	j = judge(t, "rectifier rated:vf=..1.1V vf=0.5 vbr=OL", screening.DefaultPolicy())
-	if !strings.Contains(texts(j), "does not say at which current") {
-		t.Errorf("a rating without its condition:\n%s", texts(j))
+	if !strings.Contains(booktest.Texts(j), "does not say at which current") {
+		t.Errorf("a rating without its condition:\n%s", booktest.Texts(j))
 	}
 }
 
@@ -307,7 +259,7 @@ func TestASoundDiodeIsNeverRejected(t *testing.T) {
 		}
 		j, err := screening.Judge(Book(), part, policy)
 		if err != nil || j.Verdict == screening.Reject {
-			t.Fatalf("%s: %s, %v\n%s", name, j.Verdict, err, texts(j))
+			t.Fatalf("%s: %s, %v\n%s", name, j.Verdict, err, booktest.Texts(j))
 		}
 	})
 }
@@ -380,21 +332,4 @@ func TestCautionsAndRecipes(t *testing.T) {
 	}
 }
 
-func BenchmarkJudge(b *testing.B) {
-	book, policy := Book(), screening.DefaultPolicy()
-	p, err := entry.Words(book, strings.Fields("1N4148 vf=0.62 vbr=OL"))
-	if err != nil {
-		b.Fatal(err)
-	}
-	part := screening.Part{Claim: p.Claim, Readings: p.Readings}
-	var findings int
-	b.ReportAllocs()
-	for b.Loop() {
-		j, err := screening.Judge(book, part, policy)
-		if err != nil {
-			b.Fatal(err)
-		}
-		findings = len(j.Findings)
-	}
-	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(findings), "ns/finding")
-}
+func BenchmarkJudge(b *testing.B) { booktest.Benchmark(b, Book(), "1N4148 vf=0.62 vbr=OL") }

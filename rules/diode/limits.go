@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -18,13 +19,16 @@ const (
 	leastRating = 20.0
 )
 
+// mostLimits is how many limits one diode has at most.
+const mostLimits = 9
+
 func limits(c screening.Claim) ([]screening.Limit, error) {
-	var all []screening.Limit
+	all := make([]screening.Limit, 0, mostLimits*len(sections(c)))
 	for _, section := range sections(c) {
-		all = append(all, forwardLimits(c, section)...)
-		all = append(all, blockingLimits(c, section)...)
-		all = append(all, breakdownLimits(c, section)...)
-		all = append(all, leakageLimits(c, section)...)
+		all = forwardLimits(all, c, section)
+		all = blockingLimits(all, c, section)
+		all = breakdownLimits(all, c, section)
+		all = leakageLimits(all, c, section)
 	}
 	return all, nil
 }
@@ -37,9 +41,8 @@ func limit(of screening.Definition, criterion screening.Criterion, section strin
 }
 
 // forwardLimits ask for the forward voltage at a tester's current; the sheet's own maximum at its current answers as well.
-func forwardLimits(c screening.Claim, section string) []screening.Limit {
+func forwardLimits(all []screening.Limit, c screening.Claim, section string) []screening.Limit {
 	tech := technologyOf(c)
-	var all []screening.Limit
 	add := func(s *span, grade screening.Grade) {
 		l := limit(screening.VF, forwardCriterion, section)
 		l.At, l.Low, l.High, l.Grade, l.Source = screening.At(screening.Current, testerCurrent), s.low, s.high, grade, s.source
@@ -58,7 +61,7 @@ func forwardLimits(c screening.Claim, section string) []screening.Limit {
 	add(&tech.sound, screening.Serviceable)
 	if r, at, ok := sheet(c, screening.VF.Name, screening.Current); ok && r.High > tech.sound.low {
 		l := limit(screening.VF, forwardCriterion, section)
-		l.At, l.Low, l.High, l.Source = screening.At(screening.Current, at), tech.sound.low, r.High, claimed(r)
+		l.At, l.Low, l.High, l.Source = screening.At(screening.Current, at), tech.sound.low, r.High, book.SourceOf(&r)
 		l.Note = "the lower bound is that at a tester's current: at more current it drops no less"
 		all = append(all, l)
 	}
@@ -75,7 +78,7 @@ func nothingToExpect(section string) screening.Limit {
 }
 
 // blockingLimits ask that it blocks at whatever voltage there was: by the voltage that it stood, or by the current that it leaked.
-func blockingLimits(c screening.Claim, section string) []screening.Limit {
+func blockingLimits(all []screening.Limit, c screening.Claim, section string) []screening.Limit {
 	stands := limit(screening.VBR, blockingCriterion, section)
 	stands.Low = blocksAt
 	stands.Source = screening.Source{Document: "a diode test in reverse, 2 V less its error", Status: screening.House}
@@ -86,7 +89,7 @@ func blockingLimits(c screening.Claim, section string) []screening.Limit {
 	leaks.High, leaks.Source = m.value, m.source
 	leaks.At = screening.At(screening.Voltage, testVoltage(c)).With(screening.PartTemperature, junction.Reference)
 	leaks.Note = "at whatever voltage is stated, from " + quantity.Format(blocksAt, quantity.Volt, 0) + " up"
-	return []screening.Limit{stands, leaks}
+	return append(all, stands, leaks)
 }
 
 // testVoltage is a reverse voltage that a bench has and that the diode claims to block.
@@ -98,7 +101,7 @@ func testVoltage(c screening.Claim) float64 {
 }
 
 // breakdownLimits hold a measured breakdown against the rating. It can only refute or, at the rating and above, prove.
-func breakdownLimits(c screening.Claim, section string) []screening.Limit {
+func breakdownLimits(all []screening.Limit, c screening.Claim, section string) []screening.Limit {
 	l := limit(screening.VBR, breakdownCriterion, section)
 	l.Need = screening.Wanted
 	rating, ok := c.Rating(VRRM.Name, "")
@@ -106,33 +109,33 @@ func breakdownLimits(c screening.Claim, section string) []screening.Limit {
 		l.Low = leastRating
 		l.Source = screening.Source{Document: "the lowest VRRM of the type table (1N5817, 1N5820)", Status: screening.Derived}
 		l.Note = "its own rating is not known"
-		return []screening.Limit{l}
+		return append(all, l)
 	}
-	l.Low, l.Source = rating.Low, claimed(rating)
+	l.Low, l.Source = rating.Low, book.SourceOf(&rating)
 	l.Note = "a breakdown above the rating is normal, below it the diode is damaged"
 	v, lax := load().variants[c.Trait(screening.TraitType)]
 	if !lax || v.least == 0 || v.least >= rating.Low || rating.Typed != "" {
-		return []screening.Limit{l}
+		return append(all, l)
 	}
 	least := l
 	l.Grade, least.Grade = screening.WithinSpec, screening.Serviceable
 	least.Low, least.Source = v.least, v.source
-	return []screening.Limit{l, least}
+	return append(all, l, least)
 }
 
 // leakageLimits hold the reverse current at the sheet's voltage against the sheet, and against what its material may leak: sheets print
 // nanoamperes that no pocket meter resolves and few circuits need.
-func leakageLimits(c screening.Claim, section string) []screening.Limit {
+func leakageLimits(all []screening.Limit, c screening.Claim, section string) []screening.Limit {
 	r, at, ok := sheet(c, screening.IR.Name, screening.Voltage)
 	if !ok {
-		return nil
+		return all
 	}
 	l := limit(screening.IR, leakageCriterion, section)
 	l.Need = screening.Wanted
 	l.At = screening.At(screening.Voltage, at).With(screening.PartTemperature, junction.Reference)
 	within := l
-	within.High, within.Grade, within.Source = r.High, screening.WithinSpec, claimed(r)
+	within.High, within.Grade, within.Source = r.High, screening.WithinSpec, book.SourceOf(&r)
 	m := leakMost(c)
 	l.High, l.Grade, l.Source = m.value, screening.Serviceable, m.source
-	return []screening.Limit{within, l}
+	return append(all, within, l)
 }

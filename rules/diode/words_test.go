@@ -4,6 +4,7 @@ import (
 	"strings"
 	"testing"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
 )
 
@@ -20,7 +21,7 @@ func TestLeakageIsWordedAsItWasHeld(t *testing.T) {
 		{"10 µA, on the line of its material", "1N4148 vf=0.62 ir@20V=10uA temperature=25C", true, false, true},
 		{"5 nA, less than its sheet allows", "1N4148 vf=0.62 ir@20V=0.005uA temperature=25C", false, false, false},
 	} {
-		said := texts(judge(t, tt.words, screening.DefaultPolicy()))
+		said := booktest.Texts(judge(t, tt.words, screening.DefaultPolicy()))
 		got := [3]bool{strings.Contains(said, more), strings.Contains(said, less), strings.Contains(said, close)}
 		if want := [3]bool{tt.more, tt.less, tt.near}; got != want {
 			t.Errorf("%s: says more, less, too near: %v, want %v\n%s", tt.name, got, want, said)
@@ -51,11 +52,11 @@ func TestWhatWasNotTestedIsSaidOnce(t *testing.T) {
 }
 
 func TestTheLimitOfBlockingIsSaidAtTheReadingsVoltage(t *testing.T) {
-	said := texts(judge(t, "1N4148 vf=0.62 ir@20V=38uA temperature=25C", screening.DefaultPolicy()))
+	said := booktest.Texts(judge(t, "1N4148 vf=0.62 ir@20V=38uA temperature=25C", screening.DefaultPolicy()))
 	if strings.Count(said, "at most 10.0 µA at 20 V") != 1 || strings.Contains(said, "30 V") {
 		t.Errorf("%s", said)
 	}
-	said = texts(judge(t, "MBR20100CT vf/1=0.22 vf/2=0.001 vbr/1=>60V vbr/2=0.00V", screening.DefaultPolicy()))
+	said = booktest.Texts(judge(t, "MBR20100CT vf/1=0.22 vf/2=0.001 vbr/1=>60V vbr/2=0.00V", screening.DefaultPolicy()))
 	if !strings.Contains(said, "reversed it reads shorted") || strings.Contains(said, "breaks down") {
 		t.Errorf("%s", said)
 	}

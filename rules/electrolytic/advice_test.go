@@ -7,6 +7,7 @@ import (
 	"testing"
 
 	"goodbin/screening"
+	"goodbin/screening/quantity"
 )
 
 func cautionOf(cs []screening.Caution, code string) (screening.Caution, bool) {
@@ -38,6 +39,8 @@ func TestReformingIsWarnedOfByNumber(t *testing.T) {
 		{"a 10x20 can at 400 V stands 0.28 mA", 47, 400, []string{"can-size", "10x20"}, []screening.Reading{leakage(5000, 400, 5)}, 0, "", 1.5e6, 0.107},
 		{"high capacitance asks for it too", 47, 450, nil, []screening.Reading{capacitance(90)}, 0, "", 450e3, 0.45},
 		{"sound leakage does not", 47, 450, nil, []screening.Reading{leakage(20, 450, 5)}, 0, "", 0, 0},
+		{"above a derived limit only: accepted, so not told", 10000, 63, []string{"case", "screw", "dated", "1995"}, []screening.Reading{leakage(1900, 63, 5)}, 0, "", 0, 0},
+		{"too near for the meter: not told", 47, 450, nil, []screening.Reading{{Of: screening.Leakage.Name, Unit: quantity.Ampere, Value: 450e-6, U: 5e-6, Spec: 9e-6, At: leakage(1, 450, 5).At}}, 0, "", 0, 0},
 		{"bulged parts never", 47, 450, nil, []screening.Reading{leaky}, 0, bulged, 0, 0},
 		{"twice is enough", 47, 450, nil, []screening.Reading{leaky}, 2, "", 0, 0},
 	} {

@@ -17,14 +17,14 @@ import (
 const Kind screening.Kind = "electrolytic"
 
 // edition goes up when a rule in code changes; a change of the tables changes the version by itself.
-const edition = "2"
+const edition = "3"
 
 // Book returns the rulebook.
 func Book() *screening.Rulebook {
 	return &screening.Rulebook{
 		Kind:     Kind,
 		Label:    "aluminium electrolytic capacitor",
-		Tables:   "electrolytic-" + edition + "-" + book.Fingerprint(leakageCSV, tanDeltaCSV, figuresCSV),
+		Tables:   book.Version(Kind, edition, leakageCSV, tanDeltaCSV, figuresCSV),
 		Claims:   claims(),
 		Bench:    bench(),
 		Look:     looks(),
@@ -56,11 +56,11 @@ func claims() []screening.Field {
 			AcceptRange: book.CapacitorToleranceLetter, Ambiguous: book.ToleranceMeanings,
 		},
 		{
-			Definition: trait(screening.TraitDated, "maker's date"), Trait: true, Example: "1974",
+			Definition: book.Trait(screening.TraitDated, "maker's date"), Trait: true, Example: "1974",
 			Help: "a year, or a decade such as 197x; age decides which limits are fair", AcceptText: acceptYear,
 		},
 		{
-			Definition: trait(screening.TraitCase, "case"), Trait: true, Example: caseRadial,
+			Definition: book.Trait(screening.TraitCase, "case"), Trait: true, Example: caseRadial,
 			Help: "radial, axial, can, snap-in, screw or smd; radial is taken where none is given",
 			Words: []screening.Word{
 				{Word: "radial", Text: caseRadial},
@@ -73,21 +73,17 @@ func claims() []screening.Field {
 			},
 		},
 		{
-			Definition: trait(traitCanSize, "can size"), Trait: true, Example: "10x20",
+			Definition: book.Trait(traitCanSize, "can size"), Trait: true, Example: "10x20",
 			Help: "diameter by length in mm; it says how much heat the can stands while it is re-formed", AcceptText: acceptCanSize,
 		},
 		{
-			Definition: trait(traitSeries, "maker's series"), Trait: true, Example: "sound-series",
+			Definition: book.Trait(traitSeries, "maker's series"), Trait: true, Example: "sound-series",
 			Help:  "sound-series where others of its series and years have lasted; it counts for parts of 1999 to 2007 that read high and leak",
 			Words: []screening.Word{{Word: "sound-series", Text: seriesSound}},
 			Ask: "REPLACE it, or prove the series good: others of the same maker, series and years that have lasted; then claim sound-series " +
 				"(no reading of this part settles it)",
 		},
 	}
-}
-
-func trait(name, label string) screening.Definition {
-	return screening.Definition{Name: screening.Characteristic(name), Symbol: name, Label: label}
 }
 
 var (

@@ -11,9 +11,6 @@ import (
 	"goodbin/screening/quantity"
 )
 
-// dangerousVolts is where a supply or a charged part is a danger rather than a notice: above 60 V.
-const dangerousVolts = 60
-
 // cautions: the stored charge at every step; what a test under voltage needs while measuring; what re-forming needs with the verdict.
 func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	us, err := units(part.Claim)
@@ -42,10 +39,10 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	return all
 }
 
-// readHigh reports whether capacitance was read above its tolerance.
+// readHigh reports whether capacitance was read above its tolerance, beyond what the meter may be off.
 func readHigh(part screening.Part, u unit) bool {
 	return slices.ContainsFunc(part.Readings, func(r screening.Reading) bool {
-		return r.Of == screening.Capacitance.Name && r.Section == u.section && r.Sense != quantity.AtMost && r.Value > u.top()
+		return r.Of == screening.Capacitance.Name && r.Section == u.section && r.Sense != quantity.AtMost && surelyAbove(&r, u.top())
 	})
 }
 
@@ -66,6 +63,8 @@ func leaks(part screening.Part, u unit) bool {
 	return false
 }
 
+// aboveLimitInUse reports whether a leakage reading fails the set in use: a figure that may not reject counts only where a published one is
+// passed too, so that no part is accepted and told to be re-formed.
 func aboveLimitInUse(claim screening.Claim, u unit, r screening.Reading) bool {
 	volts, ok1 := r.At.Get(screening.Voltage)
 	after, ok2 := r.At.Get(screening.After)
@@ -76,7 +75,11 @@ func aboveLimitInUse(claim screening.Claim, u unit, r screening.Reading) bool {
 	rows := embedded().leakage
 	for i := range rows {
 		row := &rows[i]
-		if row.set == set && row.covers(u) && after >= row.after*nearlyAtRated[screening.After].Low && r.Value > row.amperes(u) {
+		if row.set != set || !row.covers(u) || after < row.after*nearlyAtRated[screening.After].Low || !surelyAbove(&r, row.amperes(u)) {
+			continue
+		}
+		published, ok := generalLeakage(u, after)
+		if row.source.Status.MayReject() || ok && surelyAbove(&r, published) {
 			return true
 		}
 	}
@@ -138,7 +141,7 @@ func rating(watts float64) string {
 }
 
 func levelOf(volts float64) screening.Level {
-	if volts > dangerousVolts {
+	if volts > book.TouchVoltage {
 		return screening.Danger
 	}
 	return screening.Notice
@@ -159,11 +162,11 @@ func underVoltage(claim screening.Claim, us []unit) screening.Caution {
 	text := fmt.Sprintf("leakage puts up to %s on the part: plus to plus (reversed by more than 1 V it can burst), through %s. The resistor limits the "+
 		"supply, not the charge that is already in the part: it leaves the test charged, so discharge it and read the volts that remain.",
 		quantity.Format(c.supply, quantity.Volt, 0), c.resistor())
-	if u.volts > dangerousVolts {
+	if u.volts > book.TouchVoltage {
 		text += highVoltageHelp
 	}
 	return screening.Caution{
-		Code: "test-under-voltage", Level: levelOf(u.volts), Text: text, Values: c.values(), Gate: u.volts > dangerousVolts,
+		Code: "test-under-voltage", Level: levelOf(u.volts), Text: text, Values: c.values(), Gate: u.volts > book.TouchVoltage,
 		Source: named("reform-ohms-high").source,
 	}
 }
@@ -185,13 +188,13 @@ func reforming(claim screening.Claim, u unit) screening.Caution {
 	b.WriteString("; hold until the current is steady, at least an hour; stop if it warms or the current rises. The resistor limits the supply, " +
 		"not the charge already in the part. Then discharge it, read the volts that remain, rest it 12 to 48 h without voltage, and take the leakage reading " +
 		"that decides.")
-	if u.volts > dangerousVolts {
+	if u.volts > book.TouchVoltage {
 		b.WriteString(highVoltageHelp)
 	}
 	values := c.values()
 	values["rest-min"], values["rest-max"] = named("rest-min").value, named("rest-max").value
 	return screening.Caution{
-		Code: "re-form", Level: levelOf(u.volts), Text: b.String(), Values: values, Gate: u.volts > dangerousVolts,
+		Code: "re-form", Level: levelOf(u.volts), Text: b.String(), Values: values, Gate: u.volts > book.TouchVoltage,
 		Source: named("reform-current").source,
 	}
 }

@@ -7,6 +7,7 @@ import (
 	"strconv"
 	"strings"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -67,10 +68,7 @@ func units(claim screening.Claim) ([]unit, error) {
 		if u.low, u.high, err = toleranceBounds(t); err != nil {
 			return nil, err
 		}
-		u.toleranceSource = t.Source
-		if t.Source.Status == screening.NoStatus {
-			u.toleranceSource = screening.Source{Document: "the part's own marking", Clause: "tolerance", Status: screening.Published}
-		}
+		u.toleranceSource = book.SourceOf(&t)
 		all = append(all, u)
 	}
 	return all, nil
@@ -148,7 +146,7 @@ func complete(claim screening.Claim) (screening.Claim, []screening.Reason, error
 // dated before 1985.
 func modernRadial(claim screening.Claim) bool {
 	year, dated := claim.Year()
-	if dated && year < 1985 {
+	if dated && year < oldBefore {
 		return false
 	}
 	switch claim.Trait(screening.TraitCase) {

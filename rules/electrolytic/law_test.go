@@ -6,6 +6,7 @@ import (
 
 	"pgregory.net/rapid"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
 )
 
@@ -72,20 +73,8 @@ func claimed2(uF, volts float64) screening.Claim {
 	return screening.Claim{}.WithRating(screening.NominalRating(screening.Capacitance, uF*1e-6)).WithRating(screening.NominalRating(screening.RatedVoltage, volts))
 }
 
-func BenchmarkJudgeElectrolytic(b *testing.B) {
-	book, policy := Book(), screening.DefaultPolicy()
-	part := screening.Part{Claim: claimed2(2200, 35), Readings: []screening.Reading{
-		capacitance(2010), esr(0.061), leakage(45, 35, 2), ambient(24),
-	}}
-	findings := 0
-	for b.Loop() {
-		j, err := screening.Judge(book, part, policy)
-		if err != nil {
-			b.Fatal(err)
-		}
-		findings += len(j.Findings)
-	}
-	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(findings), "ns/finding")
+func BenchmarkJudge(b *testing.B) {
+	booktest.Benchmark(b, Book(), "2200uF 35V M capacitance=2010uF esr@120Hz=61m leakage@35V,2min=45uA temperature=24C")
 }
 
 func ExampleBook() {

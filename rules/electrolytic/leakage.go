@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 	"strings"
 
 	"goodbin/rules/internal/book"
@@ -21,16 +22,16 @@ const (
 	criterionSeries      screening.Criterion = "series" // only of parts with the signs of the electrolyte fault
 )
 
-// Years at which what is asked changes.
+// Years at which what is asked changes (house).
 const (
 	vintageBefore = 1980 // the vintage military leakage set is in use
 	oldBefore     = 1985 // leakage is required at any voltage
 )
 
-// leakageVolts is the rated voltage above which leakage is required whatever the age.
+// leakageVolts is the rated voltage above which leakage is required whatever the age (house).
 const leakageVolts = 63
 
-// roomTemperature is where leakage and tan δ are stated, °C.
+// roomTemperature is where leakage and tan δ are stated, °C (every sheet read).
 const roomTemperature = 20
 
 //go:embed leakage.csv
@@ -115,8 +116,10 @@ func (r *leakageRow) formula(u unit) string {
 	return b.String()
 }
 
-// microfarads prints a capacitance as the trade does: "2200 µF", never "2.2 mF".
-func microfarads(c float64) string { return fmt.Sprintf("%.4g µF", c*1e6) }
+// microfarads prints a capacitance as the trade does, in four figures: "2200 µF", never "2.2 mF" or "1e+04 µF".
+func microfarads(c float64) string {
+	return strconv.FormatFloat(book.Honest(c*1e6, 0, 4), 'f', -1, 64) + " µF"
+}
 
 // leakageSetFor returns the set that counts for a unit: vintage military for parts dated before 1980, snap-in for snap-in and screw cans,
 // else general.
@@ -152,18 +155,18 @@ func leakageNeed(claim screening.Claim, u unit) screening.Need {
 }
 
 // leakageLimits lists the leakage limits of every set for a unit, and the ceilings.
-func leakageLimits(limits []screening.Limit, claim screening.Claim, u unit) []screening.Limit {
-	inUse, need := leakageSetFor(claim, u), leakageNeed(claim, u)
+func leakageLimits(limits []screening.Limit, claim screening.Claim, u *unit) []screening.Limit {
+	inUse, need := leakageSetFor(claim, *u), leakageNeed(claim, *u)
 	rows := embedded().leakage
 	least, longest := math.Inf(1), 0.0
 	for i := range rows {
 		row := &rows[i]
-		if !row.covers(u) {
+		if !row.covers(*u) {
 			continue
 		}
-		l := leakageLimit(u, row.after, row.amperes(u), row.source)
+		l := leakageLimit(u, row.after, row.amperes(*u), row.source)
 		l.Need, l.Set, l.InUse, l.Note = need, row.set, row.set == inUse, row.note
-		l.Formula = func() string { return row.formula(u) }
+		l.Formula = func() string { return row.formula(*u) }
 		if l.InUse {
 			least, longest = math.Min(least, l.High), math.Max(longest, row.after)
 		}
@@ -172,7 +175,7 @@ func leakageLimits(limits []screening.Limit, claim screening.Claim, u unit) []sc
 	return ceilings(limits, claim, u, least, longest)
 }
 
-func leakageLimit(u unit, after, high float64, source screening.Source) screening.Limit {
+func leakageLimit(u *unit, after, high float64, source screening.Source) screening.Limit {
 	return screening.Limit{
 		On: screening.Leakage.Name, Unit: quantity.Ampere, Section: u.section, Criterion: criterionLeakage,
 		At:  screening.At(screening.Voltage, u.volts).With(screening.After, after).With(screening.PartTemperature, roomTemperature),
@@ -182,7 +185,7 @@ func leakageLimit(u unit, after, high float64, source screening.Source) screenin
 
 // ceilings adds the bounds that no leakage limit may pass whatever CV says: 10 mA, and what heats the can by 10 K. They count where they
 // are tighter than the limit in use.
-func ceilings(limits []screening.Limit, claim screening.Claim, u unit, inUse, after float64) []screening.Limit {
+func ceilings(limits []screening.Limit, claim screening.Claim, u *unit, inUse, after float64) []screening.Limit {
 	military := named("military-ceiling")
 	l := leakageLimit(u, after, military.value, military.source)
 	l.Criterion, l.Need, l.Set = criterionCeiling, screening.Wanted, screening.VintageMilitarySet

@@ -15,17 +15,18 @@ func limits(claim screening.Claim) ([]screening.Limit, error) {
 		return nil, err
 	}
 	all := make([]screening.Limit, 0, 24*len(us))
-	for _, u := range us {
-		all = capacitanceLimits(all, u)
-		all = lossLimits(all, claim, u)
-		all = leakageLimits(all, claim, u)
+	for i := range us {
+		// The formulas keep the unit for as long as the limits live.
+		all = capacitanceLimits(all, &us[i])
+		all = lossLimits(all, claim, &us[i])
+		all = leakageLimits(all, claim, &us[i])
 	}
 	return all, nil
 }
 
 // capacitanceLimits: within the tolerance as new; serviceable from 0.70 of nominal to the top of the tolerance. A part that reads high is
 // suspected of leakage, which re-forming can undo; one that reads low is dry, which nothing undoes.
-func capacitanceLimits(limits []screening.Limit, u unit) []screening.Limit {
+func capacitanceLimits(limits []screening.Limit, u *unit) []screening.Limit {
 	l := screening.Limit{
 		On: screening.Capacitance.Name, Unit: quantity.Farad, Section: u.section, Criterion: criterionCapacitance,
 		At: screening.At(screening.Frequency, lossFrequency), Low: u.farad * (1 + u.low), High: u.top(), TreatHigh: screening.Reform,
@@ -43,9 +44,10 @@ func capacitanceLimits(limits []screening.Limit, u unit) []screening.Limit {
 		worn.Source = u.toleranceSource
 		worn.Note = "the lower bound is " + kept.source.String()
 	}
+	low := worn.Low
 	worn.Formula = func() string {
-		return fmt.Sprintf("%.2f·%s to %s %s = %s to %s", worn.Low/u.farad, microfarads(u.farad), microfarads(u.farad), percents(u.low, u.high),
-			microfarads(worn.Low), microfarads(u.top()))
+		return fmt.Sprintf("%.2f·%s to %s %s = %s to %s", low/u.farad, microfarads(u.farad), microfarads(u.farad), percents(u.low, u.high),
+			microfarads(low), microfarads(u.top()))
 	}
 	return append(limits, l, worn)
 }

@@ -18,12 +18,12 @@ const lossFrequency = 120
 var tanDeltaCSV string
 
 // ladderVolts are the rated voltages at which tan δ is printed.
-var ladderVolts = []float64{6.3, 10, 16, 25, 35, 50, 63, 100, 160, 200, 250, 315, 350, 400, 450}
+var ladderVolts = []float64{6.3, 10, 16, 25, 35, 40, 50, 63, 100, 160, 200, 250, 315, 350, 400, 450}
 
 // lossRow is one series' ladder of tan δ by rated voltage.
 type lossRow struct {
 	set       screening.LimitSet // "" for a ladder that only counts for the laxest
-	group     string             // radial, smd, snap-in
+	group     string             // radial, smd, snap-in, screw
 	frequency float64            // Hz
 	perStep   float64            // added per 1000 µF above 1000 µF
 	ladder    []float64          // as ladderVolts; NaN where nothing is printed
@@ -53,9 +53,9 @@ func readLoss(text string, endurance screening.Source) ([]lossRow, error) {
 			}
 		}
 		switch r.group {
-		case "radial", "smd", "snap-in":
+		case "radial", "smd", "snap-in", caseScrew:
 		default:
-			row.Errorf("group", "%q is none of radial, smd, snap-in", r.group)
+			row.Errorf("group", "%q is none of radial, smd, snap-in, screw", r.group)
 		}
 		rows = append(rows, r)
 	}
@@ -65,9 +65,20 @@ func readLoss(text string, endurance screening.Source) ([]lossRow, error) {
 // step is tan δ's base value for a rated voltage and how it was found.
 type step struct {
 	tanDelta float64
-	at       string // "at 35 V", "at 35 V (the laxer neighbour of 40 V)"
-	// beyond is set where the voltage lies outside the ladder: the figure is then carried over, not printed.
-	beyond bool
+	volts    float64 // the printed voltage whose figure is taken
+	between  bool    // the rated voltage lies between two that are printed: volts is the laxer neighbour
+	beyond   bool    // it lies outside the ladder: the figure is carried over from its end, not printed
+}
+
+// words say where the figure stands: "at 35 V", "at 35 V, the laxer neighbour of 40 V".
+func (s step) words(rated float64) string {
+	switch {
+	case s.between:
+		return fmt.Sprintf("at %g V, the laxer neighbour of %g V", s.volts, rated)
+	case s.beyond:
+		return fmt.Sprintf("at %g V, the end of the ladder, for %g V", s.volts, rated)
+	}
+	return fmt.Sprintf("at %g V", s.volts)
 }
 
 // at returns the base value for a rated voltage. Between two printed voltages the laxer neighbour counts; outside the ladder its end. It
@@ -79,7 +90,7 @@ func (r *lossRow) at(volts float64) (step, bool) {
 			continue
 		}
 		if math.Abs(v-volts) < 0.01*v {
-			return step{tanDelta: r.ladder[i], at: fmt.Sprintf("at %g V", v)}, true
+			return step{tanDelta: r.ladder[i], volts: v}, true
 		}
 		if v < volts {
 			below = i
@@ -92,10 +103,10 @@ func (r *lossRow) at(volts float64) (step, bool) {
 		if r.ladder[above] > r.ladder[below] {
 			below = above
 		}
-		return step{r.ladder[below], fmt.Sprintf("at %g V, the laxer neighbour of %g V", ladderVolts[below], volts), false}, true
+		return step{tanDelta: r.ladder[below], volts: ladderVolts[below], between: true}, true
 	case below >= 0 || above >= 0:
 		end := max(below, above)
-		return step{r.ladder[end], fmt.Sprintf("at %g V, the end of the ladder, for %g V", ladderVolts[end], volts), true}, true
+		return step{tanDelta: r.ladder[end], volts: ladderVolts[end], beyond: true}, true
 	}
 	return step{}, false
 }
@@ -118,8 +129,8 @@ func (r *lossRow) counts(claim screening.Claim) bool {
 	switch r.group {
 	case "snap-in":
 		return largeCan(claim)
-	case "smd":
-		return claim.Trait(screening.TraitCase) == caseSMD
+	case caseSMD, caseScrew:
+		return claim.Trait(screening.TraitCase) == r.group
 	}
 	return true
 }
@@ -150,14 +161,14 @@ func lossSetFor(claim screening.Claim) screening.LimitSet {
 
 // lossLimits lists tan δ and ESR limits of every ladder that is a limit set, at both grades. Where a set has several ladders, the first that
 // prints the voltage counts.
-func lossLimits(limits []screening.Limit, claim screening.Claim, u unit) []screening.Limit {
+func lossLimits(limits []screening.Limit, claim screening.Claim, u *unit) []screening.Limit {
 	inUse := lossSetFor(claim)
 	rows := embedded().loss
 	done := make([]screening.LimitSet, 0, 4)
 	for _, edges := range []bool{false, true} {
 		for i := range rows {
 			r := &rows[i]
-			if r.set == "" || slices.Contains(done, r.set) {
+			if r.set == "" || slices.Contains(done, r.set) || r.group == caseScrew && !r.counts(claim) {
 				continue
 			}
 			s, ok := r.at(u.volts)
@@ -172,7 +183,7 @@ func lossLimits(limits []screening.Limit, claim screening.Claim, u unit) []scree
 }
 
 // limits adds the four limits of one ladder: ESR and tan δ, as for a new part and serviceable.
-func (r *lossRow) limits(limits []screening.Limit, u unit, s step, inUse bool) []screening.Limit {
+func (r *lossRow) limits(limits []screening.Limit, u *unit, s step, inUse bool) []screening.Limit {
 	adder := r.perStep * lenientSteps(u.farad)
 	tan := s.tanDelta + adder
 	source, wornSource := r.source, r.worn
@@ -184,12 +195,8 @@ func (r *lossRow) limits(limits []screening.Limit, u unit, s step, inUse bool) [
 		Section: u.section, Criterion: criterionLoss, At: screening.At(screening.Frequency, r.frequency), Low: math.Inf(-1),
 		Set: r.set, InUse: inUse, Grade: screening.WithinSpec, Source: source,
 	}
-	shared := &struct { // one copy for the four formulas
-		u unit
-		s step
-	}{u, s}
 	render := func(grade screening.Grade, ohms bool) func() string {
-		return func() string { return r.formula(shared.u, shared.s, adder, grade, ohms) }
+		return func() string { return r.formula(u, grade, ohms) }
 	}
 	for _, on := range []screening.Definition{screening.ESR, screening.TanDelta} {
 		l := base
@@ -208,9 +215,10 @@ func (r *lossRow) limits(limits []screening.Limit, u unit, s step, inUse bool) [
 }
 
 // formula renders "tan δ 0.14 at 35 V + 0.024 above 1000 µF = 0.164; /(2π·120 Hz·2200 µF) = 98.9 mΩ".
-func (r *lossRow) formula(u unit, s step, adder float64, grade screening.Grade, ohms bool) string {
-	tan := s.tanDelta
-	text := fmt.Sprintf("tan δ %.3g %s", tan, s.at)
+func (r *lossRow) formula(u *unit, grade screening.Grade, ohms bool) string {
+	s, _ := r.at(u.volts)
+	tan, adder := s.tanDelta, r.perStep*lenientSteps(u.farad)
+	text := fmt.Sprintf("tan δ %.3g %s", tan, s.words(u.volts))
 	if adder > 0 {
 		tan += adder
 		text += fmt.Sprintf(" + %.3g above 1000 µF = %.3g", adder, tan)

@@ -4,12 +4,10 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
-
-// practice is where the recipes come from.
-var practice = screening.Source{Document: "bench practice", Status: screening.CommonPractice}
 
 // leakagePractice is how makers measure it.
 var leakagePractice = screening.Source{
@@ -47,7 +45,7 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 
 func capacitanceByMeter() screening.Recipe {
 	return screening.Recipe{
-		Title: "capacitance with a meter", Source: practice,
+		Title: "capacitance with a meter", Source: book.Practice,
 		Lines: []string{
 			"discharge the part and read the volts that remain: under 10 V for you, 0 V for the meter",
 			"take it out of circuit, or lift one lead",
@@ -65,7 +63,7 @@ func capacitanceByTime(u unit) screening.Recipe {
 	supply := math.Min(9, 0.9*u.volts)
 	ohms := roundUp(20 / u.farad)
 	return screening.Recipe{
-		Title: "capacitance with a watch and a voltmeter", Source: practice,
+		Title: "capacitance with a watch and a voltmeter", Source: book.Practice,
 		Lines: []string{
 			"discharge the part and read the volts that remain",
 			fmt.Sprintf("charge it from %s through %s, plus to plus, and start the watch", quantity.Format(supply, quantity.Volt, 2),
@@ -84,7 +82,7 @@ func capacitanceByTime(u unit) screening.Recipe {
 func esrByMeter(u unit, l screening.Limit) screening.Recipe {
 	hertz, _ := l.At.Get(screening.Frequency)
 	r := screening.Recipe{
-		Title: "ESR with a meter", Source: practice,
+		Title: "ESR with a meter", Source: book.Practice,
 		Lines: []string{
 			"discharge the part and read the volts that remain: 0 V, or the meter is gone",
 			"touch the probes together and subtract what they show",
@@ -105,7 +103,7 @@ func esrByMeter(u unit, l screening.Limit) screening.Recipe {
 // esrFromTanDelta is for those whose capacitance meter shows D.
 func esrFromTanDelta(u unit, l screening.Limit) screening.Recipe {
 	return screening.Recipe{
-		Title: "without an ESR meter", Source: practice,
+		Title: "without an ESR meter", Source: book.Practice,
 		Lines: []string{
 			"a capacitance meter that shows D or tan δ answers the same question: type tan-delta=…",
 			fmt.Sprintf("ESR of this part is D / (2π·120 Hz·%s); the limit of %s is D = %.2g", microfarads(u.farad),
@@ -117,7 +115,7 @@ func esrFromTanDelta(u unit, l screening.Limit) screening.Recipe {
 
 func tanDeltaByMeter() screening.Recipe {
 	return screening.Recipe{
-		Title: "tan δ with a meter", Source: practice,
+		Title: "tan δ with a meter", Source: book.Practice,
 		Lines: []string{
 			"discharge the part and read the volts that remain: 0 V, or the meter is gone",
 			"choose 100 or 120 Hz; at 1 kHz the figure means something else",
@@ -163,7 +161,7 @@ func leakageRecipe(claim screening.Claim, u unit, l screening.Limit) screening.R
 			duration(after), supply, quantity.Format(ohms, quantity.Ohm, 0), quantity.Format(l.High, quantity.Ampere, 3),
 			quantity.Format(drop, quantity.Volt, 3)),
 		"switch off, discharge the part through its discharge resistor, and read the volts that remain before you touch it")
-	if u.volts > dangerousVolts {
+	if u.volts > book.TouchVoltage {
 		lines = append(lines, "shield, eye protection, one hand, isolated supply; high voltage: your local code and licensed practice")
 	}
 	values["after"], values["volts-at-limit"] = after, drop

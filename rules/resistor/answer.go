@@ -3,6 +3,7 @@ package resistor
 import (
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -33,9 +34,9 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		switch {
 		case open:
 			f.Limit.TreatHigh = ""
-			reasons = append(reasons, note(f.Limit.On, "it reads open, or far above its value"))
+			reasons = append(reasons, book.Note(f.Limit.On, "it reads open, or far above its value"))
 		case f.Side == screening.Below:
-			reasons = append(reasons, note(f.Limit.On, "a resistor seldom reads low by itself: make sure that it was out of circuit"))
+			reasons = append(reasons, book.Note(f.Limit.On, "a resistor seldom reads low by itself: make sure that it was out of circuit"))
 		case f.Limit.TreatHigh == screening.Dry && part.Treated > 0:
 			f.Limit.TreatHigh = ""
 			reasons = append(reasons, screening.Reason{
@@ -44,12 +45,12 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 			})
 		case f.Limit.TreatHigh == screening.Dry && f.Reading.Value*(1-driesBack) > f.Limit.High:
 			f.Limit.TreatHigh = ""
-			reasons = append(reasons, note(f.Limit.On, "too high to be moisture alone: drying returns 15 %% at most by users' reports, %s is allowed for",
+			reasons = append(reasons, book.Note(f.Limit.On, "too high to be moisture alone: drying returns 15 %% at most by users' reports, %s is allowed for",
 				quantity.Format(driesBack, quantity.Ratio, 0)))
 		case f.Limit.TreatHigh == screening.Dry:
-			reasons = append(reasons, note(f.Limit.On, "moisture raises carbon composition: drying may bring it back, and drying out in use may drop it"))
+			reasons = append(reasons, book.Note(f.Limit.On, "moisture raises carbon composition: drying may bring it back, and drying out in use may drop it"))
 		case technologyOf(part.Claim).name == unknown:
-			reasons = append(reasons, note(f.Limit.On, "technology not stated: if it is carbon composition, dry it and measure again first"))
+			reasons = append(reasons, book.Note(f.Limit.On, "technology not stated: if it is carbon composition, dry it and measure again first"))
 		}
 	}
 	return findings, reasons
@@ -103,7 +104,7 @@ func wider(c screening.Claim, f *screening.Finding) []screening.Lesser {
 func widerText(f *screening.Finding, nominal float64, claimed, proven screening.Rating) string {
 	switch {
 	case f.Outcome == screening.Fail:
-		return proven.String() + ": it reads " + quantity.Format(honest(f.Reading.Value, f.Reading.U), quantity.Ohm, 0) + ", " +
+		return proven.String() + ": it reads " + quantity.Format(book.Honest(f.Reading.Value, f.Reading.U, 4), quantity.Ohm, 0) + ", " +
 			signedPercent(f.Reading.Value/nominal-1) + " from its value"
 	case f.Unconfirmed:
 		return proven.String() + " proven; " + claimed.String() + " is only taken for granted (" + f.Limit.Source.Status.String() + ")"
@@ -133,7 +134,7 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 	if nominal, ok := c.Nominal(screening.Resistance.Name, ""); !ok || math.Abs(r.Value/nominal-1) > tech.asMeasured {
 		return nil
 	}
-	value := honest(r.Value, r.U)
+	value := book.Honest(r.Value, r.U, 4)
 	for _, t := range ladder {
 		if t < leastAsMeasured || tech.name == composition && t < leastComposition {
 			continue
@@ -157,22 +158,4 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 		}}
 	}
 	return nil
-}
-
-// honest rounds x to the decimal place of its standard uncertainty's first digit; to four digits where there is none.
-func honest(x, u float64) float64 {
-	if x == 0 {
-		return 0
-	}
-	place := math.Floor(math.Log10(math.Abs(x))) - 3
-	if u > 0 {
-		place = math.Max(place, math.Floor(math.Log10(u)))
-	}
-	// Dividing by a whole power of ten keeps 0.47 exact where multiplying by its inverse does not.
-	if place < 0 {
-		scale := math.Pow10(int(-place))
-		return math.Round(x*scale) / scale
-	}
-	scale := math.Pow10(int(place))
-	return math.Round(x/scale) * scale
 }

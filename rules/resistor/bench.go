@@ -4,23 +4,21 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
 
-var (
-	kelvinSource = screening.Source{
-		Document: "four-terminal measuring notes: leads 0.1 to 0.2 Ω each, contacts up to 0.15 Ω, four wires below 10 Ω", Status: screening.Published,
-	}
-	fingersSource = screening.Source{Document: "bench practice", Status: screening.CommonPractice}
-)
+var kelvinSource = screening.Source{
+	Document: "four-terminal measuring notes: leads 0.1 to 0.2 Ω each, contacts up to 0.15 Ω, four wires below 10 Ω", Status: screening.Published,
+}
 
 const (
-	fourWireBelow = 10.0  // Ω
-	fingersAbove  = 100e3 // Ω; a hand across the probes is of the order of a megohm
-	testCurrent   = 0.1   // A, what a bench supply regulates well
-	testShare     = 0.1   // of the rated power, so that the reading does not warm the part
-	smallestPower = 0.125 // W, taken where none is claimed
+	fourWireBelow = 10.0  // Ω (published: kelvinSource)
+	fingersAbove  = 100e3 // Ω; a hand across the probes is of the order of a megohm (common practice)
+	testCurrent   = 0.1   // A, what a bench supply regulates well (house)
+	testShare     = 0.1   // of the rated power, so that the reading does not warm the part (house)
+	smallestPower = 0.125 // W, taken where none is claimed (house)
 )
 
 // cautions warns before measuring in a set, and says how to dry safely where drying is the answer.
@@ -33,7 +31,7 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 			Values: map[string]float64{
 				"safe-voltage": screening.SafeVoltage,
 			},
-			Source: screening.Source{Document: "bench practice", Status: screening.CommonPractice},
+			Source: book.Practice,
 		}}
 	case screening.AtVerdict:
 		if dries(part) {
@@ -99,7 +97,7 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 		lines = append(lines, "do not touch both probe tips: your body is a resistor of about a megohm")
 	}
 	return []screening.Recipe{{
-		Title: "Ohms range, two wires", Lines: lines, Values: map[string]float64{"expected-resistance": nominal}, Source: fingersSource,
+		Title: "Ohms range, two wires", Lines: lines, Values: map[string]float64{"expected-resistance": nominal}, Source: book.Practice,
 	}}
 }
 

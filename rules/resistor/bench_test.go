@@ -1,13 +1,12 @@
 package resistor
 
 import (
-	"encoding/csv"
 	"math"
-	"os"
 	"strconv"
 	"strings"
 	"testing"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -101,24 +100,16 @@ func TestRecipes(t *testing.T) {
 
 // Every value of IEC 60063 as listed in testdata/e-series.csv (published list, checked against a public one).
 func TestPreferredSeries(t *testing.T) {
-	text, err := os.ReadFile("testdata/e-series.csv")
-	if err != nil {
-		t.Fatal(err)
-	}
-	rows, err := csv.NewReader(strings.NewReader(string(text))).ReadAll()
-	if err != nil || len(rows) != 1+3+6+12+24+48+96+192 {
-		t.Fatalf("%d rows, %v", len(rows), err)
-	}
-	for _, row := range rows[1:] {
-		n, _ := strconv.Atoi(row[0][1:])
-		i, _ := strconv.Atoi(row[1])
-		want, _ := strconv.ParseFloat(row[2], 64)
+	for _, ref := range booktest.Reference(t, "testdata/e-series.csv", 3+6+12+24+48+96+192) {
+		n, _ := strconv.Atoi(ref["series"][1:])
+		i, _ := strconv.Atoi(ref["index"])
+		want := booktest.Number(t, ref["value_in_decade_1_to_10"], math.NaN())
 		if got := seriesValue(n, i); math.Abs(got-want) > 1e-9 {
-			t.Errorf("%s[%d] = %v, want %v", row[0], i, got, want)
+			t.Errorf("%s[%d] = %v, want %v", ref["series"], i, got, want)
 		}
 		for decade := -2; decade <= 7; decade++ {
 			if !inSeries(n, want*math.Pow10(decade)) {
-				t.Errorf("%v·10^%d is not found in %s", want, decade, row[0])
+				t.Errorf("%v·10^%d is not found in %s", want, decade, ref["series"])
 			}
 		}
 	}
@@ -143,18 +134,8 @@ func TestPreferredSeries(t *testing.T) {
 		}
 	}
 	j := judge(t, "250k 10% resistance=251k", screening.DefaultPolicy())
-	if j.Verdict != screening.Accept || !strings.Contains(texts(j), "not a preferred value") {
-		t.Errorf("250 kΩ: %s\n%s", j.Verdict, texts(j))
-	}
-}
-
-func TestHonestDigits(t *testing.T) {
-	for _, tt := range []struct{ x, u, want float64 }{
-		{5031.7, 29, 5030}, {5031.7, 0, 5032}, {0.4721, 0.17, 0.5}, {760, 4.6, 760}, {1234567, 7200, 1235000}, {0, 1, 0},
-	} {
-		if got := honest(tt.x, tt.u); math.Abs(got-tt.want) > 1e-9 {
-			t.Errorf("%v ± %v is %v, want %v", tt.x, tt.u, got, tt.want)
-		}
+	if j.Verdict != screening.Accept || !strings.Contains(booktest.Texts(j), "not a preferred value") {
+		t.Errorf("250 kΩ: %s\n%s", j.Verdict, booktest.Texts(j))
 	}
 }
 

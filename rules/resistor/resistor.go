@@ -15,8 +15,8 @@ import (
 // Kind is the kind's name.
 const Kind screening.Kind = "resistor"
 
-// Version names the state of this rulebook's tables.
-const Version = "resistor 2"
+// edition goes up when a rule in code changes; a change of the tables changes the version by itself.
+const edition = "3"
 
 // Power is a rating only: the power that the part claims to stand at 70 °C, or at 25 °C on old and wirewound types.
 var Power = screening.Definition{Name: "power", Symbol: "P", Label: "rated power", Unit: quantity.Watt}
@@ -26,7 +26,7 @@ const valueCriterion screening.Criterion = "resistance"
 // Book returns the rulebook.
 func Book() *screening.Rulebook {
 	return &screening.Rulebook{
-		Kind: Kind, Label: "fixed resistor", Tables: Version,
+		Kind: Kind, Label: "fixed resistor", Tables: book.Version(Kind, edition, technologiesCSV, dryingCSV),
 		Claims: claims(), Bench: bench(), Look: look(),
 		Complete: complete, Limits: limits, Adjust: adjust, Lesser: lesser, Untested: untested, Cautions: cautions, Recipes: recipes,
 	}
@@ -96,14 +96,14 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 		tolerance = screening.RangeRating(screening.Tolerance, -tech.tolerance, tech.tolerance)
 		tolerance.Source = tech.source
 		c = c.WithRating(tolerance)
-		notes = append(notes, note(screening.Tolerance.Name, "no tolerance claimed: taken as %s, %s", tolerance, tolerance.Source))
+		notes = append(notes, book.Note(screening.Tolerance.Name, "no tolerance claimed: taken as %s, %s", tolerance, tolerance.Source))
 	case tolerance.Low <= -1 || tolerance.High >= 10 || tolerance.Low > 0 || tolerance.High < 0:
 		return c, nil, fmt.Errorf("tolerance: %s is no tolerance of a resistor; it is a band such as ±5 %%", tolerance)
 	default:
 		tightest = width(tolerance)
 	}
 	if ok && !preferred(nominal, tightest) {
-		notes = append(notes, note(screening.Resistance.Name, "%s is not a preferred value of IEC 60063 at this tolerance: read the marking "+
+		notes = append(notes, book.Note(screening.Resistance.Name, "%s is not a preferred value of IEC 60063 at this tolerance: read the marking "+
 			"again (old parts carry round values such as 250 kΩ)", quantity.Format(nominal, quantity.Ohm, 0)))
 	}
 	return c, notes, nil
@@ -115,10 +115,6 @@ func technologyNames() string {
 		names = append(names, t.name)
 	}
 	return strings.Join(names, ", ")
-}
-
-func note(of screening.Characteristic, format string, args ...any) screening.Reason {
-	return screening.Reason{Code: screening.CodeNote, Of: of, Text: fmt.Sprintf(format, args...)}
 }
 
 // width is the larger side of a tolerance, as a ratio.
@@ -152,12 +148,10 @@ func bandFormula(c screening.Claim) string {
 // toleranceSource is where the band comes from: the part's own print, the letter's meaning, or the default's source.
 func toleranceSource(t screening.Rating) screening.Source {
 	switch {
-	case t.Source.Status != screening.NoStatus:
-		return t.Source
 	case book.ToleranceSource(t.Typed).Status != screening.NoStatus:
 		return book.ToleranceSource(t.Typed)
 	}
-	return screening.Source{Document: "the tolerance claimed for the part", Status: screening.Published}
+	return book.SourceOf(&t)
 }
 
 func limits(c screening.Claim) ([]screening.Limit, error) {

@@ -1,8 +1,6 @@
 package resistor
 
-import (
-	"math"
-)
+import "math"
 
 // e24 is the only preferred series that departs from rounding (in eight places): IEC 60063.
 var e24 = [24]float64{

@@ -12,6 +12,7 @@ import (
 	"sync"
 	"unicode"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 )
 
@@ -23,7 +24,11 @@ const (
 )
 
 // Version names the state of the tables; a verdict under another version is stale.
-func Version() string { return "types 1" }
+func Version() string { return version() }
+
+var version = sync.OnceValue(func() string {
+	return book.Version("types", "2", transistorsCSV, diodesCSV, zenersCSV, groupsCSV, pointsCSV)
+})
 
 // Row is what one type number promises.
 type Row struct {

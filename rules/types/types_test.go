@@ -1,10 +1,7 @@
 package types
 
 import (
-	"encoding/csv"
 	"math"
-	"os"
-	"path/filepath"
 	"slices"
 	"strconv"
 	"strings"
@@ -12,6 +9,7 @@ import (
 
 	"github.com/google/go-cmp/cmp"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
 )
 
@@ -51,39 +49,6 @@ func TestEveryFigureHasASourceAndAStatus(t *testing.T) {
 	}
 }
 
-// reference reads a reference table: the figures as they were collected, kept apart from the program's own tables so that a slip in
-// either shows.
-func reference(t *testing.T, name string) []map[string]string {
-	t.Helper()
-	f, err := os.Open(filepath.Join("testdata", name))
-	if err != nil {
-		t.Fatal(err)
-	}
-	defer func() { _ = f.Close() }()
-	lines, err := csv.NewReader(f).ReadAll()
-	if err != nil {
-		t.Fatal(err)
-	}
-	var rows []map[string]string
-	for _, line := range lines[1:] {
-		row := map[string]string{}
-		for i, cell := range line {
-			row[lines[0][i]] = cell
-		}
-		rows = append(rows, row)
-	}
-	return rows
-}
-
-func number(t *testing.T, text string) float64 {
-	t.Helper()
-	x, err := strconv.ParseFloat(text, 64)
-	if err != nil {
-		t.Fatalf("reference holds %q", text)
-	}
-	return x
-}
-
 // same compares one figure of a row with the reference's cell in its unit; an empty cell must be absent.
 func same(t *testing.T, name, what, cell string, scale, got float64, present bool) {
 	t.Helper()
@@ -93,7 +58,7 @@ func same(t *testing.T, name, what, cell string, scale, got float64, present boo
 		}
 		return
 	}
-	want := number(t, cell) * scale
+	want := booktest.Number(t, cell, math.NaN()) * scale
 	if !present || math.Abs(got-want) > 1e-9*math.Abs(want) {
 		t.Errorf("%s %s: %g, reference %g", name, what, got, want)
 	}
@@ -110,11 +75,7 @@ func (r Row) most(of screening.Characteristic) (float64, bool) {
 }
 
 func TestTransistorsEqualTheReference(t *testing.T) {
-	rows := reference(t, "types-ref.csv")
-	if len(rows) != 99 {
-		t.Fatalf("reference has %d rows, want 99", len(rows))
-	}
-	for _, ref := range rows {
+	for _, ref := range booktest.Reference(t, "testdata/types-ref.csv", 99) {
 		name := ref["type"]
 		row, ok := Lookup(Bipolar, name)
 		if !ok {
@@ -177,11 +138,7 @@ func sameStatus(t *testing.T, name, tag string, row Row) {
 }
 
 func TestDiodesEqualTheReference(t *testing.T) {
-	rows := reference(t, "diode-ref.csv")
-	if len(rows) != 54 {
-		t.Fatalf("reference has %d rows, want 54", len(rows))
-	}
-	for _, ref := range rows {
+	for _, ref := range booktest.Reference(t, "testdata/diode-ref.csv", 54) {
 		name := ref["type"]
 		row, ok := Lookup(Diode, name)
 		if !ok {
@@ -210,11 +167,7 @@ func TestDiodesEqualTheReference(t *testing.T) {
 }
 
 func TestZenersEqualTheReference(t *testing.T) {
-	rows := reference(t, "zener-ref.csv")
-	if len(rows) != 74 {
-		t.Fatalf("reference has %d rows, want 74", len(rows))
-	}
-	for _, ref := range rows {
+	for _, ref := range booktest.Reference(t, "testdata/zener-ref.csv", 74) {
 		name := ref["type"]
 		row, ok := Lookup(Zener, name)
 		if !ok {
@@ -266,11 +219,7 @@ func TestAgainstASecondTable(t *testing.T) {
 		"PN2222A": "1 A there", "S8050": "0.7 A and 20 V there", "S8550": "0.7 A and 20 V there", "BF199": "0.05 A there",
 	}
 	var found []string
-	rows := reference(t, "types-crosscheck.csv")
-	if len(rows) != 41 {
-		t.Fatalf("%d rows, want 41", len(rows))
-	}
-	for _, ref := range rows {
+	for _, ref := range booktest.Reference(t, "testdata/types-crosscheck.csv", 41) {
 		name := ref["type"]
 		row, ok := Lookup(Bipolar, name)
 		if !ok {
@@ -279,7 +228,7 @@ func TestAgainstASecondTable(t *testing.T) {
 		}
 		ic, _ := row.nominal("ic-max")
 		vceo, _ := row.nominal("vceo")
-		agrees := ic == number(t, ref["ic_kicad"]) && vceo == number(t, ref["vceo_kicad"])
+		agrees := ic == booktest.Number(t, ref["ic_kicad"], math.NaN()) && vceo == booktest.Number(t, ref["vceo_kicad"], math.NaN())
 		if !agrees {
 			found = append(found, name)
 		}

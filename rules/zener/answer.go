@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -24,6 +25,7 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		}
 		if f.Limit.Note == noClaim || f.Limit.Note == noCurrent {
 			f.Outcome, f.Probability, f.Margin, f.Unconfirmed, f.Why = screening.Missing, math.NaN(), math.NaN(), false, f.Limit.Note
+			f.Limit.Note = "" // said already
 			if f.Reading != nil && !f.Reading.At.Has(screening.Current) {
 				f.Why, f.Unstated = "the current of the reading is not stated: vz@5mA=…", screening.Current
 			}
@@ -32,13 +34,13 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 			continue
 		}
 		if f.Outcome == screening.Missing && f.Converted != nil {
-			reasons = append(reasons, note("%s", f.Converted.Rule))
+			reasons = append(reasons, book.Note(VZ.Name, "%s", f.Converted.Rule))
 		}
 		if text := failWords(f); text != "" {
-			reasons = append(reasons, note("%s", text))
+			reasons = append(reasons, book.Note(VZ.Name, "%s", text))
 		}
 		if text := overPower(part.Claim, f.Reading); text != "" {
-			reasons = append(reasons, note("%s", text))
+			reasons = append(reasons, book.Note(VZ.Name, "%s", text))
 		}
 	}
 	return findings, reasons
@@ -128,13 +130,13 @@ var houseSource = screening.Source{Document: "taken at what was measured", Statu
 
 // claimOf is the claim with a voltage of explicit bounds, which the type's row does not replace, and where current is not 0 a test current.
 func claimOf(c screening.Claim, nominal, tolerance, current float64) screening.Claim {
-	c.Ratings = without(without(c.Ratings, VZ.Name), screening.Tolerance.Name)
+	c.Ratings = book.Without(book.Without(c.Ratings, VZ.Name), screening.Tolerance.Name)
 	vz := screening.NominalRating(VZ, nominal)
 	vz.Low, vz.High = nominal*(1-tolerance), nominal*(1+tolerance)
 	vz.Typed, vz.Source = fmt.Sprintf("%s ±%.0f %%", volts(nominal), 100*tolerance), houseSource
 	c.Ratings = append([]screening.Rating{vz}, c.Ratings...)
 	if current > 0 {
-		c.Ratings = without(c.Ratings, IZT.Name)
+		c.Ratings = book.Without(c.Ratings, IZT.Name)
 		izt := screening.NominalRating(IZT, current)
 		izt.Typed = amperes(current)
 		c.Ratings = append(c.Ratings, izt)
@@ -150,7 +152,7 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 	if !stated || i <= 0 || r.Value < noZener {
 		return nil
 	}
-	nominal := honest(r.Value, r.U)
+	nominal := book.Honest(r.Value, r.U, 3)
 	for _, t := range ladder {
 		if t < asMeasuredTolerance {
 			continue
@@ -171,20 +173,6 @@ func asMeasured(c screening.Claim, f *screening.Finding) []screening.Lesser {
 		}}
 	}
 	return nil
-}
-
-// honest rounds x to the decimal place of its standard uncertainty's first digit; to three digits where there is none.
-func honest(x, u float64) float64 {
-	place := math.Floor(math.Log10(math.Abs(x))) - 2
-	if u > 0 {
-		place = math.Max(place, math.Floor(math.Log10(u)))
-	}
-	if place < 0 {
-		scale := math.Pow10(int(-place))
-		return math.Round(x*scale) / scale
-	}
-	scale := math.Pow10(int(place))
-	return math.Round(x/scale) * scale
 }
 
 // untested says that power is not tested. What was wanted and not measured, such as the slope, is listed without it.

@@ -4,12 +4,12 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
 
 const (
-	touchVoltage  = 60.0 // V DC, from which a supply can hurt (second-hand)
 	warmPower     = 0.1  // W in the part, from which its voltage drifts as it warms (house)
 	settleSeconds = 90.0 // s after which 1N4728A to 1N4764A are read, leads at 30 °C (published)
 	firstCurrent  = 5e-3 // A, to begin with on a part of unknown power (house)
@@ -22,12 +22,9 @@ var supplies = []float64{5, 9, 12, 18, 24, 30, 48, 60, 120, 200, 300}
 // preferred are the values of IEC 60063 E12 in which the series resistor is given.
 var preferred = []float64{1, 1.2, 1.5, 1.8, 2.2, 2.7, 3.3, 3.9, 4.7, 5.6, 6.8, 8.2, 10}
 
-var (
-	practice     = screening.Source{Document: "bench practice", Status: screening.CommonPractice}
-	settleSource = screening.Source{
-		Document: "Fairchild 1N4728A-1N4764A data sheet", Clause: "VZ is read 90 s after switching on, leads at 30 °C", Status: screening.Published,
-	}
-)
+var settleSource = screening.Source{
+	Document: "Fairchild 1N4728A-1N4764A data sheet", Clause: "VZ is read 90 s after switching on, leads at 30 °C", Status: screening.Published,
+}
 
 // drive is a supply and a series resistor that send a current through a Zener: R = (Vs − Vz)/I, in the nearest E12 value; watts in the
 // resistor and in the part; the current that then flows.
@@ -97,7 +94,7 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 		v, _ := l.At.Get(screening.Voltage)
 		ohms := nearest(v / 1e-3)
 		return []screening.Recipe{{
-			Title: "Reverse current below the knee", Source: practice,
+			Title: "Reverse current below the knee", Source: book.Practice,
 			Lines: []string{
 				fmt.Sprintf("supply %s, %s in series, cathode (the band) to plus; read the volts across the resistor", volts(v), quantity.Format(ohms, quantity.Ohm, 0)),
 				"current = volts ÷ " + quantity.Format(ohms, quantity.Ohm, 0),
@@ -107,7 +104,7 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 	case l.On == screening.VF.Name:
 		return []screening.Recipe{{
 			Title: "Forward voltage", Lines: []string{"diode test, red probe on the anode (the end without the band): it reads like any silicon diode"},
-			Source: practice,
+			Source: book.Practice,
 		}}
 	}
 	return nil
@@ -117,18 +114,18 @@ func voltageRecipe(c screening.Claim, vz, current float64) screening.Recipe {
 	d := driveFor(vz, current)
 	lines := []string{
 		fmt.Sprintf("supply %s, %s (%s in it) in series, cathode (the band) to plus: about %s", volts(d.supply), quantity.Format(d.ohms, quantity.Ohm, 0),
-			about(d.watts, quantity.Watt), about(d.current, quantity.Ampere)),
+			book.About(d.watts, quantity.Watt), book.About(d.current, quantity.Ampere)),
 		"read the volts across the Zener, and those across the resistor: current = those ÷ " + quantity.Format(d.ohms, quantity.Ohm, 0),
 		fmt.Sprintf("type both: vz@%s=…; from %s to %s it counts", typed(current), amperes(least*current), amperes(most*current)),
 	}
 	if d.part >= warmPower {
-		lines = append(lines, fmt.Sprintf("it takes %s and warms: read it %.0f s after switching on, leads clamped cool", about(d.part, quantity.Watt), settleSeconds))
+		lines = append(lines, fmt.Sprintf("it takes %s and warms: read it %.0f s after switching on, leads clamped cool", book.About(d.part, quantity.Watt), settleSeconds))
 	}
 	if _, ok := testCurrent(c); !ok {
 		lines = append(lines, "its test current is not known: "+amperes(current)+" is only to begin with; look it up and state izt")
 	}
 	return screening.Recipe{
-		Title: "Zener voltage at " + amperes(current), Lines: lines, Source: practice,
+		Title: "Zener voltage at " + amperes(current), Lines: lines, Source: book.Practice,
 		Values: map[string]float64{
 			"supply": d.supply, "series-resistance": d.ohms, "resistor-power": d.watts, "test-current": d.current, "part-power": d.part,
 		},
@@ -140,10 +137,10 @@ func unknownRecipe() screening.Recipe {
 	const supply = 30.0
 	ohms := nearest(supply / firstCurrent)
 	return screening.Recipe{
-		Title: "Zener of unknown voltage", Source: practice,
+		Title: "Zener of unknown voltage", Source: book.Practice,
 		Lines: []string{
 			fmt.Sprintf("supply %s, %s (%s in it at most) in series, cathode (the band) to plus", volts(supply), quantity.Format(ohms, quantity.Ohm, 0),
-				about(supply*supply/ohms, quantity.Watt)),
+				book.About(supply*supply/ohms, quantity.Watt)),
 			"read the volts across the Zener, and those across the resistor: current = those ÷ " + quantity.Format(ohms, quantity.Ohm, 0),
 			"less than 1 V: turn it round. The whole supply: it breaks down above that, or is no Zener. Else type both: vz@3mA=12.1",
 		},
@@ -155,10 +152,10 @@ func unknownRecipe() screening.Recipe {
 func slopeRecipe(vz, current float64) screening.Recipe {
 	d := driveFor(vz, current)
 	return screening.Recipe{
-		Title: "Slope resistance by two currents", Source: practice,
+		Title: "Slope resistance by two currents", Source: book.Practice,
 		Lines: []string{
 			fmt.Sprintf("as for the Zener voltage, supply %s through %s; set the supply for %s, then for %s", volts(d.supply),
-				quantity.Format(d.ohms, quantity.Ohm, 0), about(0.8*current, quantity.Ampere), about(1.2*current, quantity.Ampere)),
+				quantity.Format(d.ohms, quantity.Ohm, 0), book.About(0.8*current, quantity.Ampere), book.About(1.2*current, quantity.Ampere)),
 			"slope = difference of the Zener's volts ÷ difference of the currents; read quickly, warming adds its own slope",
 		},
 		Values: map[string]float64{"supply": d.supply, "series-resistance": d.ohms, "resistor-power": d.watts, "test-current": current},
@@ -176,7 +173,7 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 		text := "power unknown: assume the smallest for this body, and keep volts × amperes below " + quantity.Format(smallestPower, quantity.Watt, 0)
 		values := map[string]float64{"power": smallestPower}
 		if known {
-			text += ", " + about(smallestPower/vz, quantity.Ampere) + " at " + volts(vz)
+			text += ", " + book.About(smallestPower/vz, quantity.Ampere) + " at " + volts(vz)
 			values["highest-current"] = smallestPower / vz
 		}
 		all = append(all, screening.Caution{
@@ -191,36 +188,21 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 		all = append(all, screening.Caution{
 			Code: "test-heat", Level: screening.Notice,
 			Text: fmt.Sprintf("at %s it takes %s: it gets hot, and its voltage drifts as it does. Read it %.0f s after switching on, leads clamped "+
-				"cool, then switch off", amperes(current), about(p, quantity.Watt), settleSeconds),
+				"cool, then switch off", amperes(current), book.About(p, quantity.Watt), settleSeconds),
 			Values: map[string]float64{"part-power": p, "test-current": current, "time": settleSeconds}, Source: settleSource,
 		})
 	}
-	if d := driveFor(vz, current); d.supply >= touchVoltage {
+	if d := driveFor(vz, current); d.supply >= book.TouchVoltage {
 		all = append(all, screening.Caution{
 			Code: "test-voltage", Level: screening.Danger,
 			Text: fmt.Sprintf("this test needs %s: from %.0f V a supply can hurt, and kill. Current limited by %s, one hand, nobody alone, switched "+
-				"off and measured below %.0f V before you touch it; do as your local code and licensed practice say", volts(d.supply), touchVoltage,
+				"off and measured below %.0f V before you touch it; do as your local code and licensed practice say", volts(d.supply), book.TouchVoltage,
 				quantity.Format(d.ohms, quantity.Ohm, 0), float64(screening.SafeVoltage)),
 			Values: map[string]float64{"supply": d.supply, "series-resistance": d.ohms, "safe-voltage": screening.SafeVoltage},
-			Source: screening.Source{Document: "60 V as the touch limit of equipment safety standards", Status: screening.SecondHand},
+			Source: book.TouchSource,
 		})
 	}
 	return all
-}
-
-// about prints a computed value in two figures, without an empty one.
-func about(x float64, unit quantity.Unit) string {
-	if x <= 0 {
-		return quantity.Format(x, unit, 0)
-	}
-	figures := 2
-	if math.Mod(math.Round(x/math.Pow10(int(math.Floor(math.Log10(x)))-1)), 10) == 0 {
-		figures = 1
-	}
-	if unit == quantity.Watt {
-		return quantity.Format(x, quantity.Watt, figures)
-	}
-	return quantity.Format(x, unit, figures)
 }
 
 // typed prints a current as it is typed in a reading's condition.

@@ -5,6 +5,7 @@ import (
 	"math"
 	"slices"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -27,7 +28,7 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	if name := c.Trait(screening.TraitType); name != "" {
 		row, ok := types.Lookup(Kind, name)
 		if !ok {
-			notes = append(notes, note("type %s is not in the table: claim its voltage, tolerance and test current", name))
+			notes = append(notes, book.Note(VZ.Name, "type %s is not in the table: claim its voltage, tolerance and test current", name))
 		} else {
 			var err error
 			if c, err = withRow(c, row); err != nil {
@@ -41,13 +42,9 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 		rating := screening.RangeRating(screening.Tolerance, f.low, f.high)
 		rating.Source = f.source
 		c = c.WithRating(rating)
-		notes = append(notes, note("no tolerance claimed: taken as %s, which may not reject (%s)", rating, f.source.Status))
+		notes = append(notes, book.Note(VZ.Name, "no tolerance claimed: taken as %s, which may not reject (%s)", rating, f.source.Status))
 	}
 	return c, notes, nil
-}
-
-func note(format string, args ...any) screening.Reason {
-	return screening.Reason{Code: screening.CodeNote, Of: VZ.Name, Text: fmt.Sprintf(format, args...)}
 }
 
 // pointlike reports whether a rating states a nominal and no bounds.
@@ -64,7 +61,7 @@ func withRow(c screening.Claim, row types.Row) (screening.Claim, error) {
 			return c, fmt.Errorf("vz: %s is claimed, but %s is %s", vz, row.Type, tabled)
 		}
 		if !toleranceClaimed {
-			c.Ratings = without(c.Ratings, VZ.Name)
+			c.Ratings = book.Without(c.Ratings, VZ.Name)
 			own = c
 		}
 	}
@@ -98,23 +95,13 @@ func withRow(c screening.Claim, row types.Row) (screening.Claim, error) {
 	return c, nil
 }
 
-func without(ratings []screening.Rating, of screening.Characteristic) []screening.Rating {
-	var kept []screening.Rating
-	for _, r := range ratings {
-		if r.Of != of {
-			kept = append(kept, r)
-		}
-	}
-	return kept
-}
-
 // band returns the bounds of the voltage that a claim implies and their source.
 func band(c screening.Claim) (low, high float64, source screening.Source, ok bool) {
 	vz, claimed := c.Rating(VZ.Name, "")
 	if !claimed {
 		return 0, 0, source, false
 	}
-	source = sourceOf(vz)
+	source = book.SourceOf(&vz)
 	if !pointlike(vz) {
 		return vz.Low, vz.High, source, true
 	}
@@ -127,15 +114,7 @@ func toleranceSource(t screening.Rating) screening.Source {
 	if l, ok := load().letters[t.Typed]; ok && t.Source.Status == screening.NoStatus {
 		return l.source
 	}
-	return sourceOf(t)
-}
-
-// sourceOf is the source of a rating: the table's, or the part's own claim.
-func sourceOf(r screening.Rating) screening.Source {
-	if r.Source.Status != screening.NoStatus {
-		return r.Source
-	}
-	return screening.Source{Document: "the rating claimed for the part", Status: screening.Published}
+	return book.SourceOf(&t)
 }
 
 // testCurrent returns the current in amperes at which the voltage is claimed.

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -55,7 +56,7 @@ func toTestCurrent(c screening.Claim, r screening.Reading, l screening.Limit) sc
 	result.U = math.Abs(whole) / 2 / math.Sqrt(3)
 	result.Reading.Value = r.Value + whole/2
 	result.Reading.U = math.Hypot(r.U, result.U)
-	result.Source = screening.Source{Document: sourceOf(slope).Document, Clause: "highest slope resistance", Status: screening.Derived}
+	result.Source = screening.Source{Document: book.SourceOf(&slope).Document, Clause: "highest slope resistance", Status: screening.Derived}
 	result.Rule = fmt.Sprintf("%+.2g V ± %.2g V from %s to %s: 0 to %s of slope", whole/2, math.Abs(whole)/2, amperes(i), amperes(izt),
 		quantity.Format(slope.High, quantity.Ohm, 0))
 	result.Reading.Rule = result.Rule

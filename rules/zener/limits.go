@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/junction"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -21,19 +22,22 @@ func limit(of screening.Definition, criterion screening.Criterion, need screenin
 	}
 }
 
+// mostLimits is how many limits a Zener of the table has.
+const mostLimits = 4
+
 func limits(c screening.Claim) ([]screening.Limit, error) {
-	all := []screening.Limit{voltageLimit(c)}
+	all := append(make([]screening.Limit, 0, mostLimits), voltageLimit(c))
 	if r, ok := slopeMost(c); ok {
 		izt, _ := testCurrent(c)
 		l := limit(ZZ, slopeCriterion, screening.Wanted)
-		l.At, l.High, l.Source = screening.At(screening.Current, izt), r.High, sourceOf(r)
+		l.At, l.High, l.Source = screening.At(screening.Current, izt), r.High, book.SourceOf(&r)
 		all = append(all, l)
 	}
 	for _, r := range c.Ratings {
 		if v, ok := r.At.Get(screening.Voltage); ok && v > 0 && r.Of == screening.IR.Name && !math.IsInf(r.High, 1) {
 			l := limit(screening.IR, leakageCriterion, screening.Wanted)
 			l.At = screening.At(screening.Voltage, v).With(screening.PartTemperature, junction.Reference)
-			l.High, l.Source = r.High, sourceOf(r)
+			l.High, l.Source = r.High, book.SourceOf(&r)
 			all = append(all, l)
 		}
 	}
@@ -72,7 +76,20 @@ func bandFormula(c screening.Claim, low, high float64) string {
 		return fmt.Sprintf("%s %s = %s", volts(vz.Nominal), t, text)
 	}
 	if name := c.Trait(screening.TraitType); name != "" && vz.Typed == "" {
+		if t, even := evenTolerance(vz, low, high); even {
+			return fmt.Sprintf("%s: %s ±%.3g %% = %s", name, volts(vz.Nominal), 100*t, text)
+		}
 		return name + " is printed as " + text
 	}
 	return text + " as claimed"
+}
+
+// evenTolerance returns the tolerance that bounds lie at on both sides of the nominal, in whole tenths of a percent; not so for bounds that a
+// sheet rounds.
+func evenTolerance(vz screening.Rating, low, high float64) (tolerance float64, even bool) {
+	if !vz.HasNominal() {
+		return 0, false
+	}
+	t := math.Round(1e3*(high/vz.Nominal-1)) / 1e3
+	return t, math.Abs(high/vz.Nominal-1-t) < 1e-9 && math.Abs(1-low/vz.Nominal-t) < 1e-9
 }

@@ -17,8 +17,8 @@ import (
 // Kind is the kind's name.
 const Kind = types.Zener
 
-// Version names the state of this rulebook's tables.
-const Version = "zener 2"
+// edition goes up when a rule in code changes; a change of the tables changes the version by itself.
+const edition = "3"
 
 // The characteristics of a Zener.
 var (
@@ -41,21 +41,17 @@ const (
 // Book returns the rulebook.
 func Book() *screening.Rulebook {
 	return &screening.Rulebook{
-		Kind: Kind, Label: "Zener diode", Tables: Version + ", " + types.Version(),
+		Kind: Kind, Label: "Zener diode", Tables: book.Version(Kind, edition, figuresCSV, lettersCSV) + ", " + types.Version(),
 		Claims: claims(), Bench: bench(), Look: []screening.Check{book.MainsOrCracked()},
 		Complete: complete, Limits: limits, Convert: convert, Adjust: adjust, Lesser: lesser, Untested: untested, Cautions: cautions,
 		Recipes: recipes,
 	}
 }
 
-func trait(name, label string) screening.Definition {
-	return screening.Definition{Name: screening.Characteristic(name), Label: label}
-}
-
 func claims() []screening.Field {
 	return []screening.Field{
 		{
-			Definition: trait(screening.TraitType, "type"), Trait: true, Example: "BZX79-C5V1", AcceptText: acceptType,
+			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "BZX79-C5V1", AcceptText: acceptType,
 			Help: "the type number as printed; a known one says all the rest",
 		},
 		{Definition: VZ, Example: "5V1", Help: "the voltage printed on it; leave it out where nothing is printed"},
@@ -67,8 +63,8 @@ func claims() []screening.Field {
 		{Definition: screening.Ptot, Example: "500mW", Help: "the power it claims; not tested"},
 		{Definition: ZZ, Example: "rated:zz@5mA=..60", Help: "the highest slope resistance its sheet allows, at the test current"},
 		{Definition: screening.IR, Example: "rated:ir@2V=..1uA", Help: "the highest reverse current its sheet allows, at a voltage"},
-		{Definition: trait(screening.TraitCase, "case"), Trait: true, Example: "case=DO-35", Help: "the outline"},
-		{Definition: trait(screening.TraitDated, "maker's date"), Trait: true, Example: "dated=1974", Help: "year or decade of making"},
+		book.CaseField("case=DO-35"),
+		book.DatedField(),
 	}
 }
 

@@ -1,16 +1,14 @@
 package zener
 
 import (
-	"encoding/csv"
 	"math"
-	"os"
 	"slices"
-	"strconv"
 	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
 
+	"goodbin/rules/internal/booktest"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/entry"
@@ -20,36 +18,7 @@ import (
 // judge judges a part from the words that a person types.
 func judge(t testing.TB, words string, policy screening.Policy) screening.Judgement {
 	t.Helper()
-	p, err := entry.Words(Book(), strings.Fields(words))
-	if err != nil {
-		t.Fatalf("%s: %v", words, err)
-	}
-	j, err := screening.Judge(Book(), screening.Part{Claim: p.Claim, Look: p.Look, Readings: p.Readings}, policy)
-	if err != nil {
-		t.Fatalf("%s: %v", words, err)
-	}
-	return j
-}
-
-func exactly() screening.Policy {
-	p := screening.DefaultPolicy()
-	p.Rule = screening.SimpleAcceptance
-	p.Meters = map[string]screening.Meter{"": screening.ExactMeter()}
-	return p
-}
-
-func texts(j screening.Judgement) string {
-	var b strings.Builder
-	for _, r := range j.Reasons {
-		b.WriteString(r.Code + ": " + r.Text + "\n")
-	}
-	for _, s := range j.Next {
-		b.WriteString(s.Code + ": " + s.Text + "\n")
-	}
-	for _, u := range j.Untested {
-		b.WriteString("untested: " + u + "\n")
-	}
-	return b.String()
+	return booktest.Judge(t, Book(), words, policy)
 }
 
 var verdictCases = []struct {
@@ -97,26 +66,18 @@ func TestVerdicts(t *testing.T) {
 			j := judge(t, tt.words, screening.DefaultPolicy())
 			seen[j.Verdict]++
 			if j.Verdict != tt.verdict {
-				t.Errorf("%s: %s, want %s\n%s", tt.words, j.Verdict, tt.verdict, texts(j))
+				t.Errorf("%s: %s, want %s\n%s", tt.words, j.Verdict, tt.verdict, booktest.Texts(j))
 			}
-			if !strings.Contains(texts(j), tt.says) {
-				t.Errorf("%s: nothing says %q:\n%s", tt.words, tt.says, texts(j))
+			if !strings.Contains(booktest.Texts(j), tt.says) {
+				t.Errorf("%s: nothing says %q:\n%s", tt.words, tt.says, booktest.Texts(j))
 			}
-			as := ""
-			if j.RegradedAs != nil {
-				as = j.RegradedAs.Text
-			}
-			if tt.as == "" && as != "" || !strings.Contains(as, tt.as) {
-				t.Errorf("%s: as %q, want %q", tt.words, as, tt.as)
+			if booktest.NotSoAs(j, tt.as) {
+				t.Errorf("%s: as %q, want %q", tt.words, booktest.As(j), tt.as)
 			}
 		})
 	}
 	// There is no treatment for a Zener.
-	for _, v := range screening.Verdicts() {
-		if (v == screening.Treat) != (seen[v] == 0) {
-			t.Errorf("%d cases give %s", seen[v], v)
-		}
-	}
+	booktest.EveryVerdict(t, seen, screening.Treat)
 }
 
 // 20 mV is no junction's drop; only between 0.1 V and 1 V can it be a Zener turned round.
@@ -124,9 +85,22 @@ func TestWhatALowReadingLooksLike(t *testing.T) {
 	for words, want := range map[string]string{
 		"BZX79-C5V1 vz@5mA=20mV": "note: shorted\n", "BZX79-C5V1 vz@5mA=0.72": "note: turned round, or damaged", "BZX79-C5V1 vz@5mA=4.4": "note: below its band",
 	} {
-		said := texts(judge(t, words, screening.DefaultPolicy()))
+		said := booktest.Texts(judge(t, words, screening.DefaultPolicy()))
 		if !strings.Contains(said, want) || strings.Contains(said, "silicon diode") != strings.Contains(want, "turned round") {
 			t.Errorf("%s: want %q:\n%s", words, want, said)
+		}
+	}
+}
+
+// A formula says "printed" only of bounds that a sheet prints and no tolerance gives.
+func TestFormulasSayWhereTheBandComesFrom(t *testing.T) {
+	for typ, want := range map[string]string{
+		"BZX79-C5V1": "BZX79-C5V1 is printed as 4.8 V to 5.4 V", "1N4748A": "1N4748A: 22 V ±5 % = 20.9 V to 23.1 V",
+		"1N4733": "1N4733: 5.1 V ±10 % = 4.59 V to 5.61 V", "BZX79-C2V4": "BZX79-C2V4 is printed as 2.2 V to 2.6 V", "1N4740D": "1N4740D: 10 V ±1 % = 9.9 V to 10.1 V",
+	} {
+		c, _, err := complete(screening.Claim{}.WithTrait(screening.TraitType, typ))
+		if l := voltageLimit(c); err != nil || l.FormulaText() != want {
+			t.Errorf("%s: %q, %v; want %q", typ, l.FormulaText(), err, want)
 		}
 	}
 }
@@ -137,7 +111,7 @@ func TestNothingIsSaidTwice(t *testing.T) {
 	if slope := slices.ContainsFunc(j.NotTested, func(g screening.Gap) bool { return g.Of == ZZ.Name }); !slope || len(j.Untested) != 1 {
 		t.Errorf("not tested %+v, untested %q", j.NotTested, j.Untested)
 	}
-	said := texts(judge(t, "vz@5mA=8.24", screening.DefaultPolicy()))
+	said := booktest.Texts(judge(t, "vz@5mA=8.24", screening.DefaultPolicy()))
 	if strings.Count(said, "nothing is claimed") != 1 {
 		t.Errorf("an unmarked one:\n%s", said)
 	}
@@ -148,35 +122,17 @@ func TestC5V1AtItsBounds(t *testing.T) {
 	for reading, want := range map[string]screening.Verdict{
 		"4.79": screening.Reject, "4.80": screening.Accept, "5.40": screening.Accept, "5.41": screening.Reject,
 	} {
-		if j := judge(t, "BZX79-C5V1 vz@5mA="+reading, exactly()); j.Verdict != want {
-			t.Errorf("%s V: %s, want %s\n%s", reading, j.Verdict, want, texts(j))
+		if j := judge(t, "BZX79-C5V1 vz@5mA="+reading, booktest.Exactly()); j.Verdict != want {
+			t.Errorf("%s V: %s, want %s\n%s", reading, j.Verdict, want, booktest.Texts(j))
 		}
 	}
 }
 
 // Every row of the published list: both bounds pass, a millivolt outside fails; slope and leakage pass at their maximum and fail above.
 func TestEveryTypeAtItsBounds(t *testing.T) {
-	f, err := os.Open("../types/testdata/zener-ref.csv")
-	if err != nil {
-		t.Fatal(err)
-	}
-	defer f.Close()
-	all, err := csv.NewReader(f).ReadAll()
-	if err != nil || len(all) != 1+37+37 {
-		t.Fatalf("%d rows, %v", len(all), err)
-	}
-	for _, row := range all[1:] {
-		number := func(column string) float64 {
-			text := row[slices.Index(all[0], column)]
-			if text == "" {
-				return math.NaN()
-			}
-			x, err := strconv.ParseFloat(text, 64)
-			if err != nil {
-				t.Fatalf("%s, %s: %v", row[0], column, err)
-			}
-			return x
-		}
+	for _, ref := range booktest.Reference(t, "../types/testdata/zener-ref.csv", 37+37) {
+		name := ref["type"]
+		number := func(column string) float64 { return booktest.Number(t, ref[column], math.NaN()) }
 		izt := screening.At(screening.Current, number("izt_ma")*1e-3)
 		low, high := number("vz_min"), number("vz_max")
 		for _, tt := range []struct {
@@ -198,15 +154,15 @@ func TestEveryTypeAtItsBounds(t *testing.T) {
 				continue // the voltage of that leakage was not kept
 			}
 			j, err := screening.Judge(Book(), screening.Part{
-				Claim:    screening.Claim{}.WithTrait(screening.TraitType, row[0]),
+				Claim:    screening.Claim{}.WithTrait(screening.TraitType, name),
 				Readings: []screening.Reading{{Of: tt.of.Name, Unit: tt.of.Unit, Value: tt.value, At: tt.at}},
-			}, exactly())
+			}, booktest.Exactly())
 			if err != nil {
 				t.Fatal(err)
 			}
 			i := slices.IndexFunc(j.Findings, func(f screening.Finding) bool { return f.Limit.On == tt.of.Name })
 			if i < 0 || j.Findings[i].Outcome != tt.want || j.Findings[i].Limit.Source.Status != screening.Published {
-				t.Errorf("%s: %s %v at %s: want %s, %+v", row[0], tt.of.Name, tt.value, tt.at, tt.want, j.Findings)
+				t.Errorf("%s: %s %v at %s: want %s, %+v", name, tt.of.Name, tt.value, tt.at, tt.want, j.Findings)
 			}
 		}
 	}
@@ -358,26 +314,9 @@ func TestASoundZenerIsNeverRejected(t *testing.T) {
 			{Of: VZ.Name, Unit: quantity.Volt, Value: rapid.Float64Range(l.Low, l.High).Draw(t, "vz"), At: l.At},
 		}}, policy)
 		if err != nil || j.Verdict == screening.Reject || j.Verdict == screening.Regrade {
-			t.Fatalf("%s, %v\n%s", j.Verdict, err, texts(j))
+			t.Fatalf("%s, %v\n%s", j.Verdict, err, booktest.Texts(j))
 		}
 	})
 }
 
-func BenchmarkJudge(b *testing.B) {
-	book, policy := Book(), screening.DefaultPolicy()
-	p, err := entry.Words(book, strings.Fields("BZX79-C5V1 vz@7mA=5.15"))
-	if err != nil {
-		b.Fatal(err)
-	}
-	part := screening.Part{Claim: p.Claim, Readings: p.Readings}
-	var findings int
-	b.ReportAllocs()
-	for b.Loop() {
-		j, err := screening.Judge(book, part, policy)
-		if err != nil {
-			b.Fatal(err)
-		}
-		findings = len(j.Findings)
-	}
-	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(findings), "ns/finding")
-}
+func BenchmarkJudge(b *testing.B) { booktest.Benchmark(b, Book(), "BZX79-C5V1 vz@7mA=5.15") }

@@ -11,7 +11,9 @@ import (
 )
 
 // What a stored charge is warned of. Notice: above 60 V with more than 45 µC. Danger: from 100 V with more than 1 J, from 400 V with more
-// than 0.25 J, and above 100 J at any voltage.
+// than 0.25 J, and above 100 J at any voltage; noticeSource and dangerSource say who says so. The resistor and the times are the house's; that
+// a shorted part charges itself again by up to 15 % is published (general article on aluminium electrolytics), as is that it takes 10 to 20
+// days (Nippon Chemi-Con on recovery voltage).
 const (
 	noticeVolts, noticeCharge  = 60.0, 45e-6
 	dangerVolts, dangerEnergy  = 100.0, 1.0

@@ -1,3 +1,3 @@
 // Package book holds what the rulebooks share: the stop that is in every one of them, the reader for their embedded tables, tolerance
-// letters, and the warning for stored charge.
+// letters, the warning for stored charge, and the small pieces of claims and recipes that are the same whatever the part.
 package book

@@ -43,7 +43,7 @@ func TestBring(t *testing.T) {
 		saying string
 	}{
 		{"as it stands", 2e-7, at, quantity.Exactly, Rule{}, 2e-7, quantity.Exactly, false, ""},
-		{"15 °C doubles", 2e-7, at.With(screening.PartTemperature, 15), quantity.Exactly, Rule{}, 4e-7, quantity.Exactly, false, "×2.00 from 15 °C"},
+		{"15 °C doubles", 2e-7, at.With(screening.PartTemperature, 15), quantity.Exactly, Rule{}, 4e-7, quantity.Exactly, false, "×2.00 from 15 °C to 25 °C (2 per 10 K; 1.88 to 2.38 for 8 to 11 K)"},
 		{"hot and above the limit halves, and can only refute", 4e-6, at.With(screening.PartTemperature, 35), quantity.Exactly, Rule{}, 2e-6, quantity.Exactly, true, "cool"},
 		{"hot and below the limit is an upper bound", 4e-7, at.With(screening.PartTemperature, 45), quantity.Exactly, Rule{}, 4e-7, quantity.AtMost, false, "leaks less"},
 		{"51 °C is out of reach", 4e-7, at.With(screening.PartTemperature, 51), quantity.Exactly, Rule{}, 0, 0, false, "between 0 and 50 °C"},

@@ -1,0 +1,54 @@
+package book
+
+import (
+	"fmt"
+
+	"goodbin/screening"
+)
+
+// Trait defines a characteristic that is claimed in words.
+func Trait(name, label string) screening.Definition {
+	return screening.Definition{Name: screening.Characteristic(name), Symbol: name, Label: label}
+}
+
+// CaseField is the outline of a part with leads; example is what to type.
+func CaseField(example string) screening.Field {
+	return screening.Field{Definition: Trait(screening.TraitCase, "case"), Trait: true, Example: example, Help: "the outline"}
+}
+
+// DatedField is the year or decade in which a part was made.
+func DatedField() screening.Field {
+	return screening.Field{
+		Definition: Trait(screening.TraitDated, "maker's date"), Trait: true, Example: "dated=1974", Help: "year or decade of making",
+	}
+}
+
+// SourceOf is the source of a rating: its table's, or, where it has none, the part's own claim.
+func SourceOf(r *screening.Rating) screening.Source {
+	if r.Source.Status != screening.NoStatus {
+		return r.Source
+	}
+	return screening.Source{Document: "claimed for the part", Clause: string(r.Of), Status: screening.Published}
+}
+
+// Note is a reason that a person should know and no script needs to tell from others.
+func Note(of screening.Characteristic, format string, args ...any) screening.Reason {
+	return screening.Reason{Code: screening.CodeNote, Of: of, Text: fmt.Sprintf(format, args...)}
+}
+
+// Without returns the ratings that are not of this characteristic.
+func Without(ratings []screening.Rating, of screening.Characteristic) []screening.Rating {
+	kept := make([]screening.Rating, 0, len(ratings)+1)
+	for i := range ratings {
+		if ratings[i].Of != of {
+			kept = append(kept, ratings[i])
+		}
+	}
+	return kept
+}
+
+// Version names the state of a rulebook: its edition, which goes up when a rule in code changes, and a print of its tables, which changes by
+// itself.
+func Version(kind screening.Kind, edition string, tables ...string) string {
+	return string(kind) + "-" + edition + "-" + Fingerprint(tables...)
+}
