@@ -360,7 +360,7 @@ func TestBenchHeaderOfALotIsCorrectedForAllItsParts(t *testing.T) {
 	d.press("f7", "f9", "enter", "ctrl+u", "47uF 35V", "f8")
 	d.mustShow("lot 1  can  47 µF 35 V")
 	d.press("up")
-	d.mustShow("capacitance  48 µF", "pass")
+	d.mustShow("capacitance  48 ±", "pass")
 	d.press("f7", "f9", "shift+tab", "ctrl+u", "xx", "f8")
 	d.mustShow("is no kind")
 }
