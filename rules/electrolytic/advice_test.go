@@ -117,7 +117,7 @@ func TestRecipesCarryThisPartsNumbers(t *testing.T) {
 		{
 			"leakage at 450 V", 47, 450, screening.Leakage.Name, screening.GeneralSet, 300,
 			map[string]float64{"supply": 450, "series-resistance": 450e3, "resistor-power": 0.45},
-			[]string{"raise the supply until the part itself stands at 450 V", "local code", "eye protection"},
+			[]string{"then put 81 kΩ in its place (5 W or more: 2.5 W if the part fails short)", "never set the supply above 450 V", "local code", "eye protection"},
 		},
 		{
 			"capacitance by the watch", 2200, 35, screening.Capacitance.Name, screening.GeneralSet, 0,

@@ -143,10 +143,10 @@ func complete(claim screening.Claim) (screening.Claim, []screening.Reason, error
 }
 
 // modernRadial reports whether ±20 % goes without saying: a radial, snap-in or surface-mount part, or one of unstated case, that is not
-// dated before 1985.
+// dated before 1985. A part with sections is a can.
 func modernRadial(claim screening.Claim) bool {
 	year, dated := claim.Year()
-	if dated && year < oldBefore {
+	if dated && year < oldBefore || len(claim.Sections()) > 1 {
 		return false
 	}
 	switch claim.Trait(screening.TraitCase) {

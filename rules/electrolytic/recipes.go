@@ -130,8 +130,9 @@ const senseDrop = 0.03
 // senseWatts is the most that the resistor put in after charging may take from a part that fails short, W: nobody owns a hotter one.
 const senseWatts = 2.5
 
-// leakageRecipe: a supply, a series resistor of known ohms, and a voltmeter across it and across the part. Up to 75 V a smaller resistor is
-// put in once the part is charged, so that the part stands at its rated voltage; above, the supply is raised by what the resistor drops.
+// leakageRecipe: a supply, a series resistor of known ohms, and a voltmeter across it and across the part. Where the charging resistor would
+// hold the part too far below its rated voltage, a smaller one takes its place once the part is charged. The supply never goes above the
+// rated voltage: the current falls while one watches, and the part would rise beyond it.
 func leakageRecipe(claim screening.Claim, u unit, l screening.Limit) screening.Recipe {
 	c := chargingOf(claim, u)
 	after, _ := l.At.Get(screening.After)
@@ -143,17 +144,16 @@ func leakageRecipe(claim screening.Claim, u unit, l screening.Limit) screening.R
 		fmt.Sprintf("wait until the volts across the part stand still (about %s)", duration(c.seconds)),
 	}
 	sense := math.Min(math.Max(roundDown(senseDrop*c.supply/l.High), roundUp(c.supply*c.supply/senseWatts)), ohms)
-	switch {
-	case l.High*ohms <= senseDrop*c.supply:
-	case c.supply <= named("reform-volts").value:
+	if l.High*ohms > senseDrop*c.supply && sense < ohms {
 		ohms = sense
 		watts := c.supply * c.supply / ohms
 		values["sense-resistance"], values["sense-power"] = ohms, watts
 		lines = append(lines, fmt.Sprintf("then put %s in its place (%s W or more: %.2g W if the part fails short)",
 			quantity.Format(ohms, quantity.Ohm, 0), rating(2*watts), watts))
-	default:
-		lines = append(lines, fmt.Sprintf("raise the supply until the part itself stands at %s, watching the volts across the part; where the supply "+
-			"cannot, type the volts that it has (a lower voltage can show a part bad, not good)", supply))
+	}
+	if l.High*ohms > senseDrop*c.supply {
+		lines = append(lines, fmt.Sprintf("never set the supply above %s: as the current falls the part rises to it. Where the part itself stays more "+
+			"than 3 %% below, type the volts that it has with the reading; a lower voltage can show a part bad, not good", supply))
 	}
 	drop := l.High * ohms
 	lines = append(lines,
