@@ -105,7 +105,7 @@ func (j *judging) failText(f *Finding) string {
 // Allowed words a limit's bounds and condition: "at most 770 µA at 35 V, after 2 min".
 func Allowed(l Limit) string {
 	var text string
-	low, high := quantity.Format(l.Low, l.Unit, 3), quantity.Format(l.High, l.Unit, 3)
+	low, high := quantity.Bound(l.Low, l.Unit), quantity.Bound(l.High, l.Unit)
 	switch {
 	case math.IsInf(l.Low, -1) && math.IsInf(l.High, 1):
 		text = "any value"

@@ -127,10 +127,10 @@ func (t *theme) drawReading(cells []string, a axis, r screening.Reading) {
 // bounds returns the texts of a limit's ends: "1.54 mF" and "2.64 mF"; an open end is "".
 func (t *theme) bounds(l screening.Limit) (low, high string) {
 	if !math.IsInf(l.Low, -1) {
-		low = t.clean(quantity.Format(l.Low, l.Unit, 3))
+		low = t.clean(quantity.Bound(l.Low, l.Unit))
 	}
 	if !math.IsInf(l.High, 1) {
-		high = t.clean(quantity.Format(l.High, l.Unit, 3))
+		high = t.clean(quantity.Bound(l.High, l.Unit))
 	}
 	return low, high
 }

@@ -13,7 +13,7 @@ import (
 )
 
 // formatValue prints a value with its customary digits.
-func formatValue(x float64, unit quantity.Unit) string { return quantity.Format(x, unit, 3) }
+func formatValue(x float64, unit quantity.Unit) string { return quantity.Bound(x, unit) }
 
 // printJudgement prints a judgement for a person: the verdict first, then why, what next, what was not tested, the cautions, and every limit.
 func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, parsed entry.Parsed) error {

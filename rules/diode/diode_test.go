@@ -46,7 +46,7 @@ var verdictCases = []struct {
 	{"the sheet's drop even at twice its current", "1N4007 vf@2A=1.05 vbr=OL", screening.Accept, screening.WithinSpec, ""},
 	{"a signal diode of an older sheet: 85 V breakdown of 100", "1N914 vf=0.62 vbr=85V", screening.Accept, screening.Serviceable, ""},
 
-	{"breaks down at 250 V of 1000", "1N4007 vf=0.52 vbr=250V", screening.Reject, screening.AnyGrade, "reverse breakdown voltage reads 250 V; at least 1.00 kV"},
+	{"breaks down at 250 V of 1000", "1N4007 vf=0.52 vbr=250V", screening.Reject, screening.AnyGrade, "reverse breakdown voltage reads 250 V; at least 1 kV"},
 	{"breaks down somewhere below 5 V", "1N4007 vf=0.52 vbr=<5V", screening.Reject, screening.AnyGrade, "fails"},
 	{"its own rating stands before the laxest sheet's", "1N914 rated:vrrm=100V vf=0.62 vbr=85V", screening.Reject, screening.AnyGrade, "at least 100 V"},
 	{"below the laxest sheet", "1N914 vf=0.62 vbr=60V", screening.Reject, screening.AnyGrade, "at least 75"},
@@ -54,10 +54,10 @@ var verdictCases = []struct {
 	{"a short is not turned round", "1N4148 vf=OL vbr=0.02", screening.Reject, screening.AnyGrade, "reads 20.0 mV"},
 	{"nor is a Zener", "1N4148 vf=OL vbr=5.1V", screening.Reject, screening.AnyGrade, "reads 5.10 V"},
 	{"open", "1N4148 vf=OL vbr=OL", screening.Reject, screening.AnyGrade, "light-emitting"},
-	{"silicon that leaks 100 µA at 20 V", "1N4148 vf=0.62 ir@20V=100uA temperature=23C", screening.Reject, screening.AnyGrade, "at most 10.0 µA"},
+	{"silicon that leaks 100 µA at 20 V", "1N4148 vf=0.62 ir@20V=100uA temperature=23C", screening.Reject, screening.AnyGrade, "at most 10 µA"},
 	{"a reading hot may refute", "1N4148 vf=0.62 ir@20V=100uA temperature=45C", screening.Reject, screening.AnyGrade, "comes to 25.0 µA"},
 	{"claimed silicon that drops like a Schottky", "signal vf=0.25 vbr=OL", screening.Reject, screening.AnyGrade, "look at what it claims again"},
-	{"drops more than its sheet at the rated current", "1N4007 vf=0.52 vf@1A=1.4 vbr=OL", screening.Reject, screening.AnyGrade, "300 mV to 1.10 V at 1 A"},
+	{"drops more than its sheet at the rated current", "1N4007 vf=0.52 vf@1A=1.4 vbr=OL", screening.Reject, screening.AnyGrade, "300 mV to 1.1 V at 1 A"},
 	{"unmarked silicon that leaks 100 µA", "vf=0.61 ir@20V=100uA temperature=25C", screening.Reject, screening.AnyGrade, "no more than silicon"},
 
 	{"blocking not tried", "1N4148 vf=0.62", screening.Undecided, screening.AnyGrade, "measure: TURN THE PROBES and read again: OL shows that it blocks"},

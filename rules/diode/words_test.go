@@ -53,7 +53,7 @@ func TestWhatWasNotTestedIsSaidOnce(t *testing.T) {
 
 func TestTheLimitOfBlockingIsSaidAtTheReadingsVoltage(t *testing.T) {
 	said := booktest.Texts(judge(t, "1N4148 vf=0.62 ir@20V=38uA temperature=25C", screening.DefaultPolicy()))
-	if strings.Count(said, "at most 10.0 µA at 20 V") != 1 || strings.Contains(said, "30 V") {
+	if strings.Count(said, "at most 10 µA at 20 V") != 1 || strings.Contains(said, "30 V") {
 		t.Errorf("%s", said)
 	}
 	said = booktest.Texts(judge(t, "MBR20100CT vf/1=0.22 vf/2=0.001 vbr/1=>60V vbr/2=0.00V", screening.DefaultPolicy()))

@@ -20,6 +20,17 @@ func Format(x float64, unit Unit, digits int) string {
 	return string(appendFormat(buf[:0], x, unit, digits))
 }
 
+// Bound prints a limit: as it stands where four significant digits hold it ("4.845 V", "10 µA"), else with three ("98.9 mΩ").
+func Bound(x float64, unit Unit) string {
+	if x-x != 0 {
+		return Format(x, unit, 0)
+	}
+	if d := round(x, 0); d.n <= 4 {
+		return Format(x, unit, 0)
+	}
+	return Format(x, unit, 3)
+}
+
 // Short is [Format] with the shortest text that [Parse] reads back to 12 significant digits.
 func Short(x float64, unit Unit) string { return Format(x, unit, 0) }
 

@@ -146,3 +146,23 @@ func TestPlusMinusKeepsThePrefixOfTheValue(t *testing.T) {
 		}
 	}
 }
+
+func TestBoundKeepsWhatATablePrints(t *testing.T) {
+	for _, c := range []struct {
+		x    float64
+		unit quantity.Unit
+		want string
+	}{
+		{4.845, quantity.Volt, "4.845 V"}, // 1N4733A, 5.1 V −5 %
+		{10e-6, quantity.Ampere, "10 µA"},
+		{0.05, quantity.Volt, "50 mV"},
+		{0.0989422, quantity.Ohm, "98.9 mΩ"},
+		{2200e-6 * 0.7, quantity.Farad, "1540 µF"},
+		{math.Inf(1), quantity.Volt, "∞"},
+		{math.NaN(), quantity.Volt, "–"},
+	} {
+		if got := quantity.Bound(c.x, c.unit); got != c.want {
+			t.Errorf("%g prints %q; want %q", c.x, got, c.want)
+		}
+	}
+}
