@@ -2,8 +2,6 @@
 package rules
 
 import (
-	"strings"
-
 	"goodbin/rules/bipolar"
 	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
@@ -21,13 +19,4 @@ func All() screening.Kinds {
 		bipolar.Book(),
 		resistor.Book(),
 	}
-}
-
-// Tables returns the version of all embedded tables together. A verdict that was given under another version is stale.
-func Tables() string {
-	var versions []string
-	for _, b := range All() {
-		versions = append(versions, b.Tables)
-	}
-	return strings.Join(versions, "; ")
 }

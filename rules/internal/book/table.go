@@ -80,13 +80,6 @@ func (t *Table) Has(column string) bool { return slices.Contains(t.columns, colu
 // Err returns everything that was wrong with the table and with what was asked of it so far.
 func (t *Table) Err() error { return errors.Join(t.errs...) }
 
-// Must panics where Err is not nil. It is for embedded tables only, under a test that loads every one of them.
-func (t *Table) Must() {
-	if err := t.Err(); err != nil {
-		panic("embedded table: " + err.Error())
-	}
-}
-
 // Errorf notes something wrong with a cell that only the caller can see ("low above high").
 func (r Row) Errorf(column, format string, args ...any) {
 	r.table.errs = append(r.table.errs, fmt.Errorf("%s: line %d, %s: %s", r.table.name, r.line, column, fmt.Sprintf(format, args...)))
