@@ -59,6 +59,10 @@ type Field struct {
 	Example  string // what to type: "2200uF", "npn"
 	Ask      string // the next step that asks for it, where "MEASURE" and its label would be odd: "TURN THE PROBES and read again"
 
+	// AskWhen says that a claim which was left out matters for these findings: the walk then asks for it, and it may be skipped. It may be
+	// nil.
+	AskWhen func(Part, []Finding) bool
+
 	// Words are the bare words that a trait takes, folded to lower case, and the text each stands for.
 	Words []Word
 	// AcceptText takes a bare word as this trait (a type number), returning its canonical text. It may be nil.

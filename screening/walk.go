@@ -196,7 +196,23 @@ func (w *Walk) Questions() []Question {
 		_, looked := w.part.Seen(c.Name)
 		qs = append(qs, Question{Ask: AskLook, Check: c, Answered: looked, Skipped: w.skipped["look:"+c.Name]})
 	}
-	return append(qs, w.readingQuestions()...)
+	qs = append(qs, w.readingQuestions()...)
+	return append(qs, w.claimsThatMatter()...)
+}
+
+// claimsThatMatter asks for claims that were left out and would change what to do.
+func (w *Walk) claimsThatMatter() []Question {
+	var qs []Question
+	for i := range w.book.Claims {
+		f := &w.book.Claims[i]
+		if f.AskWhen == nil || !f.Trait || w.judged.Claim.Trait(string(f.Name)) != "" || !f.AskWhen(w.judged.Part, w.judged.Findings) {
+			continue
+		}
+		q := Question{Ask: AskClaim, Field: *f, Need: Wanted}
+		q.Skipped = w.skipped[q.Key()]
+		qs = append(qs, q)
+	}
+	return qs
 }
 
 func (w *Walk) claimQuestions() []Question {

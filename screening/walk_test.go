@@ -186,3 +186,33 @@ func TestWalkGateKeepsHandsOffAChargedPart(t *testing.T) {
 		t.Errorf("reopened, the walk asks %+v; it should go on where it was", q)
 	}
 }
+
+func TestWalkAsksForAClaimOnceItMatters(t *testing.T) {
+	book := toy()
+	book.Claims = append(book.Claims, screening.Field{
+		Definition: screening.Definition{Name: "technology", Label: "technology"}, Trait: true,
+		AskWhen: func(_ screening.Part, findings []screening.Finding) bool {
+			return findings[0].Outcome == screening.Fail
+		},
+	})
+	sound := screening.NewWalk(book, relative(0.001), toyPart(100, 1e-4, 0.7))
+	answerLooks(sound)
+	if q := sound.Next(); q.Ask != screening.AskNothing {
+		t.Errorf("a sound part is asked for its %s", q.Field.Name)
+	}
+	off := screening.NewWalk(book, relative(0.001), toyPart(150, 1e-4, 0.7))
+	answerLooks(off)
+	q := off.Next()
+	if q.Ask != screening.AskClaim || q.Field.Name != "technology" || q.Need == screening.Required {
+		t.Fatalf("a part that is off is asked %+v", q)
+	}
+	off.Skip(q)
+	if q := off.Next(); q.Ask != screening.AskNothing {
+		t.Errorf("a claim that was skipped is asked again: %+v", q)
+	}
+	off.Unskip()
+	off.SetClaim(off.Part().Claim.WithTrait("technology", "film"))
+	if q := off.Next(); q.Ask != screening.AskNothing {
+		t.Errorf("a claim that was made is asked again: %+v", q)
+	}
+}

@@ -316,7 +316,7 @@ func (g *grid) skip(q screening.Question, open bool) tea.Cmd {
 		return nil
 	}
 	key := keyOf(q)
-	if q.Ask == screening.AskClaim && key != rowClaim {
+	if q.Ask == screening.AskClaim && key != rowClaim && q.Need == screening.Required {
 		g.problem = errors.New("nothing can be judged without it: type it, or lay the part aside and type what the next one claims")
 		return nil
 	}

@@ -144,7 +144,7 @@ func (g *grid) questionOf(p inventory.Part, w *screening.Walk, pin string) (scre
 		}
 	}
 	q := w.Next()
-	if q.Ask == screening.AskNothing || q.Ask == screening.AskClaim && slices.Contains(p.Skipped, q.Key()) {
+	if q.Ask == screening.AskNothing || q.Ask == screening.AskClaim && q.Need == screening.Required && slices.Contains(p.Skipped, q.Key()) {
 		return q, false
 	}
 	return q, true

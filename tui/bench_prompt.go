@@ -90,6 +90,9 @@ func (g *grid) questionText(q screening.Question, open bool) (text, right string
 	}
 	switch q.Ask {
 	case screening.AskClaim:
+		if q.Need != screening.Required {
+			return "what is its " + q.Field.Label + "? + leaves it open", "it matters here"
+		}
 		return "the claim lacks the " + q.Field.Label, ""
 	case screening.AskGate:
 		if len(g.part.Part.Look)+len(g.part.Part.Readings) == 0 {

@@ -44,6 +44,9 @@ func prompt(q screening.Question) string {
 	case screening.AskLook:
 		return q.Check.Question + " (y/n)"
 	case screening.AskClaim:
+		if q.Need != screening.Required {
+			return q.Field.Label + ", which matters here, such as " + q.Field.Example + " (empty: not known)"
+		}
 		return q.Field.Label + " as printed, such as " + q.Field.Example
 	}
 	text := q.Field.Label
@@ -74,10 +77,10 @@ func yesOrNo(text string) (yes, ok bool) {
 
 // skip leaves a question for later. The volts remaining are never skipped: the part would be touched unasked.
 func (l *lines) skip(q screening.Question) error {
-	switch q.Ask {
-	case screening.AskGate:
+	switch {
+	case q.Ask == screening.AskGate:
 		return again("the volts that remain are measured before the part is touched; type 0 where nothing is left")
-	case screening.AskClaim:
+	case q.Ask == screening.AskClaim && q.Need == screening.Required:
 		return again("nothing can be judged without it; n goes to the next part")
 	}
 	l.walk.Skip(q)

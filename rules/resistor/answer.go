@@ -22,6 +22,18 @@ const leastAsMeasured, leastComposition = 0.05, 0.10
 // ladder is the tolerances that resistors are sold in, and so those that a lesser claim may name.
 var ladder = []float64{0.01, 0.02, 0.05, 0.10, 0.20}
 
+// mayBeDamp reports whether a part reads above its band by no more than drying brings back: then what it is made of decides what to do.
+func mayBeDamp(_ screening.Part, findings []screening.Finding) bool {
+	for i := range findings {
+		f := &findings[i]
+		if f.Limit.On == screening.Resistance.Name && f.Outcome == screening.Fail && f.Side == screening.Above && f.Reading != nil &&
+			f.Reading.Sense == quantity.Exactly && f.Reading.Value*(1-driesBack) <= f.Limit.High {
+			return true
+		}
+	}
+	return false
+}
+
 // adjust takes the treatment away where it cannot help: after it was tried, and where drying cannot bring back so much.
 func adjust(part screening.Part, findings []screening.Finding) ([]screening.Finding, []screening.Reason) {
 	var reasons []screening.Reason

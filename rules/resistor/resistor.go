@@ -42,6 +42,7 @@ func claims() []screening.Field {
 		{Definition: Power, Help: "printed, or judged by size; it is not tested", Example: "0.25W"},
 		{
 			Definition: screening.Definition{Name: screening.TraitTechnology, Label: "technology"}, Trait: true, Words: technologyWords(),
+			AskWhen: mayBeDamp,
 			Help:    "carbon composition (a solid moulded rod) can be dried, film and wire cannot; \"unknown\" where you cannot tell",
 			Example: "carbon-film",
 		},

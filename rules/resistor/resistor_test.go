@@ -198,3 +198,26 @@ func BenchmarkJudge(b *testing.B) {
 		b.Run(verdict, func(b *testing.B) { booktest.Benchmark(b, Book(), words) })
 	}
 }
+
+// What a resistor is made of is asked for where it decides between drying and keeping it as measured, and only there.
+func TestTechnologyIsAskedWhereItDecides(t *testing.T) {
+	for _, c := range []struct {
+		name, words string
+		asked       bool
+	}{
+		{"inside its band", "4k7 5% resistance=4.7k seen=nothing", false},
+		{"11 % high, technology not said", "4k7 5% resistance=5.2k seen=nothing", true},
+		{"11 % high, said to be film", "4k7 5% metal-film resistance=5.2k seen=nothing", false},
+		{"11 % high, said to be unknown", "4k7 5% technology=unknown resistance=5.2k seen=nothing", false},
+		{"11 % low", "4k7 5% resistance=4.18k seen=nothing", false},
+		{"open", "4k7 5% resistance=OL seen=nothing", false},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			w := screening.NewWalk(Book(), screening.DefaultPolicy(), booktest.Part(t, Book(), c.words))
+			q := w.Next()
+			if asked := q.Ask == screening.AskClaim && string(q.Field.Name) == screening.TraitTechnology; asked != c.asked {
+				t.Errorf("asked %v: %+v", asked, q.Field.Name)
+			}
+		})
+	}
+}
