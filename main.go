@@ -28,12 +28,13 @@ func run() int {
 	if err != nil {
 		program = os.Args[0]
 	}
-	width, _, err := term.GetSize(int(os.Stdout.Fd()))
+	width, height, err := term.GetSize(int(os.Stdout.Fd()))
 	if err != nil {
-		width = 0
+		width, height = 0, 0
 	}
 	return cli.Run(ctx, os.Args[1:], cli.Env{
-		In: os.Stdin, Out: os.Stdout, Err: os.Stderr, Now: time.Now, Getenv: os.Getenv, DemoBox: demoBox, Executable: program, Width: width,
+		In: os.Stdin, Out: os.Stdout, Err: os.Stderr, Now: time.Now, Getenv: os.Getenv, DemoBox: demoBox, Executable: program,
+		Width: width, Height: height,
 		InTerminal:  term.IsTerminal(int(os.Stdin.Fd())),
 		OutTerminal: term.IsTerminal(int(os.Stdout.Fd())),
 		ErrTerminal: term.IsTerminal(int(os.Stderr.Fd())),

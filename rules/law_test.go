@@ -1,7 +1,6 @@
 package rules_test
 
 import (
-	"fmt"
 	"math"
 	"slices"
 	"testing"
@@ -12,32 +11,10 @@ import (
 	"goodbin/screening"
 )
 
-// grid returns claims, as typed, that reach every row of every table of a kind.
-func grid(kind screening.Kind) []string {
-	var all []string
-	switch kind {
-	case "electrolytic":
-		for _, volts := range []string{"4V", "6V3", "16V", "40V", "63V", "100V", "250V", "450V", "525V"} {
-			for _, kind := range []string{"", "axial", "can", "snap-in", "smd", "screw 22x30", "can 10x20"} {
-				for _, dated := range []string{"", "1955", "1982", "2003"} {
-					all = append(all, fmt.Sprintf("4.7uF %s %s %s", volts, kind, dated), fmt.Sprintf("3300uF %s %s %s", volts, kind, dated))
-				}
-			}
-		}
-	case "resistor":
-		for _, technology := range []string{"", "cc", "carbon-film", "metal-film", "metal-oxide", "wirewound", "thick-film"} {
-			all = append(all, "4k7 "+technology, "4k7 5% "+technology, "R47 J "+technology)
-		}
-	case "diode":
-		all = append(all, "", "signal", "rectifier", "fast", "ultrafast", "schottky", "point-contact", "gold-bonded", "si", "ge", "unknown",
-			"400V rectifier", "schottky dual")
-	case "zener":
-		all = append(all, "", "5V1", "5V1 izt=5mA", "5V1 5% izt=5mA", "1N4733", "1N4733C", "1N4733D", "BZX79-B5V1", "BZX79-F5V1", "BZX55-B5V1")
-	case "bipolar":
-		all = append(all, "", "npn", "pnp ge", "npn darlington", "npn darlington rated:ic-max=5A", "npn rated:ic-max=5A", "type=XZ9 npn si",
-			"npn rated:hfe@ic=2mA,vce=5V=200..450", "BC547B", "BC337-25", "BC549C", "2SC1815GR", "2SC5200R", "MJE13005C")
-	}
-	for _, name := range types.Names(kind) {
+// grid returns claims, as typed, that reach every row of every table of a kind: those listed for it, and every type number.
+func grid(t *testing.T, kind screening.Kind) []string {
+	all := casesOf(t, kind).grid
+	for _, name := range types.Builtin().Names(kind) {
 		all = append(all, "type="+hyphenated(name))
 	}
 	return all
@@ -75,7 +52,7 @@ func TestAFigureThatWasNotReadRejectsNothingByItself(t *testing.T) {
 	for _, b := range rules.All() {
 		t.Run(string(b.Kind), func(t *testing.T) {
 			weak := map[screening.Status]int{}
-			for _, words := range grid(b.Kind) {
+			for _, words := range grid(t, b.Kind) {
 				part := booktest.Part(t, b, words)
 				limits := booktest.JudgePart(t, b, part, policy)
 				all, err := b.Limits(limits.Claim)
@@ -95,22 +72,13 @@ func TestAFigureThatWasNotReadRejectsNothingByItself(t *testing.T) {
 				}
 			}
 			t.Logf("limits in use that may not reject: %v", weak)
-			for _, s := range mustMeet[b.Kind] {
+			for _, s := range casesOf(t, b.Kind).meets {
 				if weak[s] == 0 {
 					t.Errorf("no limit is %s: the grid misses what the tables hold", s)
 				}
 			}
 		})
 	}
-}
-
-// mustMeet are the statuses that a kind's tables hold, so that the law is not kept by meeting nothing.
-var mustMeet = map[screening.Kind][]screening.Status{
-	"electrolytic": {screening.FromMemory, screening.Derived, screening.SecondHand},
-	"diode":        {screening.FromMemory, screening.Derived},
-	"zener":        {screening.FromMemory, screening.Derived},
-	"bipolar":      {screening.FromMemory, screening.Derived, screening.SecondHand},
-	"resistor":     {screening.FromMemory},
 }
 
 func holdToTheLaw(t *testing.T, b *screening.Rulebook, j screening.Judgement, all []screening.Limit, words string) {

@@ -6,17 +6,19 @@ import (
 	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
 	"goodbin/rules/resistor"
+	"goodbin/rules/types"
 	"goodbin/rules/zener"
 	"goodbin/screening"
 )
 
 // All returns the rulebooks in the order in which kinds are offered.
 func All() screening.Kinds {
+	t := types.Builtin()
 	return screening.Kinds{
 		electrolytic.Book(),
-		diode.Book(),
-		zener.Book(),
-		bipolar.Book(),
+		diode.Book(t),
+		zener.Book(t),
+		bipolar.Book(t),
 		resistor.Book(),
 	}
 }

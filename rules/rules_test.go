@@ -7,18 +7,10 @@ import (
 	"testing"
 
 	"goodbin/rules"
+	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
 	"goodbin/screening/entry"
 )
-
-// samples are claims of every kind, as typed, that together reach every table.
-var samples = map[screening.Kind][]string{
-	"electrolytic": {"2200uF 35V M", "47uF 450V can 1974 22x30", "10000uF 63V snap-in", "8+8/450 1955", "100uF 100V axial T", "22uF 63V", "1uF 525V", "10uF 4V smd"},
-	"diode":        {"type=1N4148", "type=1N4007", "type=1N5819", "type=1N34A"},
-	"zener":        {"type=BZX79-C5V1", "type=1N4733A", "type=BZX55-C12"},
-	"bipolar":      {"type=2N3904", "type=BC547 group=B", "type=AC128", "type=TIP120", "npn", "pnp material=germanium"},
-	"resistor":     {"4k7 5%", "100R", "1M 1%"},
-}
 
 func TestEveryRulebookIsWhole(t *testing.T) {
 	for _, b := range rules.All() {
@@ -54,7 +46,20 @@ func TestEveryKindIsBarredFromTheMains(t *testing.T) {
 		if i < 0 || b.Look[i].Verdict != screening.Barred || !slices.Contains(b.Look[i].Words, "mains") || !slices.Contains(b.Look[i].Words, "cracked") {
 			t.Errorf("%s: no stop for mains and cracks", b.Kind)
 		}
+		if len(b.Look) > screening.MaxLook {
+			t.Errorf("%s: %d things to look for, and a digit key for %d", b.Kind, len(b.Look), screening.MaxLook)
+		}
+		reported := map[string]string{}
 		for _, c := range b.Look {
+			if len(c.Question) > 60 || !strings.HasSuffix(c.Question, "?") {
+				t.Errorf("%s: %q is no short question", b.Kind, c.Question)
+			}
+			for _, w := range c.Words {
+				if reported[w] != "" {
+					t.Errorf("%s: seen=%s reports %s and %s", b.Kind, w, reported[w], c.Name)
+				}
+				reported[w] = c.Name
+			}
 			if c.Question == "" || len(c.Words) == 0 || c.Verdict != screening.NoVerdict && (c.Reason == "" || c.Do == "" || c.Source.Status == screening.NoStatus) {
 				t.Errorf("%s: check %q lacks a question, words, or of a stop its reason, what to do, or status", b.Kind, c.Name)
 			}
@@ -74,7 +79,7 @@ func TestACharacteristicMeansTheSameEverywhere(t *testing.T) {
 			switch {
 			case !known:
 				first[f.Name] = home{b.Kind, f.Definition}
-			case f.Trait && h.def.Label != f.Label, !f.Trait && h.def != f.Definition:
+			case !f.Trait && h.def != f.Definition: // a trait's label may name the words that the kind takes
 				t.Errorf("%q is %+v in %s and %+v in %s", f.Name, h.def, h.kind, f.Definition, b.Kind)
 			}
 		}
@@ -112,19 +117,13 @@ func TestEveryExampleReads(t *testing.T) {
 
 func TestEveryLimitHasItsSource(t *testing.T) {
 	for _, b := range rules.All() {
-		if len(samples[b.Kind]) == 0 {
+		samples := casesOf(t, b.Kind).sample
+		if len(samples) == 0 {
 			t.Errorf("%s has no sample claims", b.Kind)
 		}
-		for _, text := range samples[b.Kind] {
+		for _, text := range samples {
 			t.Run(string(b.Kind)+" "+text, func(t *testing.T) {
-				p, err := entry.Words(b, strings.Fields(text))
-				if err != nil {
-					t.Fatal(err)
-				}
-				j, err := screening.Judge(b, screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
-				if err != nil {
-					t.Fatal(err)
-				}
+				j := judged(t, b, text)
 				limits, err := b.Limits(j.Claim)
 				if err != nil || len(limits) == 0 {
 					t.Fatalf("%d limits, %v", len(limits), err)
@@ -140,24 +139,10 @@ func TestEveryLimitHasItsSource(t *testing.T) {
 	}
 }
 
-// measured are parts whose readings make the rules across readings add limits of their own.
-var measured = map[screening.Kind][]string{
-	"electrolytic": {"470uF 50V M dated=2003 capacitance=690uF esr@120Hz=0.34 leakage@50V,2min=3.8mA"},
-	"diode":        {"vf=0.61 ir@20V=100uA temperature=25C"},
-	"bipolar":      {"BC547B vbe=OL"},
-}
-
 func TestEveryFindingHasItsSource(t *testing.T) {
 	for _, b := range rules.All() {
-		for _, text := range measured[b.Kind] {
-			p, err := entry.Words(b, strings.Fields(text))
-			if err != nil {
-				t.Fatal(err)
-			}
-			j, err := screening.Judge(b, screening.Part{Claim: p.Claim, Readings: p.Readings}, screening.DefaultPolicy())
-			if err != nil {
-				t.Fatal(err)
-			}
+		for _, text := range casesOf(t, b.Kind).measured {
+			j := judged(t, b, text)
 			limits, err := b.Limits(j.Claim)
 			if err != nil {
 				t.Fatal(err)
@@ -180,6 +165,12 @@ func TestEveryFindingHasItsSource(t *testing.T) {
 			}
 		}
 	}
+}
+
+// judged judges a part from words as typed.
+func judged(t *testing.T, b *screening.Rulebook, words string) screening.Judgement {
+	t.Helper()
+	return booktest.Judge(t, b, words, screening.DefaultPolicy())
 }
 
 func checkLimit(t *testing.T, b *screening.Rulebook, part screening.Part, l screening.Limit) {

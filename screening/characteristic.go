@@ -37,6 +37,14 @@ var (
 	ESR         = Definition{Name: "esr", Symbol: "ESR", Label: "equivalent series resistance", Unit: quantity.Ohm}
 	TanDelta    = Definition{Name: "tan-delta", Symbol: "tan δ", Label: "dissipation factor", Unit: quantity.One}
 	Leakage     = Definition{Name: "leakage", Symbol: "IL", Label: "leakage current", Unit: quantity.Ampere}
+	// InsulationResistance is what a dielectric passes of direct current, as ohms at a stated voltage. OL on an ohms range shows only what
+	// that range ends at, and only at the meter's own volt or two.
+	InsulationResistance = Definition{
+		Name: "insulation-resistance", Symbol: "Rins", Label: "insulation resistance", Unit: quantity.Ohm,
+		Over: OverRange{Sense: quantity.AtLeast, Value: 2e6, Why: "taken as above 2 MΩ, the top range of even a simple pocket meter"},
+	}
+	// TimeConstant is insulation resistance times capacitance, as a capacitor left to itself shows it: the seconds in which it falls to 37 %.
+	TimeConstant = Definition{Name: "time-constant", Symbol: "τ", Label: "time constant of self-discharge", Unit: quantity.Second}
 	// RatedVoltage is a rating only: the voltage that the part claims to stand.
 	RatedVoltage = Definition{Name: "voltage", Symbol: "UR", Label: "rated voltage", Unit: quantity.Volt}
 	// Tolerance is a rating only: the allowed deviation from the nominal value as ratios (-0.2, +0.2).
@@ -60,8 +68,47 @@ var (
 		Name: "vbr", Symbol: "V(BR)", Label: "reverse breakdown voltage", Unit: quantity.Volt,
 		Over: OverRange{Sense: quantity.AtLeast, Value: 2, Why: "it blocks at the tester's own voltage, taken as 2 V"},
 	}
+	// VRRM is a rating only: the reverse voltage that a junction claims to block again and again.
+	VRRM = Definition{Name: "vrrm", Symbol: "VRRM", Label: "rated reverse voltage", Unit: quantity.Volt}
+	// IFAV is a rating only: the average forward current that a junction claims to carry.
+	IFAV = Definition{Name: "if-av", Symbol: "IF(AV)", Label: "rated forward current", Unit: quantity.Ampere}
+	// IFSM is a rating only: the surge of one half-wave that a junction claims to survive.
+	IFSM = Definition{Name: "ifsm", Symbol: "IFSM", Label: "rated surge current", Unit: quantity.Ampere}
+	// ICEO is the collector-emitter current with the base open; of an optocoupler with its LED dark.
+	ICEO = Definition{
+		Name: "iceo", Symbol: "ICEO", Label: "collector-emitter leakage, base open", Unit: quantity.Ampere,
+		AtVolts: VCE, AtAmperes: IC,
+	}
+	// VCEO is a rating only: the collector-emitter voltage that the part claims to stand, base open.
+	VCEO = Definition{Name: "vceo", Symbol: "VCEO", Label: "rated collector-emitter voltage", Unit: quantity.Volt}
 	// Ptot is a rating only: the power that the part claims to dissipate, at the mounting its sheet states.
 	Ptot = Definition{Name: "ptot", Symbol: "Ptot", Label: "rated dissipation", Unit: quantity.Watt}
+	// Power is a rating only: the power that a resistor, potentiometer or the like claims to stand at the temperature its sheet states.
+	Power = Definition{Name: "power", Symbol: "P", Label: "rated power", Unit: quantity.Watt}
+	// IDSS is the drain current with the gate tied to the source: all that a junction FET carries, what a MOSFET that is off leaks.
+	IDSS = Definition{
+		Name: "idss", Symbol: "IDSS", Label: "drain current, gate tied to source", Unit: quantity.Ampere, AtVolts: VDS, AtAmperes: ID,
+	}
+	// IGSS is what leaks into the gate of a field-effect transistor, drain and source tied together.
+	IGSS = Definition{
+		Name: "igss", Symbol: "IGSS", Label: "gate leakage, drain tied to source", Unit: quantity.Ampere, AtVolts: VGS, AtAmperes: ID,
+	}
+	// VGSOff is the gate-source voltage that turns a junction FET off, as a magnitude: the channel says the sign.
+	VGSOff = Definition{
+		Name: "vgs-off", Symbol: "VGS(off)", Label: "cut-off voltage of the gate", Unit: quantity.Volt, AtVolts: VDS, AtAmperes: ID,
+	}
+	// VGSTh is the gate-source voltage at which a MOSFET begins to conduct, drain tied to gate, as a magnitude.
+	VGSTh = Definition{
+		Name: "vgs-th", Symbol: "VGS(th)", Label: "threshold voltage of the gate", Unit: quantity.Volt, AtVolts: VDS, AtAmperes: ID,
+	}
+	// RDSOn is the resistance from drain to source of a channel that is on. Its gate voltage must be named.
+	RDSOn = Definition{
+		Name: "rds-on", Symbol: "rDS(on)", Label: "drain-source on-resistance", Unit: quantity.Ohm, NamedOnly: true, Over: Resistance.Over,
+	}
+	// VDSS is a rating only: the drain-source voltage that the part claims to stand, as a magnitude.
+	VDSS = Definition{Name: "vdss", Symbol: "VDSS", Label: "rated drain-source voltage", Unit: quantity.Volt}
+	// DCR is the direct-current resistance of a winding. OL shows that it is open.
+	DCR = Definition{Name: "dcr", Symbol: "RDC", Label: "winding resistance", Unit: quantity.Ohm, Over: Resistance.Over}
 	// Temperature is the ambient of the whole set of readings, in °C.
 	Temperature = Definition{Name: "temperature", Symbol: "TA", Label: "temperature of the part", Unit: quantity.Celsius}
 	// RemainingVoltage is what stands across a part after it was discharged: the gate before it is touched.

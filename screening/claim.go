@@ -41,6 +41,8 @@ func (r Rating) String() string {
 		return quantity.Format(r.Nominal, r.Unit, 0)
 	case math.IsInf(r.Low, -1) && math.IsInf(r.High, 1):
 		return ""
+	case r.Low == r.High:
+		return quantity.Format(r.Low, r.Unit, 0)
 	case math.IsInf(r.Low, -1):
 		return "≤ " + quantity.Format(r.High, r.Unit, 0)
 	case math.IsInf(r.High, 1):
@@ -186,6 +188,8 @@ func (c Claim) String() string {
 	for i, r := range c.Ratings {
 		switch {
 		case r.Typed == "" && r.Source.Status != NoStatus:
+		case r.Section == "" && r.Unit == quantity.One:
+			words = append(words, string(r.Of)+" "+r.String()) // a bare number says nothing
 		case r.Section == "":
 			words = append(words, r.String())
 		case !slices.ContainsFunc(c.Ratings[:i], func(o Rating) bool { return o.Of == r.Of && o.Section != "" }):
@@ -193,7 +197,9 @@ func (c Claim) String() string {
 		}
 	}
 	for _, t := range c.Traits {
-		words = append(words, t.Text)
+		if t.Name != TraitPinout { // it stands by itself wherever a verdict does
+			words = append(words, t.Text)
+		}
 	}
 	return strings.Join(slices.DeleteFunc(words, func(w string) bool { return w == "" }), " ")
 }

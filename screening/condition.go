@@ -23,6 +23,8 @@ const (
 	VGS                      // V, gate to source
 	VDS                      // V, drain to source
 	ID                       // A, drain current
+	VGE                      // V, gate to emitter
+	VIN                      // V, input voltage of a regulator
 	PartTemperature          // °C, of the part itself
 	After                    // s since the voltage was applied
 	variables                // how many there are
@@ -37,11 +39,11 @@ func Variables() []Variable {
 	return all
 }
 
-var variableNames = [variables]string{"", "frequency", "voltage", "current", "ib", "ic", "vce", "vcb", "vgs", "vds", "id", "temperature", "after"}
+var variableNames = [variables]string{"", "frequency", "voltage", "current", "ib", "ic", "vce", "vcb", "vgs", "vds", "id", "vge", "vin", "temperature", "after"}
 
 var variableUnits = [variables]quantity.Unit{
 	quantity.One, quantity.Hertz, quantity.Volt, quantity.Ampere, quantity.Ampere, quantity.Ampere, quantity.Volt,
-	quantity.Volt, quantity.Volt, quantity.Volt, quantity.Ampere, quantity.Celsius, quantity.Second,
+	quantity.Volt, quantity.Volt, quantity.Volt, quantity.Ampere, quantity.Volt, quantity.Volt, quantity.Celsius, quantity.Second,
 }
 
 // String returns the name that the command line and JSON use: "frequency", "vce", "after".
@@ -54,7 +56,7 @@ func (v Variable) String() string {
 
 var variableLabels = [variables]string{
 	"", "frequency", "voltage", "current", "base current", "collector current", "collector-emitter voltage", "collector-base voltage",
-	"gate-source voltage", "drain-source voltage", "drain current", "temperature", "time since the voltage was applied",
+	"gate-source voltage", "drain-source voltage", "drain current", "gate-emitter voltage", "input voltage", "temperature", "time since the voltage was applied",
 }
 
 // Label returns the variable in words, for sentences: "collector current".
@@ -204,6 +206,10 @@ type Span struct{ Low, High float64 }
 // Any fits whatever the reading's condition is.
 var Any = Span{0, math.Inf(1)}
 
+// Never fits nothing as it stands, not even the limit's own value: the rulebook's Convert brings every reading over, because the condition
+// has an uncertainty of its own that counts (the temperature of a thermistor).
+var Never = Span{math.Inf(1), 0}
+
 var sameWithin = Span{0.98, 1.02}
 
 // Misfit returns the first variable at which a reading taken at `reading` cannot be compared with a limit stated at `limit` as it stands;
@@ -220,6 +226,8 @@ func (f Fit) Misfit(reading, limit *Condition) (v Variable, absent, ok bool) {
 		case span == Any:
 		case !present:
 			return v, true, false
+		case span == Never:
+			return v, false, false
 		case got == want:
 		case want == 0 || got/want < span.Low || got/want > span.High:
 			return v, false, false

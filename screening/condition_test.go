@@ -115,3 +115,16 @@ func TestEveryVariableHasAWordALabelAndAUnit(t *testing.T) {
 		}
 	}
 }
+
+func TestWhatNeverFitsIsBroughtOver(t *testing.T) {
+	fit := screening.Fit{screening.PartTemperature: screening.Never}
+	limit := screening.At(screening.PartTemperature, 25)
+	at := limit
+	if v, absent, fits := fit.Misfit(&at, &limit); fits || absent || v != screening.PartTemperature {
+		t.Errorf("the limit's own temperature: %v, absent %v, fits %v", v, absent, fits)
+	}
+	none := screening.Condition{}
+	if v, absent, fits := fit.Misfit(&none, &limit); fits || !absent || v != screening.PartTemperature {
+		t.Errorf("no temperature: %v, absent %v, fits %v", v, absent, fits)
+	}
+}

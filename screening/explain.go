@@ -14,7 +14,11 @@ func (j *judging) explain(r *Judgement, states []criterionState) {
 	notes := r.Reasons
 	r.Reasons = nil
 	for _, s := range r.Stops {
-		r.Reasons = append(r.Reasons, Reason{Code: CodeStop, Text: s.Reason})
+		code := CodeStop
+		if s.Verdict == Undecided {
+			code = CodeHold
+		}
+		r.Reasons = append(r.Reasons, Reason{Code: code, Text: s.Reason})
 	}
 	if r.Verdict == Accept && r.RegradedAs == nil {
 		text := "every required reading passes"
@@ -32,8 +36,19 @@ func (j *judging) explain(r *Judgement, states []criterionState) {
 	if r.Verdict != Accept && r.RegradedAs != nil {
 		r.Reasons = append(r.Reasons, Reason{Code: CodeLesserClaim, Text: r.RegradedAs.Text})
 	}
-	r.Reasons = once(append(r.Reasons, notes...))
+	r.Reasons = once(append(append(r.Reasons, notes...), j.seen(r.Part)...))
 	j.nextSteps(r, states)
+}
+
+// seen lists what was seen and is only kept with the part.
+func (j *judging) seen(part Part) []Reason {
+	var reasons []Reason
+	for _, c := range j.book.Look {
+		if fault, _ := part.Seen(c.Name); fault && c.Verdict == NoVerdict {
+			reasons = append(reasons, Reason{Code: CodeSeen, Text: cmp.Or(c.Reason, c.Plain()+" seen")})
+		}
+	}
+	return reasons
 }
 
 // once drops what was said before: two criteria may wait for one reading.
@@ -159,7 +174,11 @@ func (j *judging) nextSteps(r *Judgement, states []criterionState) {
 	}
 	for _, s := range r.Stops {
 		if s.Do != "" {
-			r.Next = append([]Step{{Code: CodeKeepApart, Text: s.Do}}, r.Next...)
+			code := CodeKeepApart
+			if s.Verdict == Undecided {
+				code = CodeHold
+			}
+			r.Next = append([]Step{{Code: code, Text: s.Do}}, r.Next...)
 		}
 	}
 }

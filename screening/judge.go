@@ -93,8 +93,12 @@ func (j *judging) prepare(part Part) []Reading {
 	return readings
 }
 
+// stops lists what decides before any number does: what the claim itself bars, then what was seen.
 func (j *judging) stops(part Part) []Stop {
 	var stops []Stop
+	if j.book.Bars != nil {
+		stops = j.book.Bars(part.Claim)
+	}
 	for _, c := range j.book.Look {
 		if fault, _ := part.Seen(c.Name); fault && c.Verdict != NoVerdict {
 			stops = append(stops, Stop{Check: c.Name, Verdict: c.Verdict, Reason: c.Reason, Do: c.Do, Source: c.Source})

@@ -36,6 +36,8 @@ func toy() *screening.Rulebook {
 		Look: []screening.Check{
 			{Name: "cracked", Question: "cracked?", Verdict: screening.Barred, Reason: "cracked", Do: "bag it", Source: house},
 			{Name: "burnt", Question: "burnt?", Verdict: screening.Reject, Reason: "burnt", Source: house},
+			{Name: "in-circuit", Question: "in circuit?", Verdict: screening.Undecided, Reason: "in circuit", Do: "LIFT one lead", Source: house},
+			{Name: "short-leads", Question: "short leads?", Source: house},
 		},
 		Limits: func(c screening.Claim) ([]screening.Limit, error) {
 			nominal, _ := c.Nominal("value", "")
@@ -148,6 +150,9 @@ func TestStopsDecideWhateverTheReadingsSay(t *testing.T) {
 		{"cracked bars a perfect part", []screening.Observation{{Check: "cracked", Fault: true}}, screening.Barred},
 		{"burnt rejects a perfect part", []screening.Observation{{Check: "burnt", Fault: true}}, screening.Reject},
 		{"barred outweighs rejected", []screening.Observation{{Check: "burnt", Fault: true}, {Check: "cracked", Fault: true}}, screening.Barred},
+		{"in circuit holds the verdict on a perfect part", []screening.Observation{{Check: "in-circuit", Fault: true}}, screening.Undecided},
+		{"a stop outweighs a hold", []screening.Observation{{Check: "in-circuit", Fault: true}, {Check: "burnt", Fault: true}}, screening.Reject},
+		{"what is only kept decides nothing", []screening.Observation{{Check: "short-leads", Fault: true}}, screening.Accept},
 		{"the last look counts", []screening.Observation{{Check: "cracked", Fault: true}, {Check: "cracked"}}, screening.Accept},
 	} {
 		t.Run(c.name, func(t *testing.T) {
@@ -158,6 +163,77 @@ func TestStopsDecideWhateverTheReadingsSay(t *testing.T) {
 				t.Errorf("verdict %v, %v; want %v", j.Verdict, err, c.want)
 			}
 		})
+	}
+}
+
+func TestAHoldKeepsABadPartFromBeingRejected(t *testing.T) {
+	p := toyPart(100, 1e-4, 5)
+	p.Look = []screening.Observation{{Check: "in-circuit", Fault: true}}
+	j, err := screening.Judge(toy(), p, relative(0.001))
+	if err != nil || j.Verdict != screening.Undecided {
+		t.Errorf("verdict %v, %v; what was measured in circuit rejects nothing", j.Verdict, err)
+	}
+	if len(j.Next) == 0 || j.Next[0].Code != screening.CodeHold || j.Next[0].Text != "LIFT one lead" {
+		t.Errorf("the next step is %+v", j.Next)
+	}
+	if j.Reasons[0].Code != screening.CodeHold {
+		t.Errorf("the first reason is %+v", j.Reasons[0])
+	}
+}
+
+func TestWhatIsKeptIsSaidWithTheVerdict(t *testing.T) {
+	p := toyPart(100, 1e-4, 0.7)
+	p.Look = []screening.Observation{{Check: "short-leads", Fault: true}}
+	j, _ := screening.Judge(toy(), p, relative(0.001))
+	if last := j.Reasons[len(j.Reasons)-1]; last.Code != screening.CodeSeen || last.Text != "short leads seen" {
+		t.Errorf("the last reason is %+v", last)
+	}
+}
+
+// A figure from memory only comes close where a reading is beyond it; the house's laxer one, which may reject, still counts.
+func TestWhatFailsTheLowestGradeIsAcceptedAtNoBetterOne(t *testing.T) {
+	book := toy()
+	inner := book.Limits
+	book.Limits = func(c screening.Claim) ([]screening.Limit, error) {
+		limits, err := inner(c)
+		return append(limits, screening.Limit{
+			On: "unsure", Unit: quantity.One, Criterion: "worn", Low: 0, High: 1, InUse: true, Need: screening.Wanted, Grade: screening.WithinSpec,
+			Source: screening.Source{Document: "recalled", Status: screening.FromMemory},
+		}, screening.Limit{
+			On: "unsure", Unit: quantity.One, Criterion: "worn", Low: 0, High: 2, InUse: true, Need: screening.Wanted, Grade: screening.Serviceable,
+			Source: screening.Source{Document: "house", Status: screening.House},
+		}), err
+	}
+	for value, want := range map[float64]screening.Verdict{0.5: screening.Accept, 1.5: screening.Accept, 3: screening.Reject} {
+		j, err := screening.Judge(book, toyPart(100, 1e-4, 0.7, exactly("unsure", quantity.One, value)), relative(0.001))
+		if err != nil || j.Verdict != want {
+			t.Errorf("%v: %v, %v; want %v", value, j.Verdict, err, want)
+		}
+	}
+}
+
+func TestAClaimCanBarAPartBeforeAnyNumber(t *testing.T) {
+	book := toy()
+	book.Bars = func(c screening.Claim) []screening.Stop {
+		if c.Trait(screening.TraitTechnology) != "selenium" {
+			return nil
+		}
+		return []screening.Stop{{Check: "selenium", Verdict: screening.Barred, Reason: "selenium", Do: "bag it"}}
+	}
+	p := toyPart(100, 1e-4, 0.7)
+	if j, _ := screening.Judge(book, p, relative(0.001)); j.Verdict != screening.Accept {
+		t.Errorf("verdict %v without the trait", j.Verdict)
+	}
+	p.Claim = p.Claim.WithTrait(screening.TraitTechnology, "selenium")
+	j, _ := screening.Judge(book, p, relative(0.001))
+	if j.Verdict != screening.Barred || len(j.Stops) != 1 {
+		t.Errorf("verdict %v, stops %v", j.Verdict, j.Stops)
+	}
+	none := math.NaN()
+	p = toyPart(none, none, none)
+	p.Claim = p.Claim.WithTrait(screening.TraitTechnology, "selenium")
+	if q := screening.NewWalk(book, relative(0.001), p).Next(); q.Ask != screening.AskNothing {
+		t.Errorf("a part that its claim bars is asked %+v", q)
 	}
 }
 

@@ -75,9 +75,10 @@ func (j *judging) grades() []Grade {
 	return []Grade{WithinSpec, Serviceable}
 }
 
-// accepted returns the best grade at which nothing blocks.
+// accepted returns the best grade at which nothing blocks. What fails at the lowest grade is accepted at none, also where a better grade's
+// limit is too weakly known to fail it.
 func (j *judging) accepted(findings []Finding) (Grade, bool) {
-	if len(findings) == 0 {
+	if len(findings) == 0 || slices.ContainsFunc(criteriaAt(findings, j.lowest()), func(c criterionState) bool { return c.outcome == Fail }) {
 		return AnyGrade, false
 	}
 	for _, g := range j.grades() {
@@ -99,17 +100,23 @@ func (j *judging) lowest() Grade {
 // rollUp turns findings and stops into the verdict, its reasons and next steps.
 func (j *judging) rollUp(r *Judgement) {
 	states := criteriaAt(r.Findings, j.lowest())
-	if len(r.Stops) > 0 {
-		r.Verdict = Reject
-		for _, s := range r.Stops {
-			if s.Verdict == Barred {
-				r.Verdict = Barred
-			}
-		}
-	} else {
+	switch stopped := stopVerdict(r.Stops); stopped {
+	case NoVerdict:
 		j.decideVerdict(r, states)
+	default:
+		r.Verdict = stopped
 	}
 	j.explain(r, states)
+}
+
+// stopVerdict is the verdict that stops give: barred before reject before undecided, NoVerdict where there are none.
+func stopVerdict(stops []Stop) Verdict {
+	for _, v := range [...]Verdict{Barred, Reject, Undecided} {
+		if slices.ContainsFunc(stops, func(s Stop) bool { return s.Verdict == v }) {
+			return v
+		}
+	}
+	return NoVerdict
 }
 
 func (j *judging) decideVerdict(r *Judgement, states []criterionState) {

@@ -17,6 +17,8 @@ type Rulebook struct {
 	Bench  []Field // what is measured, in the order a person measures: quick ones that could reject first
 	Look   []Check // before power is applied
 
+	// Bars lists the stops that follow from a completed claim alone: a family that is refused whatever it reads. It may be nil.
+	Bars func(Claim) []Stop
 	// Complete adds what the claim implies: the type table's row, the gain group's range, the default tolerance by age. It returns notes
 	// for the person and an error where the claim contradicts itself. It must be idempotent.
 	Complete func(Claim) (Claim, []Reason, error)
@@ -90,17 +92,23 @@ type Field struct {
 // Word is a bare word and the trait text it stands for.
 type Word struct{ Word, Text string }
 
+// MaxLook is how many things a kind may have people look for: one digit key each.
+const MaxLook = 9
+
 // Check is one thing to look for.
 type Check struct {
 	Name     string   // "mains-or-cracked"
 	Words    []string // the words that report it on the command line: seen=cracked
 	Question string   // "Is it, or will it be, across the mains, or is it cracked?"
 	Help     string
-	Verdict  Verdict // Barred or Reject where it stops; NoVerdict where it is only kept
-	Reason   string  // why it stops
+	Verdict  Verdict // Barred or Reject where it stops, Undecided where it holds every verdict back; NoVerdict where it is only kept
+	Reason   string  // why it stops or holds
 	Do       string  // what to do with the part then
 	Source   Source
 }
+
+// Plain is the check's name in words: "mains or cracked".
+func (c Check) Plain() string { return strings.ReplaceAll(c.Name, "-", " ") }
 
 // Find returns the field of a name among the claims, then the bench.
 func (b *Rulebook) Find(name Characteristic) (Field, bool) {

@@ -45,6 +45,7 @@ type Reason struct {
 // Codes of reasons and next steps. They are part of the JSON output and stay.
 const (
 	CodeStop            = "stop"
+	CodeHold            = "hold"
 	CodePasses          = "passes"
 	CodeFails           = "fails"
 	CodeUntreated       = "treatable"
@@ -54,6 +55,7 @@ const (
 	CodeNearLimit       = "near-limit"
 	CodeAssumed         = "assumed"
 	CodeNote            = "note"
+	CodeSeen            = "seen"
 	CodeMeasure         = "measure"
 	CodeRepeat          = "repeat"
 	CodeConfirmFigure   = "confirm-figure"
@@ -70,7 +72,8 @@ type Step struct {
 	Gap  Gap    // what it is about, for measure and repeat
 }
 
-// Stop is a check found by eye, or a family, that decides whatever the readings say.
+// Stop is a check found by eye, or a family, that decides whatever the readings say. One with the verdict Undecided only holds: while it
+// stands the readings decide nothing.
 type Stop struct {
 	Check   string
 	Verdict Verdict

@@ -15,7 +15,7 @@ const (
 	AskNothing AskKind = iota // the walk is done
 	AskClaim                  // a rating or trait without which nothing can be judged: Field says which
 	AskGate                   // the volts remaining across the part, before it is touched
-	AskLook                   // one check by eye: yes or no
+	AskLook                   // all that is looked for by eye, a digit key each
 	AskReading                // one reading
 )
 
@@ -25,7 +25,7 @@ type Question struct {
 	Field    Field // for AskClaim, AskReading and AskGate
 	Section  string
 	At       Condition // the condition the limit is stated at
-	Check    Check     // for AskLook
+	Checks   []Check   // for AskLook: at most MaxLook, in the order of their digit keys
 	Need     Need
 	Limit    *Limit // the limit it would answer, for AskReading
 	Answered bool
@@ -38,7 +38,7 @@ type Question struct {
 func (q Question) Key() string {
 	switch q.Ask {
 	case AskLook:
-		return "look:" + q.Check.Name
+		return "look"
 	case AskGate:
 		return "gate"
 	case AskClaim:
@@ -114,9 +114,17 @@ func (w *Walk) SetClaim(c Claim) {
 	w.judge()
 }
 
-// See records the answer to a check by eye.
+// See records the answer to one check by eye.
 func (w *Walk) See(check string, fault bool) {
 	w.part.Look = append(w.part.Look, Observation{Check: check, Fault: fault})
+	w.judge()
+}
+
+// SeeAll records the whole look: the checks named show their fault, every other one of the kind does not.
+func (w *Walk) SeeAll(faults []string) {
+	for _, c := range w.book.Look {
+		w.part.Look = append(w.part.Look, Observation{Check: c.Name, Fault: slices.Contains(faults, c.Name)})
+	}
 	w.judge()
 }
 
@@ -148,13 +156,13 @@ func (w *Walk) Record(r Reading) error {
 	return nil
 }
 
-// Retract removes the last answer: the last reading, or where there is none the last look. It reports false where nothing is left.
+// Retract removes the last answer: the last reading, or where there is none the look. It reports false where nothing is left.
 func (w *Walk) Retract() bool {
 	switch {
 	case len(w.part.Readings) > 0:
 		w.part.Readings = w.part.Readings[:len(w.part.Readings)-1]
 	case len(w.part.Look) > 0:
-		w.part.Look = w.part.Look[:len(w.part.Look)-1]
+		w.part.Look = nil
 	default:
 		return false
 	}
@@ -192,12 +200,19 @@ func (w *Walk) Questions() []Question {
 	if gated {
 		qs = append(qs, gate)
 	}
-	for _, c := range w.book.Look {
-		_, looked := w.part.Seen(c.Name)
-		qs = append(qs, Question{Ask: AskLook, Check: c, Answered: looked, Skipped: w.skipped["look:"+c.Name]})
+	if len(w.book.Look) > 0 {
+		qs = append(qs, Question{Ask: AskLook, Checks: w.book.Look, Answered: w.looked(), Skipped: w.skipped["look"]})
 	}
 	qs = append(qs, w.readingQuestions()...)
 	return append(qs, w.claimsThatMatter()...)
+}
+
+// looked reports whether everything was looked for.
+func (w *Walk) looked() bool {
+	return !slices.ContainsFunc(w.book.Look, func(c Check) bool {
+		_, looked := w.part.Seen(c.Name)
+		return !looked
+	})
 }
 
 // claimsThatMatter asks for claims that were left out and would change what to do.

@@ -10,15 +10,15 @@ import (
 )
 
 func answerLooks(w *screening.Walk) {
-	for q := w.Next(); q.Ask == screening.AskLook; q = w.Next() {
-		w.See(q.Check.Name, false)
+	if w.Next().Ask == screening.AskLook {
+		w.SeeAll(nil)
 	}
 }
 
 func TestWalkAsksQuickReadingsThatCouldRejectFirst(t *testing.T) {
 	none := math.NaN()
 	w := screening.NewWalk(toy(), relative(0.001), toyPart(none, none, none))
-	if q := w.Next(); q.Ask != screening.AskLook || q.Check.Name != "cracked" {
+	if q := w.Next(); q.Ask != screening.AskLook || len(q.Checks) != 4 || q.Checks[0].Name != "cracked" {
 		t.Fatalf("first question %+v; the look comes before power", q)
 	}
 	answerLooks(w)
@@ -147,8 +147,7 @@ func TestWalkAPartStoppedByEyeIsNotPutUnderVoltage(t *testing.T) {
 	none := math.NaN()
 	w := screening.NewWalk(charging(), relative(0.001), toyPart(none, none, none))
 	_ = w.Record(exactly("remaining-voltage", quantity.Volt, 0))
-	w.See("cracked", true)
-	w.See("burnt", false)
+	w.SeeAll([]string{"cracked"})
 	w.GoOn()
 	for q := w.Next(); q.Ask != screening.AskNothing; q = w.Next() {
 		if q.Field.Name == "slow" {
@@ -214,5 +213,28 @@ func TestWalkAsksForAClaimOnceItMatters(t *testing.T) {
 	off.SetClaim(off.Part().Claim.WithTrait("technology", "film"))
 	if q := off.Next(); q.Ask != screening.AskNothing {
 		t.Errorf("a claim that was made is asked again: %+v", q)
+	}
+}
+
+func TestTheLookIsOneQuestion(t *testing.T) {
+	none := math.NaN()
+	w := screening.NewWalk(toy(), relative(0.001), toyPart(none, none, none))
+	w.See("cracked", false)
+	if q := w.Next(); q.Ask != screening.AskLook {
+		t.Errorf("after one check of four it asks %+v", q)
+	}
+	w.SeeAll([]string{"short-leads"})
+	if q := w.Next(); q.Ask == screening.AskLook {
+		t.Error("it looks twice")
+	}
+	if fault, looked := w.Part().Seen("short-leads"); !fault || !looked {
+		t.Error("what was seen is not kept")
+	}
+	w.SeeAll(nil)
+	if fault, _ := w.Part().Seen("short-leads"); fault {
+		t.Error("a second look does not correct the first")
+	}
+	if !w.Retract() || w.Next().Ask != screening.AskLook {
+		t.Error("taking the look back does not ask for it again")
 	}
 }

@@ -161,25 +161,18 @@ func (g *grid) addParsed(w *screening.Walk, parsed entry.Parsed) error {
 	return nil
 }
 
-// withLook answers a look; 00 answers every look that is left.
+// withLook answers the look: the digits of what is seen.
 func (g *grid) withLook(p inventory.Part, q screening.Question, text string) (inventory.Part, string, error) {
+	faults, err := entry.AnswerLook(q, text)
+	if err != nil {
+		return p, "", err
+	}
 	w := g.walkOf(p)
-	switch strings.ToLower(text) {
-	case "0", "n", "no":
-		w.See(q.Check.Name, false)
-		return g.finish(p, w), "looked: " + q.Check.Name + " no", nil
-	case "1", "y", "yes":
-		w.See(q.Check.Name, true)
-		return g.finish(p, w), "looked: " + q.Check.Name + " yes", nil
-	case "00":
-		for _, other := range w.Questions() {
-			if other.Ask == screening.AskLook && !other.Answered {
-				w.See(other.Check.Name, false)
-			}
-		}
+	w.SeeAll(faults)
+	if len(faults) == 0 {
 		return g.finish(p, w), "looked: nothing seen", nil
 	}
-	return p, "", fmt.Errorf("%q is no answer to a look; 0 is no, 1 is yes, 00 is no to all that are left", text)
+	return g.finish(p, w), "seen: " + strings.Join(faults, ", "), nil
 }
 
 // withReading reads a value. A question answered before is corrected in place; a repeat joins the series.

@@ -141,7 +141,7 @@ func (r gridRows) cells(i int, dst []string) {
 	if i == g.cur && g.pin != "" {
 		hand = g.pin
 	}
-	cells = append(cells, inHand(r.look(p), strings.HasPrefix(hand, "look:")))
+	cells = append(cells, inHand(r.look(p), hand == "look"))
 	for _, c := range r.shown {
 		in := c.holds(hand)
 		section := ""
@@ -296,12 +296,15 @@ func (g *grid) card() cardData {
 		p := g.parts[g.done]
 		w := g.walkOf(p)
 		j, err := w.Judgement()
-		return cardData{id: p.ID.String(), book: g.book, allKey: "F6", part: p, judged: j, err: err, told: toldAtGate(w)}
+		return cardData{
+			id: p.ID.String(), book: g.book, allKey: "F6", part: p, own: inventory.Claimed(p, g.lot).Claim, judged: j, err: err, told: toldAtGate(w),
+		}
 	}
 	q, open := g.question()
 	j, err := g.walk.Judgement()
 	c := cardData{
-		id: g.idText(), book: g.book, allKey: "F6", part: g.part, judged: j, err: err, told: toldAtGate(g.walk),
+		id: g.idText(), book: g.book, allKey: "F6", part: g.part, own: inventory.Claimed(g.part, g.lot).Claim, judged: j, err: err,
+		told:      toldAtGate(g.walk),
 		unclaimed: q.Ask == screening.AskClaim && g.fresh(), atGate: q.Ask == screening.AskGate,
 	}
 	_, c.open = g.questionOf(g.part, g.walk, "")
@@ -350,16 +353,7 @@ func (g *grid) showRecipe() tea.Cmd {
 	t := g.d.t
 	switch {
 	case open && q.Ask == screening.AskLook:
-		return showPager(&pager{title: "What to look for", lines: func(w int) []string {
-			lines := append(wrap(t.clean(q.Check.Question), w), "")
-			if q.Check.Help != "" {
-				lines = append(append(lines, wrap(t.clean(q.Check.Help), w)...), "")
-			}
-			for _, l := range wrap(t.clean(q.Check.Source.String()), w) {
-				lines = append(lines, t.faint.paint(l))
-			}
-			return lines
-		}})
+		return showPager(&pager{title: "What to look for", lines: func(w int) []string { return t.lookLines(q.Checks, w) }})
 	case !open || q.Ask != screening.AskReading:
 		return g.d.messages.say("F5 says how a reading is measured: go to one with Left or Right")
 	}

@@ -28,7 +28,7 @@ func (b *bench) startForm(lot inventory.Lot) {
 	b.from, b.mode, b.editing = b.mode, benchForm, lot
 	b.form = form{title: "New lot", fields: []formField{
 		fieldKind: {
-			label: "what is it", hint: "the first letters will do: " + strings.Join(kindNames(b.d.kinds), ", "),
+			label: "what is it", hint: "a kind, its first letters will do, or what is printed on it such as 104K: " + strings.Join(kindNames(b.d.kinds), ", "),
 			check: func(text string) ([]string, error) {
 				book, err := kindFor(b.d.kinds, text)
 				if err != nil {
@@ -39,6 +39,7 @@ func (b *bench) startForm(lot inventory.Lot) {
 				}
 				return []string{string(book.Kind) + ": " + book.Label}, nil
 			},
+			choices: b.markingChoices, pick: b.pickMarking,
 		},
 		fieldHeader: {
 			label: "it claims", hintFor: b.headerHint, check: b.understandHeader,
@@ -55,6 +56,26 @@ func (b *bench) startForm(lot inventory.Lot) {
 	for i, text := range []string{string(lot.Kind), lot.Header, lot.Place, lot.Source, lot.Storage, lot.Note} {
 		b.form.fields[i].in.set(text)
 	}
+}
+
+// markingChoices lists what a marking may mean, as kinds of part and what they then claim.
+func (b *bench) markingChoices(text string) []string {
+	if b.d.meanings == nil || b.editing.ID != 0 {
+		return nil
+	}
+	var texts []string
+	for _, m := range b.d.meanings(text) {
+		texts = append(texts, string(m.Kind)+"  "+m.Text+"  ("+m.Source+")")
+	}
+	return texts
+}
+
+// pickMarking starts the lot from one meaning of a marking: its kind, and what it claims, open for more.
+func (b *bench) pickMarking(text string, i int) {
+	m := b.d.meanings(text)[i]
+	b.form.fields[fieldKind].in.set(string(m.Kind))
+	b.form.fields[fieldHeader].in.set(m.Header)
+	b.form.focus(fieldHeader)
 }
 
 // headerHint shows what is printed on parts of the kind that was typed.

@@ -21,7 +21,7 @@ func (g *grid) drawPrompt(w, most int) ([]string, spot) {
 	field, at := g.fieldLine(q, open, w)
 	at.y = len(lines)
 	lines = append(lines, field)
-	lines = append(lines, g.underField(q, open, w)...)
+	lines = append(lines, g.underField(q, open, w, most-len(lines))...)
 	warnings := t.cautionLines(g.cautions(q, open), " ", w)
 	if room := max(0, most-len(lines)); len(warnings) > room {
 		warnings = warnings[:room]
@@ -100,7 +100,7 @@ func (g *grid) questionText(q screening.Question, open bool) (text, right string
 		}
 		return "volts that remain across it now, before it is touched?", "before going on"
 	case screening.AskLook:
-		return q.Check.Question, "look"
+		return "look: the digits of what you see, 0 for nothing", ""
 	}
 	text = q.Field.Label
 	if q.Section != "" {
@@ -164,27 +164,8 @@ func (g *grid) unit(q screening.Question, open bool) string {
 		return g.d.t.clean(entry.PromptUnit(q))
 	case screening.AskGate:
 		return "V"
-	case screening.AskLook:
-		switch text := strings.TrimSpace(g.in.String()); {
-		case text != "" && strings.Contains("+*/-", text):
-			return "" // what it does stands there instead
-		case g.looksLeft() > 1:
-			return "0 no   1 yes   00 no to all looks"
-		}
-		return "0 no   1 yes"
 	}
 	return ""
-}
-
-// looksLeft counts the looks that are not answered.
-func (g *grid) looksLeft() int {
-	n := 0
-	for _, q := range g.walk.Questions() {
-		if q.Ask == screening.AskLook && !q.Answered {
-			n++
-		}
-	}
-	return n
 }
 
 // commandEcho says what a sign alone would do.
@@ -221,8 +202,11 @@ func (g *grid) echo(q screening.Question, open bool) string {
 		}
 		return t.clean(strings.Join(parsed.Echo, "; "))
 	}
-	if !open || q.Ask == screening.AskLook {
+	if !open {
 		return ""
+	}
+	if q.Ask == screening.AskLook {
+		return t.clean(lookEcho(q, text))
 	}
 	if r, err := entry.Answer(q, text); err == nil {
 		echo := "= " + entry.Value(r)
@@ -238,7 +222,7 @@ func (g *grid) echo(q screening.Question, open bool) string {
 }
 
 // underField is the line under the field: what was wrong, the alarm, or how it is measured.
-func (g *grid) underField(q screening.Question, open bool, w int) []string {
+func (g *grid) underField(q screening.Question, open bool, w, room int) []string {
 	t := g.d.t
 	paintAll := func(k ink, text string, limit int) []string {
 		lines := wrapHang("   ", t.clean(text), w-1, limit, t.g.more)
@@ -256,8 +240,8 @@ func (g *grid) underField(q screening.Question, open bool, w int) []string {
 		return nil
 	case keyOf(q) == rowClaim:
 		return append(g.understood(w), paintAll(t.faint, g.claimHelp(), 2)...)
-	case q.Ask == screening.AskLook && q.Check.Help != "":
-		return paintAll(t.faint, q.Check.Help, 2)
+	case q.Ask == screening.AskLook:
+		return t.lookChoice(q.Checks, w, room)
 	case q.Ask == screening.AskClaim:
 		return paintAll(t.faint, claimFieldHelp(q.Field), 2)
 	case q.Ask == screening.AskGate:

@@ -41,12 +41,12 @@ func (d *testDesk) reading(number uint32, of screening.Characteristic) string {
 
 func TestNumbersAndEnterDoTheWholeMeasuringLoop(t *testing.T) {
 	d := newLot(t, "100uF 35V 1986")
-	d.mustShow("1-01", "Is it cracked?")
-	d.answer("0", "0", "98", "0.5")
+	d.mustShow("1-01", "look: the digits of what you see", "Is it cracked?")
+	d.answer("0", "98", "0.5")
 	if p := d.part(1); p.Outcome.Verdict != screening.Accept || len(p.Part.Readings) != 2 || len(p.Part.Look) != 2 {
 		t.Fatalf("part 1: %+v", p)
 	}
-	d.mustShow("1-02  Is it cracked?", "1-01 accept, within-spec", "not tested: leakage current at 35 V")
+	d.mustShow("1-02  look: the digits of what you see", "1-01 accept, within-spec", "not tested: leakage current at 35 V")
 	d.answer("00", "98", "5")
 	if v := d.part(2).Outcome.Verdict; v != screening.Reject {
 		t.Fatalf("part 2: %v", v)
@@ -77,7 +77,7 @@ func TestBenchReadingIsCorrectedInItsCell(t *testing.T) {
 	if p := d.part(1); len(p.Part.Readings) != 2 || p.Outcome.Verdict != screening.Accept {
 		t.Fatalf("after the correction %d readings, %v", len(p.Part.Readings), p.Outcome.Verdict)
 	}
-	d.mustShow("1-02  Is it cracked?")
+	d.mustShow("1-02  look: the digits of what you see")
 }
 
 func TestBenchSignsAloneAreCommands(t *testing.T) {
@@ -89,7 +89,7 @@ func TestBenchSignsAloneAreCommands(t *testing.T) {
 		if p := d.part(1); p.Outcome.Verdict != screening.Undecided || len(p.Skipped) != 1 {
 			t.Fatalf("%v, skipped %v", p.Outcome.Verdict, p.Skipped)
 		}
-		d.mustShow("skipped", "1-02  Is it cracked?")
+		d.mustShow("skipped", "1-02  look: the digits of what you see")
 	})
 	t.Run("* makes a series", func(t *testing.T) {
 		d := newLot(t, "100uF 35V")
@@ -109,7 +109,7 @@ func TestBenchSignsAloneAreCommands(t *testing.T) {
 		if r, _ := d.part(1).Part.Reading("esr", ""); len(r.Repeats) != 2 || r.Value != 0.6 {
 			t.Fatalf("series reads %+v", r)
 		}
-		d.mustShow("1-02  Is it cracked?")
+		d.mustShow("1-02  look: the digits of what you see")
 	})
 	t.Run("/ asks what is wanted", func(t *testing.T) {
 		d := newLot(t, "100uF 35V")
@@ -123,8 +123,8 @@ func TestBenchSignsAloneAreCommands(t *testing.T) {
 	t.Run("/ goes on after a stop", func(t *testing.T) {
 		d := newLot(t, "100uF 35V")
 		d.answer("1", "/")
-		d.mustShow("1-01  Does anything leak out?")
-		d.answer("0", "98")
+		d.mustShow("1-01  capacitance")
+		d.answer("98")
 		if p := d.part(1); !p.GoOn || p.Outcome.Verdict != screening.Barred {
 			t.Fatalf("go on %v, %v", p.GoOn, p.Outcome.Verdict)
 		}
@@ -185,7 +185,7 @@ func TestBenchGateKeepsHandsOffAChargedPart(t *testing.T) {
 	d.answer("120")
 	d.mustShow("DANGER: 120 V remain. Hands off", "across it now", "measuring begins with the volts that remain")
 	d.answer("3")
-	d.mustShow("Is it cracked?")
+	d.mustShow("look: the digits")
 	if p := d.part(1); len(p.Part.Readings) != 2 {
 		t.Errorf("the volts measured are not kept: %+v", p.Part.Readings)
 	}
@@ -246,7 +246,7 @@ func TestBenchSurvivesUndoingItsOwnLot(t *testing.T) {
 func TestBenchSaysWhatWouldBeRight(t *testing.T) {
 	d := newLot(t, "100uF 35V")
 	d.answer("7")
-	d.mustShow(`"7" is no answer to a look; 0 is no, 1 is yes`)
+	d.mustShow("there is no 7 to look for; 0 for nothing, or the digits 1 to 2")
 	d.press("ctrl+u")
 	d.answer("00", "45V")
 	d.mustShow("capacitance:", "voltage")
@@ -290,7 +290,7 @@ func TestBenchNextPromptWaitsForTheDisk(t *testing.T) {
 	if got := d.reading(1, "esr"); got == "" {
 		t.Fatalf("the keys that waited were lost:\n%s", d.screen())
 	}
-	d.mustShow("1-02  Is it cracked?")
+	d.mustShow("1-02  look: the digits of what you see")
 }
 
 func TestBenchGivesTheTextBackWhenNothingWasKept(t *testing.T) {

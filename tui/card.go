@@ -17,6 +17,7 @@ type cardData struct {
 	id        string
 	book      *screening.Rulebook
 	part      inventory.Part
+	own       screening.Claim // what the part itself, or its lot, claims
 	judged    screening.Judgement
 	err       error
 	open      bool                // something is still asked
@@ -106,6 +107,9 @@ func (t *theme) verdictLines(c cardData, w, h int) []string {
 		for _, l := range wrapHang("not tested: ", t.clean(untested), w, reasons, t.g.more) {
 			lines = append(lines, t.label.paint(l))
 		}
+	}
+	if pinout := j.Pinout(c.own); pinout != "" {
+		lines = append(lines, wrapHang("pinout ", t.clean(pinout), w, 2, t.g.more)...)
 	}
 	for _, s := range j.Next[:min(len(j.Next), steps)] {
 		for _, l := range wrapHang(t.g.marker+" ", t.clean(s.Text), w, 3, t.g.more) {
@@ -365,6 +369,9 @@ func (t *theme) allOf(c cardData, w int) []string {
 	}
 	if untested := c.notTested(); untested != "" {
 		add("not tested: ", untested)
+	}
+	if pinout := j.Pinout(c.own); pinout != "" {
+		add("pinout ", pinout)
 	}
 	for _, s := range j.Next {
 		add(t.g.marker+" ", s.Text)

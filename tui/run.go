@@ -21,6 +21,11 @@ type Options struct {
 	Policy       screening.Policy
 	Now          func() time.Time // the clock; nil is time.Now
 
+	// Meanings lists what a marking may mean, the likeliest first; nil: markings are not read.
+	Meanings func(marking string) []Meaning
+
+	Width, Height int // of the terminal in cells, until it tells its own size; 0 where unknown
+
 	ASCII   bool // spell every sign in ASCII
 	NoColor bool // no colour and no bold
 	Bell    bool // tell verdicts apart by ear, see [Bells]
@@ -28,6 +33,14 @@ type Options struct {
 
 	In  io.Reader // the terminal
 	Out io.Writer // the terminal
+}
+
+// Meaning is one thing that a marking may say: a kind of part, and what it then claims.
+type Meaning struct {
+	Kind   screening.Kind
+	Header string // the claim in words that the kind reads: "100nF 10%"
+	Text   string // the same for people: "100 nF ±10 %"
+	Source string // the scheme, and how well it is known
 }
 
 // endTime is how long Run waits for what is being written when the program is closed.
@@ -40,7 +53,7 @@ func Run(ctx context.Context, o Options) error {
 	defer cancel()
 	out := withCursor(o.Out)
 	d := &desk{
-		wb: o.Workbook, kinds: o.Kinds, policy: o.Policy, now: o.Now, ctx: ctx, t: newTheme(o.Out, o.ASCII, o.NoColor), tables: o.Tables,
+		wb: o.Workbook, kinds: o.Kinds, policy: o.Policy, now: o.Now, ctx: ctx, t: newTheme(o.Out, o.ASCII, o.NoColor), tables: o.Tables, meanings: o.Meanings,
 	}
 	if d.now == nil {
 		d.now = time.Now
@@ -49,6 +62,7 @@ func Run(ctx context.Context, o Options) error {
 		d.ring = bell(out)
 	}
 	m := newModel(d, o.WorkbookName, o.Demo)
+	m.w, m.h = o.Width, o.Height
 	_, err := tea.NewProgram(m, tea.WithContext(ctx), tea.WithInput(o.In), tea.WithOutput(out), tea.WithAltScreen()).Run()
 	d.wait(endTime)
 	cancel()

@@ -182,7 +182,7 @@ func (s *stock) detailLines(w, h int) []string {
 // card is the part as a card shows it.
 func (o *partOpened) card(d *desk) cardData {
 	book, _ := d.kinds.Find(o.judged.Part.Kind)
-	return cardData{id: o.part.ID.String(), book: book, allKey: "Enter", part: o.part, judged: o.judged, err: o.err}
+	return cardData{id: o.part.ID.String(), book: book, allKey: "Enter", part: o.part, own: inventory.Claimed(o.part, o.lot).Claim, judged: o.judged, err: o.err}
 }
 
 // keptLines are what the workbook knows beside the verdict: place, count, readings, history.

@@ -26,6 +26,7 @@ type desk struct {
 	messages *messages
 	ring     func(times int) tea.Cmd // nil: no bell
 	tables   string                  // version of the tables
+	meanings func(string) []Meaning  // what a marking may mean; nil: markings are not read
 
 	ctx     context.Context
 	running sync.WaitGroup

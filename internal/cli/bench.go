@@ -95,6 +95,7 @@ func (a *app) showPages(ctx context.Context, bell bool) error {
 		return tui.Run(ctx, tui.Options{
 			Workbook: w, WorkbookName: name, Kinds: a.books, Tables: a.tablesText(), Policy: screening.DefaultPolicy(), Now: a.env.Now,
 			ASCII: a.env.ascii, NoColor: a.env.plain, Bell: bell, Demo: a.demo, In: a.env.In, Out: a.env.Out,
+			Width: a.env.Width, Height: a.env.Height,
 		})
 	})
 }
@@ -147,6 +148,7 @@ type lines struct {
 	repeating bool               // the next reading joins the one before
 	warn      map[string]bool    // cautions said for this part
 	treat     int                // of the header: treated before
+	lookTold  screening.Kind     // whose look was listed in full
 }
 
 func (l *lines) say(format string, args ...any) error { return l.env.line(format, args...) }

@@ -13,16 +13,16 @@ import (
 
 // question asks one question of the walk until it is answered, skipped, or a command leads elsewhere.
 func (l *lines) question(ctx context.Context, q screening.Question) error {
+	if err := l.tellLook(q); err != nil {
+		return err
+	}
 	return l.answer(ctx, prompt(q), func(text string) error {
 		if text == "" || text == "+" {
 			return l.skip(q)
 		}
 		if q.Ask == screening.AskLook {
-			if fault, ok := yesOrNo(text); ok {
-				return l.look(q, fault)
-			}
-			if text == "00" {
-				return l.nothingSeen()
+			if faults, err := entry.AnswerLook(q, text); err == nil {
+				return l.look(faults)
 			}
 		}
 		if err := l.command(ctx, q, text); !errors.Is(err, errAnswer) {
@@ -30,7 +30,8 @@ func (l *lines) question(ctx context.Context, q screening.Question) error {
 		}
 		switch q.Ask {
 		case screening.AskLook:
-			return again("%q is neither yes nor no: y or 1 where it is so, n or 0 where it is not", text)
+			_, err := entry.AnswerLook(q, text)
+			return refusal(err)
 		case screening.AskClaim:
 			return l.claim(q, text)
 		}
@@ -42,7 +43,7 @@ func (l *lines) question(ctx context.Context, q screening.Question) error {
 func prompt(q screening.Question) string {
 	switch q.Ask {
 	case screening.AskLook:
-		return q.Check.Question + " (y/n)"
+		return "look: the digits of what you see, 0 for nothing"
 	case screening.AskClaim:
 		if q.Need != screening.Required {
 			return q.Field.Label + ", which matters here, such as " + q.Field.Example + " (empty: not known)"
@@ -65,14 +66,18 @@ func prompt(q screening.Question) string {
 	return text
 }
 
-func yesOrNo(text string) (yes, ok bool) {
-	switch strings.ToLower(text) {
-	case "y", "yes", "1":
-		return true, true
-	case "n", "no", "0":
-		return false, true
+// tellLook lists what to look for, a line and a digit each, the first time that a kind is looked at; later ? lists it.
+func (l *lines) tellLook(q screening.Question) error {
+	if q.Ask != screening.AskLook || l.lookTold == l.book.Kind {
+		return nil
 	}
-	return false, false
+	l.lookTold = l.book.Kind
+	for i, c := range q.Checks {
+		if err := l.say("%d %s", i+1, c.Question); err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 // skip leaves a question for later. The volts remaining are never skipped: the part would be touched unasked.
@@ -88,20 +93,10 @@ func (l *lines) skip(q screening.Question) error {
 	return l.say("skipped")
 }
 
-func (l *lines) look(q screening.Question, fault bool) error {
-	l.walk.See(q.Check.Name, fault)
-	if fault {
-		return l.save("seen: " + q.Check.Name)
-	}
-	return l.save("looked for " + q.Check.Name + ": no")
-}
-
-// nothingSeen answers no to every look that is left.
-func (l *lines) nothingSeen() error {
-	for _, q := range l.walk.Questions() {
-		if q.Ask == screening.AskLook && !q.Answered {
-			l.walk.See(q.Check.Name, false)
-		}
+func (l *lines) look(faults []string) error {
+	l.walk.SeeAll(faults)
+	if len(faults) > 0 {
+		return l.save("seen: " + strings.Join(faults, ", "))
 	}
 	return l.save("looked: nothing seen")
 }
@@ -222,7 +217,9 @@ func (l *lines) helpFor(q screening.Question) string {
 	var b strings.Builder
 	switch q.Ask {
 	case screening.AskLook:
-		b.WriteString(q.Check.Question + " " + q.Check.Help)
+		for i, c := range q.Checks {
+			fmt.Fprintf(&b, "%d %s %s\n", i+1, c.Question, c.Help)
+		}
 	case screening.AskClaim, screening.AskReading, screening.AskGate:
 		fmt.Fprintf(&b, "%s: %s", q.Field.Label, q.Field.Help)
 	}

@@ -185,7 +185,7 @@ func TestBothFacesOfTheCommandLineAgree(t *testing.T) {
 	if _, stderr, status := runHere(t, "", "screen", box, "--workbook", screened); status == ExitRequest || stderr != "" {
 		t.Fatalf("screen: exit status %d: %s", status, stderr)
 	}
-	answers := "resistor\n4k7 5%\n\n\n0\n0\n4.68\n\n0\n0\n5.9\n\n0\n0\n4.9\nq\n"
+	answers := "resistor\n4k7 5%\n\n\n0\n4.68\n\n0\n5.9\n\n0\n4.9\nq\n"
 	if _, stderr, status := runHere(t, answers, "bench", "--lines", "--workbook", typed); status != ExitDone || stderr != "" {
 		t.Fatalf("bench: exit status %d: %s", status, stderr)
 	}
@@ -201,7 +201,7 @@ func TestLinesNeverEndOddly(t *testing.T) {
 		"nothing":              "",
 		"half a line":          "resis",
 		"unknown kinds":        "x\ny\n\nq\n",
-		"escapes":              "resistor\n\x1b[31m\n4k7\n\x1b]0;x\a\n\n0\n0\n\x1b[2J\nq\n",
+		"escapes":              "resistor\n\x1b[31m\n4k7\n\x1b]0;x\a\n\n0\n\x1b[2J\nq\n",
 		"a line of a megabyte": "resistor\n" + strings.Repeat("4", 1<<20) + "\n4k7\n\n\nq\n",
 		"only commands":        "resistor\n4k7\n\n\nb\nr\nw\ng\n?\nn\nl\n?\nq\n",
 		"back at the start":    "resistor\n4k7\n\n\nb\n0\nb\nb\nq\n",

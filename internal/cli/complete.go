@@ -37,7 +37,7 @@ func (a *app) completeWords(_ *cobra.Command, args []string, typing string) ([]s
 		}
 	}
 	words = append(words, "seen=\twhat was found by eye")
-	for _, name := range types.Names(book.Kind) {
+	for _, name := range types.Builtin().Names(book.Kind) {
 		words = append(words, name+"\ttype number")
 	}
 	var fitting []string

@@ -3,6 +3,8 @@ package cli
 import (
 	"io"
 	"time"
+
+	"goodbin/screening"
 )
 
 // Env is what the program runs in; tests give their own.
@@ -12,10 +14,11 @@ type Env struct {
 	Err     io.Writer
 	Now     func() time.Time
 	Getenv  func(string) string
-	DemoBox []byte // the CSV of the invented box
+	DemoBox []byte                // the CSV of the invented box
+	Kinds   []*screening.Rulebook // kinds beyond the program's own; every face takes them from their fields alone
 
 	InTerminal, OutTerminal, ErrTerminal bool
-	Width                                int    // of the terminal in cells; 0 where unknown
+	Width, Height                        int    // of the terminal in cells; 0 where unknown
 	Executable                           string // path of this program, which verify starts again as its child
 
 	ascii bool // spell every sign in ASCII

@@ -96,7 +96,7 @@ func TestPageAndLinearModeSayTheSame(t *testing.T) {
 			}
 			for i, part := range sameLot {
 				term.await(fmt.Sprintf("1-%02d", i+1))
-				term.await("across the mains")
+				term.await("look: the digits")
 				term.enter("00")
 				term.await("resistance")
 				term.enter(part.reading)
@@ -114,7 +114,7 @@ func TestPageAndLinearModeSayTheSame(t *testing.T) {
 		workbook := filepath.Join(t.TempDir(), "lines.goodbin")
 		answers := "resistor\n4k7 5% carbon-film\ntray A\n\n"
 		for _, part := range sameLot {
-			answers += "n\nn\n" + part.reading + "\n\n"
+			answers += "n\n" + part.reading + "\n\n"
 		}
 		lines := exec.Command(program, "bench", "--lines", "--workbook", workbook)
 		lines.Stdin = strings.NewReader(answers + "q\n")
@@ -165,7 +165,7 @@ func TestReopeningLandsOnTheSamePart(t *testing.T) {
 	for _, text := range []string{"resistor", "10k 5%", "tray B", "", "", ""} {
 		first.enter(text)
 	}
-	first.await("across the mains")
+	first.await("look: the digits")
 	first.enter("00")
 	first.await("resistance")
 	first.enter("9.98")
@@ -191,7 +191,7 @@ func TestASecondProcessReadsACopy(t *testing.T) {
 	for _, text := range []string{"resistor", "10k 5%", "tray B", "", "", ""} {
 		term.enter(text)
 	}
-	term.await("across the mains")
+	term.await("look: the digits")
 	term.enter("00")
 	term.await("resistance")
 	term.enter("9.98")

@@ -17,8 +17,8 @@ const turnOnCurrent = 100e-6
 
 // adjust holds the rules that look across readings: what leakage makes of a gain, where a low gain says nothing, what a base-emitter
 // voltage outside its band looks like.
-func adjust(part screening.Part, findings []screening.Finding) ([]screening.Finding, []screening.Reason) {
-	p := promiseOf(part.Claim)
+func (b rulebook) adjust(part screening.Part, findings []screening.Finding) ([]screening.Finding, []screening.Reason) {
+	p := b.promiseOf(part.Claim)
 	var why []screening.Reason
 	undecided := gainUndecided(findings)
 	proven := provenVoltage(part, findings)

@@ -12,9 +12,9 @@ import (
 )
 
 func TestCautionsAndRecipes(t *testing.T) {
-	book := Book()
+	book := Book(types.Builtin())
 	codes := func(c screening.Claim) []string {
-		completed, _, _ := complete(c)
+		completed, _, _ := builtin.complete(c)
 		var codes []string
 		for _, caution := range book.Cautions(screening.Part{Claim: completed}, screening.AtMeasure) {
 			if caution.Text == "" || caution.Source.Status == screening.NoStatus {
@@ -34,10 +34,10 @@ func TestCautionsAndRecipes(t *testing.T) {
 			t.Errorf("%s: cautions %v, want %v", name, got, want)
 		}
 	}
-	for _, name := range types.Names(Kind) {
-		completed, _, _ := complete(words("type=" + name))
+	for _, name := range types.Builtin().Names(Kind) {
+		completed, _, _ := builtin.complete(words("type=" + name))
 		part := screening.Part{Claim: completed}
-		all, _ := limits(completed)
+		all, _ := builtin.limits(completed)
 		for _, l := range all {
 			found := book.Recipes(part, l)
 			if len(found) == 0 && l.Evidence != screening.ByRating {
@@ -60,8 +60,8 @@ func TestCautionsAndRecipes(t *testing.T) {
 // The lamp test must turn on a power Darlington whose resistors hold it off below 70 to 100 µA (simulated TIP122: gain 20 at 70 µA, 376 at
 // 100 µA), and prove more gain than its weak bound.
 func TestLampRecipeTurnsADarlingtonOn(t *testing.T) {
-	completed, _, _ := complete(words("type=TIP122"))
-	r := lampRecipe(promiseOf(completed))
+	completed, _, _ := builtin.complete(words("type=TIP122"))
+	r := lampRecipe(builtin.promiseOf(completed))
 	ib, collector := r.Values["base-current"], r.Values["collector-current"]
 	if ib < 5*turnOnCurrent {
 		t.Errorf("base current %g A, turn-on %g A", ib, turnOnCurrent)
@@ -77,8 +77,8 @@ func TestLampRecipeTurnsADarlingtonOn(t *testing.T) {
 }
 
 func TestGainRecipeMeetsItsCondition(t *testing.T) {
-	completed, _, _ := complete(words("type=BC547B"))
-	p := promiseOf(completed)
+	completed, _, _ := builtin.complete(words("type=BC547B"))
+	p := builtin.promiseOf(completed)
 	promised, _ := completed.Rating(HFE.Name, "")
 	r := gainRecipe(p, limitOf(&HFE, CriterionGain, &promised))
 	// 9 V, 5 V across the part: 4 V over R_C at 2 mA is 2 kΩ; IB at the middle of 200 to 450 (300) is 6.67 µA from 9 − 0.65 V.
@@ -92,7 +92,7 @@ func TestWalkAsksQuickReadingsFirst(t *testing.T) {
 		"BC547": {"vbe", "hfe", "iceo"},
 		"AC128": {"vbe", "temperature", "hfe", "iceo", "hfe-net"},
 	} {
-		w := screening.NewWalk(Book(), screening.DefaultPolicy(), screening.Part{Claim: words("type=" + name)})
+		w := screening.NewWalk(Book(types.Builtin()), screening.DefaultPolicy(), screening.Part{Claim: words("type=" + name)})
 		var got []screening.Characteristic
 		for _, q := range w.Questions() {
 			if q.Ask == screening.AskReading && !slices.Contains(got, q.Field.Name) {
@@ -110,9 +110,12 @@ func TestWalkAsksQuickReadingsFirst(t *testing.T) {
 
 // A junction that reads open is turned before it is measured again; the walk asks for that and for nothing twice.
 func TestWalkTurnsTheProbesOfAnOpenJunction(t *testing.T) {
-	w := screening.NewWalk(Book(), screening.DefaultPolicy(), screening.Part{
-		Claim: words("type=BC547B"), Look: []screening.Observation{{Check: "mains-or-cracked"}},
-	})
+	b := Book(types.Builtin())
+	var look []screening.Observation
+	for _, check := range b.Look {
+		look = append(look, screening.Observation{Check: check.Name})
+	}
+	w := screening.NewWalk(b, screening.DefaultPolicy(), screening.Part{Claim: words("type=BC547B"), Look: look})
 	if err := w.Record(open(VBE)); err != nil {
 		t.Fatal(err)
 	}
@@ -152,7 +155,7 @@ func TestCommandLineExamples(t *testing.T) {
 		{"blocks what the supply has", "2N3904 hfe@10mA,1V=180 vbe=0.68 iceo@20V=..0.1uA vbr=30V..", screening.Accept},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
-			parsed, err := entry.Words(Book(), strings.Fields(tt.line))
+			parsed, err := entry.Words(Book(types.Builtin()), strings.Fields(tt.line))
 			if err != nil {
 				t.Fatal(err)
 			}

@@ -32,23 +32,27 @@ const (
 // edition goes up when a rule in code changes; a change of the tables changes the version by itself.
 const edition = "3"
 
-// Book returns the rulebook of bipolar transistors.
-func Book() *screening.Rulebook {
+// rulebook is the rulebook's functions with the table of types that they look names up in.
+type rulebook struct{ types *types.Table }
+
+// Book returns the rulebook of bipolar transistors for a table of types.
+func Book(t *types.Table) *screening.Rulebook {
+	b := rulebook{t}
 	return &screening.Rulebook{
 		Kind:     Kind,
 		Label:    "bipolar transistor",
-		Tables:   book.Version(Kind, edition, limitsCSV) + ", " + types.Version(),
-		Claims:   claims(),
+		Tables:   book.Version(Kind, edition, limitsCSV) + ", " + t.Version(Kind),
+		Claims:   b.claims(),
 		Bench:    bench(),
-		Look:     []screening.Check{book.MainsOrCracked()},
-		Complete: complete,
-		Limits:   limits,
+		Look:     book.Look(),
+		Complete: b.complete,
+		Limits:   b.limits,
 		Derive:   derive,
 		Convert:  convert,
-		Adjust:   adjust,
-		Lesser:   lesser,
-		Untested: untested,
-		Cautions: cautions,
-		Recipes:  recipes,
+		Adjust:   b.adjust,
+		Lesser:   b.lesser,
+		Untested: b.untested,
+		Cautions: b.cautions,
+		Recipes:  b.recipes,
 	}
 }

@@ -6,6 +6,7 @@ import (
 	"testing"
 
 	"goodbin/rules/internal/booktest"
+	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -59,7 +60,7 @@ const (
 
 func judge(t *testing.T, claim screening.Claim, readings ...screening.Reading) screening.Judgement {
 	t.Helper()
-	j, err := screening.Judge(Book(), screening.Part{Claim: claim, Readings: readings}, screening.DefaultPolicy())
+	j, err := screening.Judge(Book(types.Builtin()), screening.Part{Claim: claim, Readings: readings}, screening.DefaultPolicy())
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -337,7 +338,7 @@ func TestVerdicts(t *testing.T) {
 	for _, tt := range verdictCases() {
 		t.Run(tt.name, func(t *testing.T) {
 			part := screening.Part{Claim: tt.claim, Readings: tt.readings, Look: tt.look}
-			j, err := screening.Judge(Book(), part, screening.DefaultPolicy())
+			j, err := screening.Judge(Book(types.Builtin()), part, screening.DefaultPolicy())
 			if err != nil {
 				t.Fatal(err)
 			}

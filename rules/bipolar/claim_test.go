@@ -13,28 +13,28 @@ import (
 
 func TestEveryLimitHasASourceAndCounts(t *testing.T) {
 	claims := []screening.Claim{words("polarity=npn"), words("polarity=pnp", "material=ge"), words("polarity=npn", "technology=darlington"), {}}
-	for _, name := range types.Names(Kind) {
+	for _, name := range types.Builtin().Names(Kind) {
 		claims = append(claims, words("type="+name))
-		row, _ := types.Lookup(Kind, name)
+		row, _ := types.Builtin().Lookup(Kind, name)
 		for _, g := range row.Groups {
 			claims = append(claims, words("type="+name, "group="+g.Name))
 		}
 	}
 	bench := map[screening.Characteristic]bool{}
-	for _, f := range Book().Bench {
+	for _, f := range Book(types.Builtin()).Bench {
 		bench[f.Name] = true
 	}
 	for _, c := range claims {
-		completed, _, err := complete(c)
+		completed, _, err := builtin.complete(c)
 		if err != nil {
 			t.Errorf("%v: %v", c, err)
 			continue
 		}
-		again, _, err := complete(completed)
+		again, _, err := builtin.complete(completed)
 		if diff := cmp.Diff(completed, again, cmp.AllowUnexported(screening.Condition{}), nanEqual); err != nil || diff != "" {
 			t.Errorf("%v: completing twice changes the claim (%v):\n%s", c, err, diff)
 		}
-		all, err := limits(completed)
+		all, err := builtin.limits(completed)
 		if err != nil {
 			t.Errorf("%v: %v", c, err)
 		}
@@ -78,7 +78,7 @@ func TestComplete(t *testing.T) {
 		{"group of a type without any", words("type=2N3904", "group=B"), nil, `group: "B", but no gain group of 2N3904 is known; leave it out`},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
-			c, _, err := complete(tt.claim)
+			c, _, err := builtin.complete(tt.claim)
 			if tt.err != "" {
 				if err == nil || err.Error() != tt.err {
 					t.Errorf("error %v, want %s", err, tt.err)
@@ -102,7 +102,7 @@ func TestAPartsOwnRatingsStandBeforeItsTypes(t *testing.T) {
 	own.At, own.Typed = at(ic, 2e-3, vce, 5.0), "200..300"
 	volts := screening.NominalRating(VCEO, 30)
 	volts.Typed = "30V"
-	c, _, err := complete(words("type=BC547").WithRating(own).WithRating(volts))
+	c, _, err := builtin.complete(words("type=BC547").WithRating(own).WithRating(volts))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -118,7 +118,7 @@ func TestAPartsOwnRatingsStandBeforeItsTypes(t *testing.T) {
 }
 
 func TestFieldsTakeWordsOfTheBench(t *testing.T) {
-	f, _ := Book().ClaimField(screening.TraitType)
+	f, _ := Book(types.Builtin()).ClaimField(screening.TraitType)
 	for word, want := range map[string]string{
 		"bc547b": "BC547B", "BC337-25": "BC337-25", "c1815-gr": "2SC1815-GR", "2n3904": "2N3904", "1N4148": "", "npn": "", "45V": "",
 	} {
@@ -126,7 +126,7 @@ func TestFieldsTakeWordsOfTheBench(t *testing.T) {
 			t.Errorf("type takes %q as %q, %v", word, got, ok)
 		}
 	}
-	g, _ := Book().ClaimField(screening.TraitGroup)
+	g, _ := Book(types.Builtin()).ClaimField(screening.TraitGroup)
 	for word, want := range map[string]string{"b": "B", "-25": "25", "GR": "GR", "viii": "VIII", "Z": ""} {
 		if got, _ := g.AcceptText(word); got != want {
 			t.Errorf("group takes %q as %q", word, got)
@@ -135,7 +135,7 @@ func TestFieldsTakeWordsOfTheBench(t *testing.T) {
 }
 
 func TestUnitsOfDefinitions(t *testing.T) {
-	for _, f := range append(Book().Claims, Book().Bench...) {
+	for _, f := range append(Book(types.Builtin()).Claims, Book(types.Builtin()).Bench...) {
 		if f.Trait {
 			continue
 		}

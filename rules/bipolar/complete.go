@@ -15,9 +15,9 @@ import (
 // taken as silicon unless it says otherwise; one whose type is in no table must say what it is made of, for its name cannot.
 //
 // It returns an error where the claim contradicts its type: another polarity or material, or a group that the type does not have.
-func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
+func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	name := c.Trait(screening.TraitType)
-	row, known := types.Lookup(Kind, name)
+	row, known := b.types.Lookup(Kind, name)
 	var notes []screening.Reason
 	switch {
 	case known:
@@ -26,7 +26,7 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 			return c, nil, err
 		}
 	case name != "":
-		notes = append(notes, book.Note("", "%s is in no table: it is judged on general limits only", name))
+		notes = append(notes, b.types.UnknownNote("", Kind, c, name+" is not in the table: it is judged on general limits only"))
 	case c.Trait(screening.TraitMaterial) == "":
 		c = c.WithTrait(screening.TraitMaterial, silicon)
 		notes = append(notes, book.Note("", "no material claimed: taken as silicon; say ge for germanium"))
@@ -144,12 +144,12 @@ type promise struct {
 // resistors (house).
 const powerCurrent, highPower = 1.0, 3.0
 
-func promiseOf(c screening.Claim) *promise {
+func (b rulebook) promiseOf(c screening.Claim) *promise {
 	p := &promise{
 		claim: c, polarity: c.Trait(screening.TraitPolarity), material: c.Trait(screening.TraitMaterial),
 		darlington: c.Trait(screening.TraitTechnology) == darlington, vceo: nan, icMax: nan,
 	}
-	p.row, p.known = types.Lookup(Kind, c.Trait(screening.TraitType))
+	p.row, p.known = b.types.Lookup(Kind, c.Trait(screening.TraitType))
 	if r, ok := c.Rating(VCEO.Name, ""); ok {
 		p.vceo = r.Low
 	}

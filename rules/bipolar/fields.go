@@ -33,17 +33,14 @@ var (
 		AtAmperes: screening.IC, Over: VBE.Over,
 	}
 	// ICEO is the collector-emitter current with the base open.
-	ICEO = screening.Definition{
-		Name: "iceo", Symbol: "ICEO", Label: "collector-emitter leakage, base open", Unit: quantity.Ampere,
-		AtVolts: screening.VCE, AtAmperes: screening.IC,
-	}
+	ICEO = screening.ICEO
 	// ICBO is the collector-base current with the emitter open.
 	ICBO = screening.Definition{
 		Name: "icbo", Symbol: "ICBO", Label: "collector-base leakage, emitter open", Unit: quantity.Ampere,
 		AtVolts: screening.VCB, AtAmperes: screening.IC,
 	}
 	// VCEO, VCBO and VEBO are ratings: the voltages that the part claims to stand with the third lead open.
-	VCEO = screening.Definition{Name: "vceo", Symbol: "VCEO", Label: "rated collector-emitter voltage", Unit: quantity.Volt}
+	VCEO = screening.VCEO
 	VCBO = screening.Definition{Name: "vcbo", Symbol: "VCBO", Label: "rated collector-base voltage", Unit: quantity.Volt}
 	VEBO = screening.Definition{Name: "vebo", Symbol: "VEBO", Label: "rated emitter-base voltage", Unit: quantity.Volt}
 	// ICMax is a rating: the collector current that the part claims to carry.
@@ -62,14 +59,14 @@ const (
 const polarityLabel, materialLabel = "polarity (npn or pnp)", "material (si or ge)"
 
 // claims lists what is printed on a transistor or stands in its sheet.
-func claims() []screening.Field {
+func (b rulebook) claims() []screening.Field {
 	return []screening.Field{
 		{
-			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "BC547B", AcceptText: acceptType,
+			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "BC547B", AcceptText: b.acceptType,
 			Help: "the type number as printed, with its gain group",
 		},
 		{
-			Definition: book.Trait(screening.TraitGroup, "gain group"), Trait: true, Example: "group=B", AcceptText: types.GroupNamed,
+			Definition: book.Trait(screening.TraitGroup, "group"), Trait: true, Example: "group=B", AcceptText: b.types.GroupNamed,
 			Help: "the letter or number after the type; it belongs to that type",
 		},
 		{
@@ -162,8 +159,8 @@ func bench() []screening.Field {
 }
 
 // acceptType takes a word that is a known type number, alone or with one of its groups; its canonical text keeps the group.
-func acceptType(word string) (string, bool) {
-	row, ok := types.Lookup(Kind, word)
+func (b rulebook) acceptType(word string) (string, bool) {
+	row, ok := b.types.Lookup(Kind, word)
 	if !ok {
 		return "", false
 	}

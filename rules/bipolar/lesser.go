@@ -14,8 +14,8 @@ const asMeasured = "as measured"
 
 // lesser answers a gain that its claim does not promise: the other groups of the type that hold it, the type without a group, and above
 // the type's range its minimum alone. Nothing looser than the type's own minimum is offered, and nothing for any other failure.
-func lesser(part screening.Part, findings []screening.Finding) []screening.Lesser {
-	p := promiseOf(part.Claim)
+func (b rulebook) lesser(part screening.Part, findings []screening.Finding) []screening.Lesser {
+	p := b.promiseOf(part.Claim)
 	failed := failedGain(findings)
 	if !p.known || failed == nil {
 		return nil

@@ -71,8 +71,8 @@ func mustBeClaimed(of *screening.Definition, criterion screening.Criterion, grad
 const fewestLimits = 10
 
 // limits lists what a transistor of this claim must meet.
-func limits(c screening.Claim) ([]screening.Limit, error) {
-	p := promiseOf(c)
+func (b rulebook) limits(c screening.Claim) ([]screening.Limit, error) {
+	p := b.promiseOf(c)
 	all := p.polarityLimits(make([]screening.Limit, 0, fewestLimits+2*len(p.row.Points)))
 	if p.material == "" {
 		material := book.Trait(screening.TraitMaterial, materialLabel)

@@ -19,8 +19,8 @@ const (
 )
 
 // recipes say how to measure what a limit asks with what people own.
-func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
-	p := promiseOf(part.Claim)
+func (b rulebook) recipes(part screening.Part, l screening.Limit) []screening.Recipe {
+	p := b.promiseOf(part.Claim)
 	switch l.On {
 	case VBE.Name:
 		return []screening.Recipe{vbeRecipe(p)}

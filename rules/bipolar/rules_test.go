@@ -16,12 +16,12 @@ import (
 func TestEveryTypesLimitsEqualItsRow(t *testing.T) {
 	for _, ref := range booktest.Reference(t, "../types/testdata/types-ref.csv", 99) {
 		name := ref["type"]
-		claim, _, err := complete(words("type=" + name))
+		claim, _, err := builtin.complete(words("type=" + name))
 		if err != nil {
 			t.Errorf("%s: %v", name, err)
 			continue
 		}
-		all, err := limits(claim)
+		all, err := builtin.limits(claim)
 		if err != nil {
 			t.Errorf("%s: %v", name, err)
 			continue
@@ -62,7 +62,7 @@ func TestGainBoundaries(t *testing.T) {
 		part := screening.Part{Claim: words("type=BC547B"), Readings: []screening.Reading{
 			read(VBE, 0.65, none), read(HFE, gain, at(ic, 2e-3, vce, 5.0)), atMost(read(ICEO, 0.1e-6, at(vce, 20.0))),
 		}}
-		j, err := screening.Judge(Book(), part, policy)
+		j, err := screening.Judge(Book(types.Builtin()), part, policy)
 		if err != nil || j.Verdict != want {
 			t.Errorf("gain %g: %s (%v), want %s\n%s", gain, j.Verdict, err, want, texts(j))
 		}
@@ -76,7 +76,7 @@ func TestAPoorMeterNeverRejectsAMiddlingPart(t *testing.T) {
 	part := screening.Part{Claim: words("type=BC547B"), Readings: []screening.Reading{
 		read(VBE, 0.65, none), read(HFE, 300, at(ic, 2e-3, vce, 5.0)), read(ICEO, 0.1e-6, at(vce, 20.0)),
 	}}
-	j, err := screening.Judge(Book(), part, policy)
+	j, err := screening.Judge(Book(types.Builtin()), part, policy)
 	if err != nil || j.Verdict == screening.Reject || j.Verdict == screening.Regrade {
 		t.Errorf("verdict %s, %v\n%s", j.Verdict, err, texts(j))
 	}
@@ -85,14 +85,14 @@ func TestAPoorMeterNeverRejectsAMiddlingPart(t *testing.T) {
 // Laws over all types: what is sound by its own row, measured at its own condition, is never rejected; and a gain far below the sheet's
 // currents never rejects either, whatever it reads above one.
 func TestSoundPartsAreNeverRejected(t *testing.T) {
-	names := types.Names(Kind)
+	names := types.Builtin().Names(Kind)
 	rapid.Check(t, func(rt *rapid.T) {
 		name := rapid.SampledFrom(names).Draw(rt, "type")
-		c, _, err := complete(words("type=" + name))
+		c, _, err := builtin.complete(words("type=" + name))
 		if err != nil {
 			rt.Fatal(err)
 		}
-		p := promiseOf(c)
+		p := builtin.promiseOf(c)
 		promised, _ := c.Rating(HFE.Name, "")
 		high := math.Min(promised.High, 4*promised.Low)
 		gain := rapid.Float64Range(promised.Low*1.2, math.Max(promised.Low*1.2, high*0.85)).Draw(rt, "gain")
@@ -104,7 +104,7 @@ func TestSoundPartsAreNeverRejected(t *testing.T) {
 			where = at(ic, 3e-6, vce, 5.0) // below every current that a sheet prints
 			gain = rapid.Float64Range(1.5, 2*promised.Low).Draw(rt, "low gain")
 		}
-		j, err := screening.Judge(Book(), screening.Part{Claim: words("type=" + name), Readings: []screening.Reading{
+		j, err := screening.Judge(Book(types.Builtin()), screening.Part{Claim: words("type=" + name), Readings: []screening.Reading{
 			read(VBE, vbe, none), read(HFE, gain, where), read(ICEO, 1e-6, at(vce, 9.0, warm, 22.0)),
 		}}, screening.DefaultPolicy())
 		if err != nil {
@@ -117,7 +117,7 @@ func TestSoundPartsAreNeverRejected(t *testing.T) {
 }
 
 func BenchmarkJudge(b *testing.B) {
-	booktest.Benchmark(b, Book(), "BC547B vbe=0.65 hfe@ic=2mA,vce=5V=290 iceo@20V=..0.1uA")
+	booktest.Benchmark(b, Book(types.Builtin()), "BC547B vbe=0.65 hfe@ic=2mA,vce=5V=290 iceo@20V=..0.1uA")
 }
 
 // A gain limit that asks the same at both grades is shown once, unless the reading is sure enough for one of them only.

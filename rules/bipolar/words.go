@@ -11,8 +11,8 @@ import (
 )
 
 // untested words what the readings leave unproven: blocking above the voltage used, gain away from the sheet's current.
-func untested(part screening.Part, findings []screening.Finding) []string {
-	p := promiseOf(part.Claim)
+func (b rulebook) untested(part screening.Part, findings []screening.Finding) []string {
+	p := b.promiseOf(part.Claim)
 	var words []string
 	if proven := provenVoltage(part, findings); proven > 0 {
 		switch {
@@ -70,11 +70,11 @@ const (
 )
 
 // cautions warn at the measuring step: what spoils the part, what spoils the reading, what can hurt.
-func cautions(part screening.Part, when screening.Moment) []screening.Caution {
+func (b rulebook) cautions(part screening.Part, when screening.Moment) []screening.Caution {
 	if when != screening.AtMeasure {
 		return nil
 	}
-	p := promiseOf(part.Claim)
+	p := b.promiseOf(part.Claim)
 	all := []screening.Caution{reverseBaseEmitter(p)}
 	if p.material == germanium {
 		all = append(all, screening.Caution{

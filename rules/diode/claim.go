@@ -15,7 +15,7 @@ import (
 var inf = math.Inf(1)
 
 // complete adds what the type's row says, and refuses a claim that contradicts it.
-func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
+func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	if text := c.Trait(screening.TraitTechnology); text != "" {
 		if _, ok := technologyNamed(text); !ok {
 			return c, nil, fmt.Errorf("technology: %q is not known; one of %s", text, technologyNames())
@@ -30,9 +30,10 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	var notes []screening.Reason
 	name := c.Trait(screening.TraitType)
 	if name != "" {
-		row, ok := types.Lookup(Kind, name)
+		row, ok := b.types.Lookup(Kind, name)
 		if !ok {
-			notes = append(notes, book.Note(screening.VF.Name, "type %s is not in the table: claim what its sheet says, such as rated:vrrm=400V", name))
+			notes = append(notes, b.types.UnknownNote(screening.VF.Name, Kind, c,
+				"type "+name+" is not in the table: claim what its sheet says, such as rated:vrrm=400V"))
 		} else {
 			if err := contradicts(c, row); err != nil {
 				return c, nil, err
@@ -67,7 +68,7 @@ func contradicts(c screening.Claim, row types.Row) error {
 		}
 	}
 	claimed, ok := ratedVoltage(c)
-	tabled, has := row.Rating(VRRM.Name)
+	tabled, has := row.Rating(screening.VRRM.Name)
 	if ok && has && claimed > tabled.Low {
 		return fmt.Errorf("vrrm: %s is claimed, but %s is rated %s", quantity.Format(claimed, quantity.Volt, 0), row.Type,
 			quantity.Format(tabled.Low, quantity.Volt, 0))
@@ -101,7 +102,7 @@ func withRow(c screening.Claim, row types.Row) screening.Claim {
 
 // ratedVoltage returns the reverse voltage in volts that the diode claims to block.
 func ratedVoltage(c screening.Claim) (float64, bool) {
-	r, ok := c.Rating(VRRM.Name, "")
+	r, ok := c.Rating(screening.VRRM.Name, "")
 	return r.Low, ok && !math.IsInf(r.Low, 0)
 }
 

@@ -20,17 +20,8 @@ const Kind = types.Diode
 // edition goes up when a rule in code changes; a change of the tables changes the version by itself.
 const edition = "3"
 
-// Ratings of a diode.
-var (
-	// VRRM is the reverse voltage that it claims to block again and again.
-	VRRM = screening.Definition{Name: "vrrm", Symbol: "VRRM", Label: "rated reverse voltage", Unit: quantity.Volt}
-	// IFAV is the average forward current that it claims to carry.
-	IFAV = screening.Definition{Name: "if-av", Symbol: "IF(AV)", Label: "rated forward current", Unit: quantity.Ampere}
-	// IFSM is the surge of one half-wave that it claims to survive.
-	IFSM = screening.Definition{Name: "ifsm", Symbol: "IFSM", Label: "rated surge current", Unit: quantity.Ampere}
-	// TRR is the time that it claims to need to block again.
-	TRR = screening.Definition{Name: "trr", Symbol: "trr", Label: "reverse recovery time", Unit: quantity.Second}
-)
+// TRR is the time that a diode claims to need to block again.
+var TRR = screening.Definition{Name: "trr", Symbol: "trr", Label: "reverse recovery time", Unit: quantity.Second}
 
 // The criteria.
 const (
@@ -46,19 +37,23 @@ const TraitDual = "dual"
 // testerCurrent is what a diode test is taken to send through a junction where no current is stated (house).
 const testerCurrent = 1e-3
 
-// Book returns the rulebook.
-func Book() *screening.Rulebook {
+// rulebook is the rulebook's functions with the table of types that they look names up in.
+type rulebook struct{ types *types.Table }
+
+// Book returns the rulebook for a table of types.
+func Book(t *types.Table) *screening.Rulebook {
+	b := rulebook{t}
 	return &screening.Rulebook{
-		Kind: Kind, Label: "diode", Tables: book.Version(Kind, edition, expectedCSV, soundCSV, leakageCSV, variantsCSV) + ", " + types.Version(),
-		Claims: claims(), Bench: bench(), Look: []screening.Check{book.MainsOrCracked()},
-		Complete: complete, Limits: limits, Convert: convert, Adjust: adjust, Untested: untested, Cautions: cautions, Recipes: recipes,
+		Kind: Kind, Label: "diode", Tables: book.Version(Kind, edition, expectedCSV, soundCSV, leakageCSV, variantsCSV) + ", " + t.Version(Kind),
+		Claims: b.claims(), Bench: bench(), Look: book.Look(),
+		Complete: b.complete, Limits: limits, Convert: convert, Adjust: adjust, Untested: untested, Cautions: cautions, Recipes: recipes,
 	}
 }
 
-func claims() []screening.Field {
+func (b rulebook) claims() []screening.Field {
 	return []screening.Field{
 		{
-			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "1N4148", AcceptText: acceptType,
+			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "1N4148", AcceptText: b.acceptType,
 			Help: "the type number as printed; a known one says all the rest",
 		},
 		{
@@ -72,11 +67,11 @@ func claims() []screening.Field {
 			},
 		},
 		{
-			Definition: VRRM, Example: "400V", AcceptRange: atLeastIn(quantity.Volt, "V"),
+			Definition: screening.VRRM, Example: "400V", AcceptRange: atLeastIn(quantity.Volt, "V"),
 			Help: "the reverse voltage it claims to block",
 		},
 		{
-			Definition: IFAV, Example: "1A", AcceptRange: atLeastIn(quantity.Ampere, "A"),
+			Definition: screening.IFAV, Example: "1A", AcceptRange: atLeastIn(quantity.Ampere, "A"),
 			Help: "the forward current it claims to carry; not tested",
 		},
 		{
@@ -89,7 +84,7 @@ func claims() []screening.Field {
 				{Word: "series", Text: "in series"},
 			},
 		},
-		{Definition: IFSM, Example: "rated:ifsm=30A", Help: "the surge of one half-wave that its sheet allows; not tested"},
+		{Definition: screening.IFSM, Example: "rated:ifsm=30A", Help: "the surge of one half-wave that its sheet allows; not tested"},
 		{Definition: screening.VF, Example: "rated:vf@1A=..1.1V", Help: "the highest forward voltage its sheet allows, at a current"},
 		{Definition: screening.IR, Example: "rated:ir@400V=..5uA", Help: "the highest reverse current its sheet allows, at a voltage"},
 		{Definition: TRR, Example: "rated:trr=50ns", Help: "the recovery time of its sheet; not tested"},
@@ -98,8 +93,8 @@ func claims() []screening.Field {
 	}
 }
 
-func acceptType(word string) (string, bool) {
-	row, ok := types.Lookup(Kind, word)
+func (b rulebook) acceptType(word string) (string, bool) {
+	row, ok := b.types.Lookup(Kind, word)
 	return row.Type, ok
 }
 

@@ -18,7 +18,7 @@ import (
 // judge judges a part from the words that a person types.
 func judge(t testing.TB, words string, policy screening.Policy) screening.Judgement {
 	t.Helper()
-	return booktest.Judge(t, Book(), words, policy)
+	return booktest.Judge(t, Book(types.Builtin()), words, policy)
 }
 
 var verdictCases = []struct {
@@ -120,7 +120,7 @@ func refRows(t testing.TB) []refRow {
 func TestEveryTypeAtItsOwnLimits(t *testing.T) {
 	for _, row := range refRows(t) {
 		t.Run(row.name, func(t *testing.T) {
-			completed, _, err := complete(screening.Claim{}.WithTrait(screening.TraitType, row.name))
+			completed, _, err := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, row.name))
 			if err != nil {
 				t.Fatal(err)
 			}
@@ -151,7 +151,7 @@ func hold(t *testing.T, row refRow, section string, of screening.Definition, at 
 			r.Value *= 1 + sign*1e-3
 			want = screening.Fail
 		}
-		j, err := screening.Judge(Book(), screening.Part{
+		j, err := screening.Judge(Book(types.Builtin()), screening.Part{
 			Claim: screening.Claim{}.WithTrait(screening.TraitType, row.name), Readings: []screening.Reading{r},
 		}, booktest.Exactly())
 		if err != nil {
@@ -187,9 +187,9 @@ func TestClaimsThatContradictThemselves(t *testing.T) {
 		"technology=valve":       "",
 		"material=selenium":      "",
 	} {
-		p, err := entry.Words(Book(), strings.Fields(words))
+		p, err := entry.Words(Book(types.Builtin()), strings.Fields(words))
 		if err == nil {
-			_, err = screening.Judge(Book(), screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
+			_, err = screening.Judge(Book(types.Builtin()), screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
 		}
 		if err == nil || !strings.Contains(err.Error(), want) {
 			t.Errorf("%s: %v, want %q", words, err, want)
@@ -207,12 +207,12 @@ func TestClaimsThatContradictThemselves(t *testing.T) {
 
 // A bare value of a diode's print is what it bears.
 func TestBareValues(t *testing.T) {
-	p, err := entry.Words(Book(), []string{"400V", "3A", "schottky", "dual"})
+	p, err := entry.Words(Book(types.Builtin()), []string{"400V", "3A", "schottky", "dual"})
 	if err != nil {
 		t.Fatal(err)
 	}
 	v, ok := ratedVoltage(p.Claim)
-	i, _ := p.Claim.Rating(IFAV.Name, "")
+	i, _ := p.Claim.Rating(screening.IFAV.Name, "")
 	if !ok || v != 400 || i.Low != 3 || technologyOf(p.Claim).name != schottky || len(sections(p.Claim)) != 2 {
 		t.Errorf("%v V, %v A, %s, %v", v, i.Low, technologyOf(p.Claim).name, sections(p.Claim))
 	}
@@ -222,9 +222,9 @@ func TestBareValues(t *testing.T) {
 }
 
 func TestCompleteIsIdempotent(t *testing.T) {
-	for _, name := range types.Names(Kind) {
-		once, _, err := complete(screening.Claim{}.WithTrait(screening.TraitType, name))
-		twice, _, err2 := complete(once)
+	for _, name := range types.Builtin().Names(Kind) {
+		once, _, err := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, name))
+		twice, _, err2 := builtin.complete(once)
 		if err != nil || err2 != nil || !slices.Equal(once.Traits, twice.Traits) || len(once.Ratings) != len(twice.Ratings) {
 			t.Errorf("%s: %v, %v", name, err, err2)
 		}
@@ -237,8 +237,8 @@ func TestCompleteIsIdempotent(t *testing.T) {
 // However poor the meter, a diode that reads inside its band and its sheet's maximum, and blocks, is never rejected.
 func TestASoundDiodeIsNeverRejected(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		name := rapid.SampledFrom(types.Names(Kind)).Draw(t, "type")
-		completed, _, err := complete(screening.Claim{}.WithTrait(screening.TraitType, name))
+		name := rapid.SampledFrom(types.Builtin().Names(Kind)).Draw(t, "type")
+		completed, _, err := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, name))
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -257,7 +257,7 @@ func TestASoundDiodeIsNeverRejected(t *testing.T) {
 				screening.Reading{Of: screening.VF.Name, Section: section, Unit: quantity.Volt, Value: vf},
 				screening.Reading{Of: screening.VBR.Name, Section: section, Unit: quantity.Volt, Value: 2, Over: true, Sense: quantity.AtLeast})
 		}
-		j, err := screening.Judge(Book(), part, policy)
+		j, err := screening.Judge(Book(types.Builtin()), part, policy)
 		if err != nil || j.Verdict == screening.Reject {
 			t.Fatalf("%s: %s, %v\n%s", name, j.Verdict, err, booktest.Texts(j))
 		}
@@ -284,8 +284,8 @@ func TestTablesAreChecked(t *testing.T) {
 }
 
 func TestCautionsAndRecipes(t *testing.T) {
-	completed, _, _ := complete(screening.Claim{}.WithTrait(screening.TraitType, "1N4007"))
-	cautions := Book().Cautions(screening.Part{Claim: completed}, screening.AtMeasure)
+	completed, _, _ := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, "1N4007"))
+	cautions := Book(types.Builtin()).Cautions(screening.Part{Claim: completed}, screening.AtMeasure)
 	if len(cautions) != 2 || cautions[1].Level != screening.Danger {
 		t.Fatalf("%+v", cautions)
 	}
@@ -304,8 +304,8 @@ func TestCautionsAndRecipes(t *testing.T) {
 			t.Errorf("the text does not say %q: %s", words, cautions[1].Text)
 		}
 	}
-	signal, _, _ := complete(screening.Claim{}.WithTrait(screening.TraitType, "1N5819"))
-	if got := Book().Cautions(screening.Part{Claim: signal}, screening.AtMeasure); len(got) != 1 {
+	signal, _, _ := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, "1N5819"))
+	if got := Book(types.Builtin()).Cautions(screening.Part{Claim: signal}, screening.AtMeasure); len(got) != 1 {
 		t.Errorf("40 V needs no warning of a supply that kills: %+v", got)
 	}
 	all, err := limits(completed)
@@ -313,7 +313,7 @@ func TestCautionsAndRecipes(t *testing.T) {
 		t.Fatal(err)
 	}
 	for _, l := range all {
-		found := Book().Recipes(screening.Part{Claim: completed}, l)
+		found := Book(types.Builtin()).Recipes(screening.Part{Claim: completed}, l)
 		if len(found) == 0 {
 			t.Errorf("%s: no recipe", l.On)
 		}
@@ -332,4 +332,6 @@ func TestCautionsAndRecipes(t *testing.T) {
 	}
 }
 
-func BenchmarkJudge(b *testing.B) { booktest.Benchmark(b, Book(), "1N4148 vf=0.62 vbr=OL") }
+func BenchmarkJudge(b *testing.B) {
+	booktest.Benchmark(b, Book(types.Builtin()), "1N4148 vf=0.62 vbr=OL")
+}

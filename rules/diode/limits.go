@@ -104,7 +104,7 @@ func testVoltage(c screening.Claim) float64 {
 func breakdownLimits(all []screening.Limit, c screening.Claim, section string) []screening.Limit {
 	l := limit(screening.VBR, breakdownCriterion, section)
 	l.Need = screening.Wanted
-	rating, ok := c.Rating(VRRM.Name, "")
+	rating, ok := c.Rating(screening.VRRM.Name, "")
 	if !ok || math.IsInf(rating.Low, 0) {
 		l.Low = leastRating
 		l.Source = screening.Source{Document: "the lowest VRRM of the type table (1N5817, 1N5820)", Status: screening.Derived}

@@ -43,7 +43,7 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	if err != nil {
 		return findings, nil // the limits have said so already
 	}
-	var reasons []screening.Reason
+	reasons := neverReversed(part)
 	var unproved []screening.Finding
 	for _, u := range us {
 		v := viewOf(part, u, findings)
@@ -89,9 +89,9 @@ func viewOf(part screening.Part, u unit, findings []screening.Finding) view {
 			v.capacitance = append(v.capacitance, f)
 		case criterionLoss:
 			v.loss = append(v.loss, f)
-		case criterionLeakage:
+		case criterionLeakage, criterionReversed:
 			v.leakage = append(v.leakage, f)
-		case criterionCeiling:
+		case criterionCeiling, criterionCeilingReversed:
 			v.ceiling = append(v.ceiling, f)
 		}
 	}
@@ -105,6 +105,28 @@ func hasOutcome(findings []*screening.Finding, outcome screening.Outcome) bool {
 		}
 	}
 	return false
+}
+
+// holds reports whether leakage passes each way that the part must hold.
+func (v *view) holds() bool {
+	for _, w := range ways(v.part.Claim) {
+		if !slices.ContainsFunc(v.leakage, func(f *screening.Finding) bool {
+			return f.Limit.Criterion == w.leakage && f.Outcome == screening.Pass
+		}) {
+			return false
+		}
+	}
+	return true
+}
+
+// leaking returns the first leakage criterion that fails.
+func (v *view) leaking() screening.Criterion {
+	for _, f := range v.leakage {
+		if f.Outcome == screening.Fail {
+			return f.Limit.Criterion
+		}
+	}
+	return criterionLeakage
 }
 
 // readsHigh reports whether the capacitance reads above the top of its tolerance, and the reading.
@@ -134,7 +156,7 @@ func (v *view) suspectLeakage() []screening.Reason {
 	text := fmt.Sprintf("capacitance reads %s, above its tolerance: a leaky part reads high, so leakage at %s decides",
 		microfarads(reading.Value), quantity.Format(v.unit.volts, quantity.Volt, 0))
 	failed := hasOutcome(v.leakage, screening.Fail)
-	passed := hasOutcome(v.leakage, screening.Pass) && !failed
+	passed := v.holds() && !failed
 	switch {
 	case failed && inFaultEra(v.part.Claim):
 		return v.suspectFaultEra()
@@ -233,7 +255,7 @@ func lesser(part screening.Part, findings []screening.Finding) []screening.Lesse
 			return nil
 		}
 		for _, volts := range lowerVoltages(part, u) {
-			all = append(all, lowerVoltage(part.Claim, u, volts))
+			all = append(all, lowerVoltage(part.Claim, u, volts, v.leaking()))
 		}
 	}
 	return all
@@ -258,13 +280,27 @@ func spoilt(findings []*screening.Finding) bool {
 	return doubt && !pass
 }
 
-// lowerVoltages lists the voltages below the rated one at which leakage of a section was read, highest first; a reading within 3 % of a
-// printed rating counts for that rating.
+// lowerVoltages lists the voltages below the rated one at which leakage of a section was read, each way that the part must hold, highest first.
 func lowerVoltages(part screening.Part, u unit) []float64 {
+	var volts []float64
+	for i, w := range ways(part.Claim) {
+		read := voltagesRead(part, u, w.on.Name)
+		if i == 0 {
+			volts = read
+			continue
+		}
+		volts = slices.DeleteFunc(volts, func(v float64) bool { return !slices.Contains(read, v) })
+	}
+	return volts
+}
+
+// voltagesRead lists the voltages below the rated one at which one leakage was read; a reading within 3 % of a printed rating counts for
+// that rating.
+func voltagesRead(part screening.Part, u unit, of screening.Characteristic) []float64 {
 	var volts []float64
 	for _, r := range part.Readings {
 		x, ok := r.At.Get(screening.Voltage)
-		if r.Of != screening.Leakage.Name || r.Section != u.section || !ok || x < leastVolts || x >= u.volts*nearlyAtRated[screening.Voltage].Low {
+		if r.Of != of || r.Section != u.section || !ok || x < leastVolts || x >= u.volts*nearlyAtRated[screening.Voltage].Low {
 			continue
 		}
 		for _, v := range ladderVolts {
@@ -291,12 +327,12 @@ func insertDescending(list []float64, x float64) []float64 {
 	return list
 }
 
-func lowerVoltage(claim screening.Claim, u unit, volts float64) screening.Lesser {
+func lowerVoltage(claim screening.Claim, u unit, volts float64, answers screening.Criterion) screening.Lesser {
 	r, _ := claim.Rating(screening.RatedVoltage.Name, u.section)
 	r.Nominal, r.Low, r.High, r.Typed = volts, volts, volts, ""
 	r.Source = screening.Source{Document: "leakage read at this voltage", Status: screening.House}
 	return screening.Lesser{
-		Claim: claim.WithRating(r), Answers: criterionLeakage, Source: r.Source,
+		Claim: claim.WithRating(r), Answers: answers, Source: r.Source,
 		Text: fmt.Sprintf("for use up to %g V instead of %g V, on the leakage read there: mark it %g V", volts, u.volts, volts),
 	}
 }

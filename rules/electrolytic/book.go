@@ -2,7 +2,7 @@
 //
 // A part prints capacitance and rated voltage, sometimes a tolerance and a date. Three questions decide: is the capacitance there
 // (criterion capacitance), are the losses low (criterion loss: ESR or tan δ at 100/120 Hz), does the oxide stand the voltage (criterion
-// leakage: one point 1, 2 or 5 minutes after the rated voltage is applied). A part that has dried out reads low with high ESR; nothing
+// leakage: one point 1, 2 or 5 minutes after the rated voltage is applied; of a non-polar part one each way round). A part that has dried out reads low with high ESR; nothing
 // undoes that. A part that has lost its oxide in storage leaks, and reads high; re-forming can undo that.
 package electrolytic
 
@@ -17,7 +17,7 @@ import (
 const Kind screening.Kind = "electrolytic"
 
 // edition goes up when a rule in code changes; a change of the tables changes the version by itself.
-const edition = "3"
+const edition = "4"
 
 // Book returns the rulebook.
 func Book() *screening.Rulebook {
@@ -76,6 +76,7 @@ func claims() []screening.Field {
 			Definition: book.Trait(traitCanSize, "can size"), Trait: true, Example: "10x20",
 			Help: "diameter by length in mm; it says how much heat the can stands while it is re-formed", AcceptText: acceptCanSize,
 		},
+		technologyField(),
 		{
 			Definition: book.Trait(traitSeries, "maker's series"), Trait: true, Example: "sound-series",
 			Help:  "sound-series where others of its series and years have lasted; it counts for parts of 1999 to 2007 that read high and leak",
@@ -117,6 +118,11 @@ func bench() []screening.Field {
 			Default: screening.At(screening.PartTemperature, roomTemperature), Fit: nearlyAtRated, Band: screening.Span{Low: 0, High: 10},
 		},
 		{
+			Definition: LeakageReversed, Example: "leakage-reversed@50V,5min=45uA", Effort: 6 * time.Minute, UnderVoltage: true,
+			Help:    "of a non-polar part only: the same with its leads swapped, after it was discharged",
+			Default: screening.At(screening.PartTemperature, roomTemperature), Fit: nearlyAtRated, Band: screening.Span{Low: 0, High: 10},
+		},
+		{
 			Definition: screening.Temperature, PerPart: true, Example: "temperature=24C", Effort: 5 * time.Second,
 			Help: "of the part; room temperature is assumed where none is given", Band: screening.Span{Low: -60, High: 150},
 		},
@@ -128,12 +134,11 @@ func bench() []screening.Field {
 }
 
 func looks() []screening.Check {
-	return []screening.Check{
-		book.MainsOrCracked(),
-		{
+	return book.Look(
+		screening.Check{
 			Name:     bulged,
 			Words:    []string{"bulged", "leaking", "crusted", "vented"},
-			Question: "Is it bulged, split at the vent, leaking, crusted, or is the bung pushed out?",
+			Question: "Bulged, vented, leaking, crusted, or the bung pushed out?",
 			Help: "look at the vent on top, the rubber bung and the board below it; a bulge under the sleeve can be felt. " +
 				"No such sign is no proof of health",
 			Verdict: screening.Reject,
@@ -144,7 +149,7 @@ func looks() []screening.Check {
 				Status: screening.Published,
 			},
 		},
-	}
+	)
 }
 
 // bulged is the name of the check for a part that has vented.

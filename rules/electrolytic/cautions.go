@@ -56,7 +56,7 @@ func leaks(part screening.Part, u unit) bool {
 		if r.Section != u.section || r.Sense == quantity.AtMost {
 			continue
 		}
-		if r.Of == screening.Leakage.Name && aboveLimitInUse(part.Claim, u, r) {
+		if isLeakage(r.Of) && aboveLimitInUse(part.Claim, u, r) {
 			return true
 		}
 	}
@@ -78,7 +78,7 @@ func aboveLimitInUse(claim screening.Claim, u unit, r screening.Reading) bool {
 		if row.set != set || !row.covers(u) || after < row.after*nearlyAtRated[screening.After].Low || !surelyAbove(&r, row.amperes(u)) {
 			continue
 		}
-		published, ok := generalLeakage(u, after)
+		published, ok := publishedLeakage(claim, u, after)
 		if row.source.Status.MayReject() || ok && surelyAbove(&r, published) {
 			return true
 		}
@@ -159,9 +159,13 @@ func underVoltage(claim screening.Claim, us []unit) screening.Caution {
 		}
 	}
 	c := chargingOf(claim, u)
-	text := fmt.Sprintf("leakage puts up to %s on the part: plus to plus (reversed by more than 1 V it can burst), through %s. The resistor limits the "+
+	wayRound := "plus to plus (reversed by more than 1 V it can burst)"
+	if nonPolar(claim) {
+		wayRound = "one way round, then discharged, then the other"
+	}
+	text := fmt.Sprintf("leakage puts up to %s on the part: %s, through %s. The resistor limits the "+
 		"supply, not the charge that is already in the part: it leaves the test charged, so discharge it and read the volts that remain.",
-		quantity.Format(c.supply, quantity.Volt, 0), c.resistor())
+		quantity.Format(c.supply, quantity.Volt, 0), wayRound, c.resistor())
 	if u.volts > book.TouchVoltage {
 		text += highVoltageHelp
 	}
@@ -178,15 +182,19 @@ func reforming(claim screening.Claim, u unit) screening.Caution {
 	if u.section != "" {
 		fmt.Fprintf(&b, "section %s: ", u.section)
 	}
-	fmt.Fprintf(&b, "re-form only a part that is neither bulged nor leaking. %s, plus to plus, through %s; about %s to charge. ",
-		quantity.Format(c.supply, quantity.Volt, 0), c.resistor(), duration(c.seconds))
+	fmt.Fprintf(&b, "re-form only a part that is neither bulged nor leaking. %s, %s, through %s; about %s to charge. ",
+		quantity.Format(c.supply, quantity.Volt, 0), connect(claim, screening.Leakage.Name), c.resistor(), duration(c.seconds))
 	fmt.Fprintf(&b, "Read the volts across the part itself. Once it is charged at most %s may flow",
 		quantity.Format(c.current, quantity.Ampere, 2))
 	if c.heat {
 		fmt.Fprintf(&b, " (%.2g W warms this can by 10 K)", c.current*c.supply)
 	}
 	b.WriteString("; hold until the current is steady, at least an hour; stop if it warms or the current rises. The resistor limits the supply, " +
-		"not the charge already in the part. Then discharge it, read the volts that remain, rest it 12 to 48 h without voltage, and take the leakage reading " +
+		"not the charge already in the part. Then discharge it, ")
+	if nonPolar(claim) {
+		b.WriteString("do the same with its leads swapped (from memory), discharge it again, ")
+	}
+	b.WriteString("read the volts that remain, rest it 12 to 48 h without voltage, and take the leakage reading " +
 		"that decides.")
 	if u.volts > book.TouchVoltage {
 		b.WriteString(highVoltageHelp)

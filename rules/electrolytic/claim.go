@@ -107,6 +107,9 @@ func toleranceBounds(r screening.Rating) (low, high float64, err error) {
 // complete adds the tolerance that a part without a printed one has by its age and case.
 func complete(claim screening.Claim) (screening.Claim, []screening.Reason, error) {
 	var notes []screening.Reason
+	if err := checkTechnology(claim); err != nil {
+		return claim, nil, err
+	}
 	if claim.Trait(screening.TraitDated) != "" {
 		if _, ok := claim.Year(); !ok {
 			return claim, nil, fmt.Errorf("dated: %q is no year such as 1974 or decade such as 197x", claim.Trait(screening.TraitDated))

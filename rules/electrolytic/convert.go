@@ -27,7 +27,7 @@ func convert(part screening.Part, r screening.Reading, l screening.Limit) screen
 		return convertESR(part, r, l)
 	case screening.TanDelta.Name:
 		return screening.Conversion{Why: "tan δ holds at 100 or 120 Hz only: measure it, or ESR, there"}
-	case screening.Leakage.Name:
+	case screening.Leakage.Name, LeakageReversed.Name:
 		return convertLeakage(r, l)
 	}
 	return screening.Conversion{}
@@ -92,7 +92,7 @@ func convertLeakage(r screening.Reading, l screening.Limit) screening.Conversion
 	limitAfter, _ := l.At.Get(screening.After)
 	celsius, _ := r.At.Get(screening.PartTemperature)
 	if !hasVolts || !hasAfter {
-		return screening.Conversion{Why: fmt.Sprintf("say at which voltage and after how long: leakage@%s,%gmin=…",
+		return screening.Conversion{Why: fmt.Sprintf("say at which voltage and after how long: %s@%s,%gmin=…", r.Of,
 			compact(rated, "V"), limitAfter/60)}
 	}
 	if math.Abs(celsius-roomTemperature) > leakageReach {

@@ -29,8 +29,8 @@ func (v *view) confirm() []screening.Reason {
 			continue
 		}
 		after, _ := f.Limit.At.Get(screening.After)
-		published, ok := generalLeakage(v.unit, after)
-		if !ok || f.Limit.Criterion == criterionCeiling || !surelyAbove(e, published) {
+		published, ok := publishedLeakage(v.part.Claim, v.unit, after)
+		if !ok || isCeiling(f.Limit.Criterion) || !surelyAbove(e, published) {
 			reasons = append(reasons, screening.Reason{Code: codeUnconfirmed, Of: f.Limit.On, Text: fmt.Sprintf(
 				"leakage reads %s, above the %s limit of %s; that figure is %s and rejects nothing by itself",
 				quantity.Format(e.Value, quantity.Ampere, 3), f.Limit.Set, quantity.Format(f.Limit.High, quantity.Ampere, 3), f.Limit.Source.Status)})

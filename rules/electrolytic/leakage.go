@@ -121,11 +121,14 @@ func microfarads(c float64) string {
 	return strconv.FormatFloat(book.Honest(c*1e6, 0, 4), 'f', -1, 64) + " µF"
 }
 
-// leakageSetFor returns the set that counts for a unit: vintage military for parts dated before 1980, snap-in for snap-in and screw cans,
-// else general.
+// leakageSetFor returns the set that counts for a unit: vintage military for parts dated before 1980, non-polar for non-polar types, snap-in
+// for snap-in and screw cans, else general.
 func leakageSetFor(claim screening.Claim, u unit) screening.LimitSet {
 	set := screening.GeneralSet
-	if largeCan(claim) {
+	switch {
+	case nonPolar(claim):
+		set = nonPolarSet
+	case largeCan(claim):
 		set = screening.SnapInSet
 	}
 	if year, ok := claim.Year(); ok && year < vintageBefore {
@@ -154,17 +157,24 @@ func leakageNeed(claim screening.Claim, u unit) screening.Need {
 	return screening.Wanted
 }
 
-// leakageLimits lists the leakage limits of every set for a unit, and the ceilings.
+// leakageLimits lists the leakage limits of every set for a unit, and the ceilings, each way that the part must hold.
 func leakageLimits(limits []screening.Limit, claim screening.Claim, u *unit) []screening.Limit {
+	for _, w := range ways(claim) {
+		limits = leakageLimitsOf(limits, claim, u, w)
+	}
+	return limits
+}
+
+func leakageLimitsOf(limits []screening.Limit, claim screening.Claim, u *unit, w way) []screening.Limit {
 	inUse, need := leakageSetFor(claim, *u), leakageNeed(claim, *u)
 	rows := embedded().leakage
 	least, longest := math.Inf(1), 0.0
 	for i := range rows {
 		row := &rows[i]
-		if !row.covers(*u) {
+		if !row.covers(*u) || row.set == nonPolarSet && !nonPolar(claim) {
 			continue
 		}
-		l := leakageLimit(u, row.after, row.amperes(*u), row.source)
+		l := leakageLimit(u, w, row.after, row.amperes(*u), row.source)
 		l.Need, l.Set, l.InUse, l.Note = need, row.set, row.set == inUse, row.note
 		l.Formula = func() string { return row.formula(*u) }
 		if l.InUse {
@@ -172,12 +182,12 @@ func leakageLimits(limits []screening.Limit, claim screening.Claim, u *unit) []s
 		}
 		limits = append(limits, l)
 	}
-	return ceilings(limits, claim, u, least, longest)
+	return ceilings(limits, claim, u, w, least, longest)
 }
 
-func leakageLimit(u *unit, after, high float64, source screening.Source) screening.Limit {
+func leakageLimit(u *unit, w way, after, high float64, source screening.Source) screening.Limit {
 	return screening.Limit{
-		On: screening.Leakage.Name, Unit: quantity.Ampere, Section: u.section, Criterion: criterionLeakage,
+		On: w.on.Name, Unit: quantity.Ampere, Section: u.section, Criterion: w.leakage,
 		At:  screening.At(screening.Voltage, u.volts).With(screening.After, after).With(screening.PartTemperature, roomTemperature),
 		Low: math.Inf(-1), High: high, TreatHigh: screening.Reform, Source: source,
 	}
@@ -185,16 +195,16 @@ func leakageLimit(u *unit, after, high float64, source screening.Source) screeni
 
 // ceilings adds the bounds that no leakage limit may pass whatever CV says: 10 mA, and what heats the can by 10 K. They count where they
 // are tighter than the limit in use.
-func ceilings(limits []screening.Limit, claim screening.Claim, u *unit, inUse, after float64) []screening.Limit {
+func ceilings(limits []screening.Limit, claim screening.Claim, u *unit, w way, inUse, after float64) []screening.Limit {
 	military := named("military-ceiling")
-	l := leakageLimit(u, after, military.value, military.source)
-	l.Criterion, l.Need, l.Set = criterionCeiling, screening.Wanted, screening.VintageMilitarySet
+	l := leakageLimit(u, w, after, military.value, military.source)
+	l.Criterion, l.Need, l.Set = w.ceiling, screening.Wanted, screening.VintageMilitarySet
 	l.InUse = military.value < inUse
 	l.Formula = func() string { return "10 mA whatever the capacitance" }
 	limits = append(limits, l)
 	if watts, ok := canPower(claim); ok {
-		heat := leakageLimit(u, after, watts/u.volts, named("can-heat").source)
-		heat.Criterion, heat.Need, heat.Set = criterionCeiling, screening.Wanted, "can-heat"
+		heat := leakageLimit(u, w, after, watts/u.volts, named("can-heat").source)
+		heat.Criterion, heat.Need, heat.Set = w.ceiling, screening.Wanted, "can-heat"
 		heat.InUse = heat.High < inUse
 		heat.Formula = func() string {
 			return fmt.Sprintf("%.2g W / %s = %s, which warms a %s mm can by 10 K", watts, quantity.Format(u.volts, quantity.Volt, 0),
@@ -205,14 +215,17 @@ func ceilings(limits []screening.Limit, claim screening.Claim, u *unit, inUse, a
 	return limits
 }
 
-// generalLeakage returns the laxest general published limit that a current after so many seconds at rated voltage can be held against:
-// the one of the same or a shorter time. ok is false before the first minute.
-func generalLeakage(u unit, after float64) (amperes float64, ok bool) {
-	rows := embedded().leakage
+// publishedLeakage returns the published limit, general or of non-polar types, that a current after so many seconds at rated voltage can be
+// held against: the one of the same or a shorter time. ok is false before the first minute, and where nothing is published.
+func publishedLeakage(claim screening.Claim, u unit, after float64) (amperes float64, ok bool) {
+	rows, set := embedded().leakage, screening.GeneralSet
+	if nonPolar(claim) {
+		set = nonPolarSet
+	}
 	latest := 0.0
 	for i := range rows {
 		r := &rows[i]
-		if r.set == screening.GeneralSet && r.covers(u) && r.after <= after && r.after > latest {
+		if r.set == set && r.source.Status == screening.Published && r.covers(u) && r.after <= after && r.after > latest {
 			latest, amperes, ok = r.after, r.amperes(u), true
 		}
 	}

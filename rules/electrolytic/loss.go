@@ -23,7 +23,7 @@ var ladderVolts = []float64{6.3, 10, 16, 25, 35, 40, 50, 63, 100, 160, 200, 250,
 // lossRow is one series' ladder of tan δ by rated voltage.
 type lossRow struct {
 	set       screening.LimitSet // "" for a ladder that only counts for the laxest
-	group     string             // radial, smd, snap-in, screw
+	group     string             // radial, smd, snap-in, screw, non-polar
 	frequency float64            // Hz
 	perStep   float64            // added per 1000 µF above 1000 µF
 	ladder    []float64          // as ladderVolts; NaN where nothing is printed
@@ -53,9 +53,9 @@ func readLoss(text string, endurance screening.Source) ([]lossRow, error) {
 			}
 		}
 		switch r.group {
-		case "radial", "smd", "snap-in", caseScrew:
+		case "radial", "smd", "snap-in", caseScrew, techNonPolar:
 		default:
-			row.Errorf("group", "%q is none of radial, smd, snap-in, screw", r.group)
+			row.Errorf("group", "%q is none of radial, smd, snap-in, screw, non-polar", r.group)
 		}
 		rows = append(rows, r)
 	}
@@ -131,6 +131,8 @@ func (r *lossRow) counts(claim screening.Claim) bool {
 		return largeCan(claim)
 	case caseSMD, caseScrew:
 		return claim.Trait(screening.TraitCase) == r.group
+	case techNonPolar:
+		return nonPolar(claim)
 	}
 	return true
 }
@@ -153,7 +155,10 @@ func laxestTanDelta(claim screening.Claim, u unit) float64 {
 
 // lossSetFor returns the ladder that counts for a claim.
 func lossSetFor(claim screening.Claim) screening.LimitSet {
-	if largeCan(claim) {
+	switch {
+	case nonPolar(claim):
+		return nonPolarSet
+	case largeCan(claim):
 		return screening.SnapInSet
 	}
 	return screening.GeneralSet
@@ -168,7 +173,7 @@ func lossLimits(limits []screening.Limit, claim screening.Claim, u *unit) []scre
 	for _, edges := range []bool{false, true} {
 		for i := range rows {
 			r := &rows[i]
-			if r.set == "" || slices.Contains(done, r.set) || r.group == caseScrew && !r.counts(claim) {
+			if r.set == "" || slices.Contains(done, r.set) || (r.group == caseScrew || r.group == techNonPolar) && !r.counts(claim) {
 				continue
 			}
 			s, ok := r.at(u.volts)

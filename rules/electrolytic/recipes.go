@@ -32,12 +32,12 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 		if u.farad < timedFarad {
 			return []screening.Recipe{capacitanceByMeter()}
 		}
-		return []screening.Recipe{capacitanceByMeter(), capacitanceByTime(u)}
+		return []screening.Recipe{capacitanceByMeter(), capacitanceByTime(part.Claim, u)}
 	case screening.ESR.Name:
 		return []screening.Recipe{esrByMeter(u, l), esrFromTanDelta(u, l)}
 	case screening.TanDelta.Name:
 		return []screening.Recipe{tanDeltaByMeter()}
-	case screening.Leakage.Name:
+	case screening.Leakage.Name, LeakageReversed.Name:
 		return []screening.Recipe{leakageRecipe(part.Claim, u, l)}
 	}
 	return nil
@@ -59,15 +59,15 @@ func capacitanceByMeter() screening.Recipe {
 const timedFarad = 20e-6
 
 // capacitanceByTime: charge through a known resistor from a low voltage, t at 63 % of it is R·C.
-func capacitanceByTime(u unit) screening.Recipe {
+func capacitanceByTime(claim screening.Claim, u unit) screening.Recipe {
 	supply := math.Min(9, 0.9*u.volts)
 	ohms := roundUp(20 / u.farad)
 	return screening.Recipe{
 		Title: "capacitance with a watch and a voltmeter", Source: book.Practice,
 		Lines: []string{
 			"discharge the part and read the volts that remain",
-			fmt.Sprintf("charge it from %s through %s, plus to plus, and start the watch", quantity.Format(supply, quantity.Volt, 2),
-				quantity.Format(ohms, quantity.Ohm, 0)),
+			fmt.Sprintf("charge it from %s through %s, %s, and start the watch", quantity.Format(supply, quantity.Volt, 2),
+				quantity.Format(ohms, quantity.Ohm, 0), connect(claim, screening.Capacitance.Name)),
 			fmt.Sprintf("stop the watch at %s (63.2 %%): about %s for a good part", quantity.Format(0.632*supply, quantity.Volt, 3),
 				duration(ohms*u.farad)),
 			fmt.Sprintf("capacitance = seconds / %s; it reads about 10 %% more than at 120 Hz, and the voltmeter's own 10 MΩ is in parallel",
@@ -140,7 +140,7 @@ func leakageRecipe(claim screening.Claim, u unit, l screening.Limit) screening.R
 	values := c.values()
 	lines := []string{
 		"discharge the part and read the volts that remain",
-		fmt.Sprintf("supply %s, plus to plus, through %s", supply, c.resistor()),
+		fmt.Sprintf("supply %s, %s, through %s", supply, connect(claim, l.On), c.resistor()),
 		fmt.Sprintf("wait until the volts across the part stand still (about %s)", duration(c.seconds)),
 	}
 	sense := math.Min(math.Max(roundDown(senseDrop*c.supply/l.High), roundUp(c.supply*c.supply/senseWatts)), ohms)

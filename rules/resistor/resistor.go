@@ -19,7 +19,7 @@ const Kind screening.Kind = "resistor"
 const edition = "3"
 
 // Power is a rating only: the power that the part claims to stand at 70 °C, or at 25 °C on old and wirewound types.
-var Power = screening.Definition{Name: "power", Symbol: "P", Label: "rated power", Unit: quantity.Watt}
+var Power = screening.Power
 
 const valueCriterion screening.Criterion = "resistance"
 
@@ -64,9 +64,8 @@ func bench() []screening.Field {
 }
 
 func look() []screening.Check {
-	return []screening.Check{
-		book.MainsOrCracked(),
-		{
+	return book.Look(
+		screening.Check{
 			Name: "burnt", Words: []string{"burnt", "charred"},
 			Question: "Is it charred, blistered or discoloured by heat?",
 			Help:     "a brown band round the middle, bubbled paint, colours that have shifted",
@@ -75,7 +74,7 @@ func look() []screening.Check {
 			Do:       "scrap it, and find out what overloaded it before you fit another",
 			Source:   screening.Source{Document: "repairers' rule", Status: screening.CommonPractice},
 		},
-	}
+	)
 }
 
 // complete adds the default tolerance and says where the value is an unlikely one.

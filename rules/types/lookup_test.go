@@ -53,9 +53,9 @@ func TestLookup(t *testing.T) {
 		{"letter B", Zener, "BZX79-B5V1", "BZX79-B5V1", ""},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
-			row, ok := Lookup(tt.kind, tt.word)
+			row, ok := Builtin().Lookup(tt.kind, tt.word)
 			if ok != (tt.typ != "") || row.Type != tt.typ || row.Group != tt.group {
-				t.Errorf("Lookup(%s, %q) = %q group %q, %v; want %q group %q", tt.kind, tt.word, row.Type, row.Group, ok, tt.typ, tt.group)
+				t.Errorf("Builtin().Lookup(%s, %q) = %q group %q, %v; want %q group %q", tt.kind, tt.word, row.Type, row.Group, ok, tt.typ, tt.group)
 			}
 		})
 	}
@@ -83,14 +83,14 @@ func TestZenerToleranceLetters(t *testing.T) {
 		{"BZX55-C2V0", 1.9, 2.1, screening.Published},   // Vishay BZX55
 		{"BZX55-C15", 13.8, 15.6, screening.Published},  // last row compared
 	} {
-		row, ok := Lookup(Zener, tt.word)
+		row, ok := Builtin().Lookup(Zener, tt.word)
 		vz, _ := row.Rating("vz")
 		if !ok || math.Abs(vz.Low-tt.low) > 1e-9 || math.Abs(vz.High-tt.high) > 1e-9 || vz.Source.Status != tt.status {
 			t.Errorf("%s: %g to %g (%s), want %g to %g (%s)", tt.word, vz.Low, vz.High, vz.Source.Status, tt.low, tt.high, tt.status)
 		}
 	}
-	own, _ := Lookup(Zener, "BZX55-C5V1")
-	other, _ := Lookup(Zener, "BZX79-C5V1")
+	own, _ := Builtin().Lookup(Zener, "BZX55-C5V1")
+	other, _ := Builtin().Lookup(Zener, "BZX79-C5V1")
 	if a, _ := own.most("zz"); a != 35 { // Vishay BZX55
 		t.Errorf("BZX55-C5V1 rz %g, want 35", a)
 	}
@@ -123,7 +123,7 @@ func TestGainGroups(t *testing.T) {
 		{"C945Q", 135, 270, 1e-3, 6, screening.Published},
 		{"2SC5200-O", 80, 160, 1, 5, screening.FromMemory},
 	} {
-		row, ok := Lookup(Bipolar, tt.word)
+		row, ok := Builtin().Lookup(Bipolar, tt.word)
 		g, found := row.FindGroup(row.Group)
 		ic, _ := g.Gain.At.Get(screening.IC)
 		vce, _ := g.Gain.At.Get(screening.VCE)
@@ -142,7 +142,7 @@ func TestGainPoints(t *testing.T) {
 		"TIP120": {{3, 1000}}, "MJE13005": {{0.5, 15}, {2, 8}},
 	}
 	for name, points := range want {
-		row, _ := Lookup(Bipolar, name)
+		row, _ := Builtin().Lookup(Bipolar, name)
 		var got [][2]float64
 		for _, p := range row.Points {
 			if ic, ok := p.At.Get(screening.IC); ok && p.Of == "hfe" {
@@ -153,7 +153,7 @@ func TestGainPoints(t *testing.T) {
 			t.Errorf("%s (-want +got):\n%s", name, diff)
 		}
 	}
-	row, _ := Lookup(Bipolar, "BC337-40")
+	row, _ := Builtin().Lookup(Bipolar, "BC337-40")
 	g, _ := row.FindGroup("40")
 	if len(g.Points) != 1 || g.Points[0].Low != 170 {
 		t.Errorf("BC337-40 at 300 mA: %v, want a minimum of 170", g.Points)
@@ -178,7 +178,7 @@ func TestSingleFiguresFromMemoryKeepTheirStatus(t *testing.T) {
 		{Diode, "1N4148", "ifsm", screening.FromMemory},
 		{Zener, "BZX55-C5V1", "ptot", screening.FromMemory},
 	} {
-		row, _ := Lookup(tt.kind, tt.word)
+		row, _ := Builtin().Lookup(tt.kind, tt.word)
 		r, ok := row.Rating(tt.of)
 		if !ok || r.Source.Status != tt.want {
 			t.Errorf("%s %s: %s, want %s", tt.word, tt.of, r.Source.Status, tt.want)
@@ -187,10 +187,10 @@ func TestSingleFiguresFromMemoryKeepTheirStatus(t *testing.T) {
 }
 
 func TestAppendingToARowDoesNotReachTheTable(t *testing.T) {
-	row, _ := Lookup(Bipolar, "BC547B")
+	row, _ := Builtin().Lookup(Bipolar, "BC547B")
 	_ = append(row.Ratings, screening.Rating{Of: "spoilt"})
 	_ = append(row.Traits, screening.Trait{Name: "spoilt"})
-	again, _ := Lookup(Bipolar, "BC547C")
+	again, _ := Builtin().Lookup(Bipolar, "BC547C")
 	if again.Group != "C" || again.Trait("spoilt") != "" || again.Trait(screening.TraitGroup) != "C" || row.Trait(screening.TraitGroup) != "B" {
 		t.Errorf("BC547C after BC547B: group %s, traits %v; BC547B: %v", again.Group, again.Traits, row.Traits)
 	}
@@ -198,7 +198,7 @@ func TestAppendingToARowDoesNotReachTheTable(t *testing.T) {
 
 func TestTablesRefuseWhatIsWrong(t *testing.T) {
 	head := "type,group,alias,min,max,ic,vce,vcb,source,status,note\n"
-	tab := table{rows: map[screening.Kind][]Row{Bipolar: {{Type: "X1"}}}, byName: map[screening.Kind]map[string]int{Bipolar: {"X1": 0}}}
+	tab := &Table{rows: map[screening.Kind][]Row{Bipolar: {{Type: "X1"}}}, byName: map[screening.Kind]map[string]int{Bipolar: {"X1": 0}}}
 	for name, text := range map[string]string{
 		"min above max":            head + "X1,A,,200,100,1,5,,sheet,published,\n",
 		"unknown type":             head + "X2,A,,100,200,1,5,,sheet,published,\n",
@@ -222,11 +222,11 @@ func FuzzLookup(f *testing.F) {
 	}
 	f.Fuzz(func(t *testing.T, word string) {
 		for _, kind := range []screening.Kind{Bipolar, Diode, Zener, "other"} {
-			row, ok := Lookup(kind, word)
+			row, ok := Builtin().Lookup(kind, word)
 			if !ok {
 				continue
 			}
-			again, found := Lookup(kind, row.Type+row.Group)
+			again, found := Builtin().Lookup(kind, row.Type+row.Group)
 			if !found || again.Type != row.Type || again.Group != row.Group {
 				t.Errorf("%q is %s group %q, which is then %s group %q (%v)", word, row.Type, row.Group, again.Type, again.Group, found)
 			}
@@ -236,6 +236,6 @@ func FuzzLookup(f *testing.F) {
 
 func BenchmarkLookup(b *testing.B) {
 	for b.Loop() {
-		Lookup(Bipolar, "BC547B")
+		Builtin().Lookup(Bipolar, "BC547B")
 	}
 }

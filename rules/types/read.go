@@ -26,8 +26,8 @@ var (
 	pointsCSV string
 )
 
-func read() (table, error) {
-	t := table{rows: map[screening.Kind][]Row{}, byName: map[screening.Kind]map[string]int{}}
+func read() (*Table, error) {
+	t := newTable()
 	transistors := book.ReadTable("transistors.csv", transistorsCSV)
 	diodes := book.ReadTable("diodes.csv", diodesCSV)
 	zeners := book.ReadTable("zeners.csv", zenersCSV)
@@ -48,15 +48,20 @@ func read() (table, error) {
 	for _, r := range points.Rows() {
 		t.addPoint(r)
 	}
-	return t, errors.Join(transistors.Err(), diodes.Err(), zeners.Err(), groups.Err(), points.Err())
+	t.versions[Bipolar] = book.Fingerprint(transistorsCSV, groupsCSV, pointsCSV)
+	t.versions[Diode], t.versions[Zener] = book.Fingerprint(diodesCSV), book.Fingerprint(zenersCSV)
+	err := t.readFiles()
+	return t, errors.Join(transistors.Err(), diodes.Err(), zeners.Err(), groups.Err(), points.Err(), err)
 }
 
-func (t table) add(kind screening.Kind, r book.Row, row Row) {
+func (t *Table) add(kind screening.Kind, r book.Row, row Row) {
+	row.Kind = kind
 	if t.byName[kind] == nil {
 		t.byName[kind] = map[string]int{}
 	}
 	names := []string{row.Type}
 	if r.Has("alias") {
+		row.Alias = r.Text("alias")
 		names = append(names, r.Text("alias"))
 	}
 	for _, n := range names {
@@ -219,7 +224,6 @@ func diode(r book.Row) Row {
 
 func zener(r book.Row) Row {
 	l := newLine(r)
-	l.traits("technology")
 	l.row.Ratings = append(l.row.Ratings, screening.Rating{
 		Of: "vz", At: at(r, "izt"), Unit: quantity.Volt,
 		Nominal: r.Number("vz"), Low: r.Number("vz-low"), High: r.Number("vz-high"), Source: l.source("vz"),
@@ -236,7 +240,7 @@ func zener(r book.Row) Row {
 }
 
 // named finds the transistor that a row of a side table belongs to.
-func (t table) named(r book.Row) (*Row, bool) {
+func (t *Table) named(r book.Row) (*Row, bool) {
 	i, ok := t.byName[Bipolar][fold(r.Required("type"))]
 	if !ok {
 		r.Errorf("type", "%q is in no table", r.Text("type"))
@@ -245,7 +249,7 @@ func (t table) named(r book.Row) (*Row, bool) {
 	return &t.rows[Bipolar][i], true
 }
 
-func (t table) addGroup(r book.Row) {
+func (t *Table) addGroup(r book.Row) {
 	row, ok := t.named(r)
 	if !ok {
 		return
@@ -267,7 +271,7 @@ var pointUnits = map[string]quantity.Unit{
 	"hfe": quantity.One, "iceo": quantity.Ampere, "icex": quantity.Ampere, "vbe": quantity.Volt,
 }
 
-func (t table) addPoint(r book.Row) {
+func (t *Table) addPoint(r book.Row) {
 	row, ok := t.named(r)
 	if !ok {
 		return

@@ -9,10 +9,8 @@ import (
 	"math"
 	"slices"
 	"strings"
-	"sync"
 	"unicode"
 
-	"goodbin/rules/internal/book"
 	"goodbin/screening"
 )
 
@@ -23,15 +21,10 @@ const (
 	Zener   screening.Kind = "zener"
 )
 
-// Version names the state of the tables; a verdict under another version is stale.
-func Version() string { return version() }
-
-var version = sync.OnceValue(func() string {
-	return book.Version("types", "2", transistorsCSV, diodesCSV, zenersCSV, groupsCSV, pointsCSV)
-})
-
 // Row is what one type number promises.
 type Row struct {
+	Kind  screening.Kind
+	Alias string // another name of the same row; "" for none
 	Type  string // as the sheet prints it: "BC547", "BZX79-C5V1"
 	Group string // the gain group that the word looked up ended in; "" for none
 
@@ -56,6 +49,8 @@ type Row struct {
 
 	Note   string
 	Source screening.Source // of the row as a whole; single figures may differ
+	// House marks a row of the user's own table, or a built-in row that one of those changes.
+	House bool
 }
 
 // Group is one gain group of one type. The same letter means another range on another type.
@@ -91,74 +86,11 @@ func (r Row) FindGroup(name string) (Group, bool) {
 	return Group{}, false
 }
 
-type table struct {
-	rows   map[screening.Kind][]Row
-	byName map[screening.Kind]map[string]int // folded name or alias to index in rows
-}
+// shortestType is the length of the shortest name that may carry a suffix; the built-in ones have four letters and more (OC71).
+const shortestType = 3
 
-// load reads the embedded tables once; a test holds them to load.
-var load = sync.OnceValue(func() table {
-	t, err := read()
-	if err != nil {
-		panic("types: embedded tables: " + err.Error())
-	}
-	return t
-})
-
-// Names lists every type number of a kind in the order of the table.
-func Names(kind screening.Kind) []string {
-	rows := load().rows[kind]
-	names := make([]string, len(rows))
-	for i, r := range rows {
-		names[i] = r.Type
-	}
-	return names
-}
-
-// GroupNamed reports whether any type has a gain group of this name, and how it is printed: "-25" and "25" are "25", "gr" is "GR".
-func GroupNamed(name string) (string, bool) {
-	for _, r := range load().rows[Bipolar] {
-		if g, ok := r.FindGroup(name); ok {
-			return g.Name, true
-		}
-	}
-	return "", false
-}
-
-// Lookup finds the row that a marking means: the type number as printed, whatever its case, spaces and hyphens, alone or followed by one
-// of that type's gain groups ("bc547b", "BC337-25"); a Zener's tolerance letter may differ from the table's where the maker's rule for it
-// is printed ("1N4733C"). The longest type that matches wins. Anything else is unknown.
-//
-// The row's slices are the table's own: they are there to be read.
-func Lookup(kind screening.Kind, word string) (Row, bool) {
-	t := load()
-	folded := fold(word)
-	if folded == "" {
-		return Row{}, false
-	}
-	if i, ok := t.byName[kind][folded]; ok {
-		return t.rows[kind][i], true
-	}
-	for n := len(folded) - 1; n >= shortestType; n-- {
-		i, ok := t.byName[kind][folded[:n]]
-		if !ok {
-			continue
-		}
-		if g, ok := t.rows[kind][i].FindGroup(folded[n:]); ok {
-			row := t.rows[kind][i]
-			row.Group = g.Name
-			row.Traits = append(slices.Clip(row.Traits), screening.Trait{Name: screening.TraitGroup, Text: g.Name})
-			return row, true
-		}
-	}
-	if kind == Zener {
-		return t.otherTolerance(folded)
-	}
-	return Row{}, false
-}
-
-// shortestType is the length of the shortest name that may carry a suffix ("C945" counts; "OC71").
-const shortestType = 4
+// Fold brings a type number to the form in which two are compared: capitals, without spaces and hyphens.
+func Fold(name string) string { return fold(name) }
 
 // fold brings a name to the form in which names are compared: capitals, without spaces and hyphens of any sort.
 func fold(name string) string {
@@ -184,7 +116,7 @@ func isFolded(name string) bool {
 
 // otherTolerance serves the tolerance letters for which a sheet prints a rule rather than a table. The bounds are the nominal and the
 // printed tolerance; everything else is the row's.
-func (t table) otherTolerance(folded string) (Row, bool) {
+func (t *Table) otherTolerance(folded string) (Row, bool) {
 	for _, s := range toleranceSuffixes {
 		base, ok := s.base(folded)
 		if !ok {

@@ -19,7 +19,7 @@ func TestEveryTableLoads(t *testing.T) {
 	}
 	want := map[screening.Kind]int{Bipolar: 99, Diode: 54, Zener: 37 + 37 + 27}
 	for kind, n := range want {
-		if got := len(Names(kind)); got != n {
+		if got := len(Builtin().Names(kind)); got != n {
 			t.Errorf("%s: %d types, want %d", kind, got, n)
 		}
 	}
@@ -31,7 +31,7 @@ func TestEveryFigureHasASourceAndAStatus(t *testing.T) {
 			t.Errorf("%s %s: source %+v", typ, r.Of, r.Source)
 		}
 	}
-	for kind, rows := range load().rows {
+	for kind, rows := range Builtin().rows {
 		for _, row := range rows {
 			for _, r := range slices.Concat(row.Ratings, row.Points) {
 				check(row.Type, r)
@@ -77,7 +77,7 @@ func (r Row) most(of screening.Characteristic) (float64, bool) {
 func TestTransistorsEqualTheReference(t *testing.T) {
 	for _, ref := range booktest.Reference(t, "testdata/types-ref.csv", 99) {
 		name := ref["type"]
-		row, ok := Lookup(Bipolar, name)
+		row, ok := Builtin().Lookup(Bipolar, name)
 		if !ok {
 			t.Errorf("%s is not in the table", name)
 			continue
@@ -140,7 +140,7 @@ func sameStatus(t *testing.T, name, tag string, row Row) {
 func TestDiodesEqualTheReference(t *testing.T) {
 	for _, ref := range booktest.Reference(t, "testdata/diode-ref.csv", 54) {
 		name := ref["type"]
-		row, ok := Lookup(Diode, name)
+		row, ok := Builtin().Lookup(Diode, name)
 		if !ok {
 			t.Errorf("%s is not in the table", name)
 			continue
@@ -169,7 +169,7 @@ func TestDiodesEqualTheReference(t *testing.T) {
 func TestZenersEqualTheReference(t *testing.T) {
 	for _, ref := range booktest.Reference(t, "testdata/zener-ref.csv", 74) {
 		name := ref["type"]
-		row, ok := Lookup(Zener, name)
+		row, ok := Builtin().Lookup(Zener, name)
 		if !ok {
 			t.Errorf("%s is not in the table", name)
 			continue
@@ -221,7 +221,7 @@ func TestAgainstASecondTable(t *testing.T) {
 	var found []string
 	for _, ref := range booktest.Reference(t, "testdata/types-crosscheck.csv", 41) {
 		name := ref["type"]
-		row, ok := Lookup(Bipolar, name)
+		row, ok := Builtin().Lookup(Bipolar, name)
 		if !ok {
 			t.Errorf("%s is not in the table", name)
 			continue

@@ -12,11 +12,11 @@ import (
 
 func completed(t testing.TB, words string) screening.Claim {
 	t.Helper()
-	p, err := entry.Words(Book(), strings.Fields(words))
+	p, err := entry.Words(Book(types.Builtin()), strings.Fields(words))
 	if err != nil {
 		t.Fatal(err)
 	}
-	c, _, err := complete(p.Claim)
+	c, _, err := builtin.complete(p.Claim)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -37,7 +37,7 @@ func TestDriveIsComputedForThePart(t *testing.T) {
 		{"BZX79-C75", 120, 22e3, 92.05e-3, 2.045e-3, 0.1534},
 	} {
 		c := completed(t, tt.words)
-		r := Book().Recipes(screening.Part{Claim: c}, voltageLimit(c))[0]
+		r := Book(types.Builtin()).Recipes(screening.Part{Claim: c}, voltageLimit(c))[0]
 		for name, want := range map[string]float64{
 			"supply": tt.supply, "series-resistance": tt.ohms, "resistor-power": tt.watts, "test-current": tt.current, "part-power": tt.part,
 		} {
@@ -55,7 +55,7 @@ func TestDriveIsComputedForThePart(t *testing.T) {
 
 // The drive stays in the window in which a reading counts, for every type of the table.
 func TestEveryDriveReachesTheWindow(t *testing.T) {
-	for _, name := range types.Names(Kind) {
+	for _, name := range types.Builtin().Names(Kind) {
 		c := completed(t, "type="+name)
 		vz, current, _ := operating(c)
 		d := driveFor(vz, current)
@@ -77,7 +77,7 @@ func TestCautions(t *testing.T) {
 	} {
 		var codes []string
 		var text string
-		for _, c := range Book().Cautions(screening.Part{Claim: completed(t, tt.words)}, screening.AtMeasure) {
+		for _, c := range Book(types.Builtin()).Cautions(screening.Part{Claim: completed(t, tt.words)}, screening.AtMeasure) {
 			codes = append(codes, c.Code)
 			text += c.Text + "\n"
 			if c.Source.Status == screening.NoStatus || len(c.Values) == 0 {
@@ -98,7 +98,7 @@ func TestEveryLimitHasARecipe(t *testing.T) {
 			t.Fatalf("%s: %d limits, %v", words, len(all), err)
 		}
 		for _, l := range all {
-			found := Book().Recipes(screening.Part{Claim: c}, l)
+			found := Book(types.Builtin()).Recipes(screening.Part{Claim: c}, l)
 			if len(found) == 0 {
 				t.Errorf("%q: no recipe for %s", words, l.On)
 			}

@@ -14,7 +14,7 @@ import (
 var inf = math.Inf(1)
 
 // complete adds what the type's row says, or the default tolerance, and refuses a claim that contradicts its type.
-func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
+func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	for _, d := range []screening.Definition{VZ, IZT, screening.Ptot} {
 		if x, ok := c.Nominal(d.Name, ""); ok && x <= 0 {
 			return c, nil, fmt.Errorf("%s: %s of a Zener is above zero", d.Name, d.Label)
@@ -26,9 +26,10 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	}
 	var notes []screening.Reason
 	if name := c.Trait(screening.TraitType); name != "" {
-		row, ok := types.Lookup(Kind, name)
+		row, ok := b.types.Lookup(Kind, name)
 		if !ok {
-			notes = append(notes, book.Note(VZ.Name, "type %s is not in the table: claim its voltage, tolerance and test current", name))
+			notes = append(notes, b.types.UnknownNote(VZ.Name, Kind, c,
+				"type "+name+" is not in the table: claim its voltage, tolerance and test current"))
 		} else {
 			var err error
 			if c, err = withRow(c, row); err != nil {
@@ -53,11 +54,15 @@ func pointlike(r screening.Rating) bool { return r.HasNominal() && r.Low == r.Hi
 // withRow adds to a claim what its type's row says. A nominal voltage that agrees with the row takes the row's printed bounds, which are
 // rounded and not the nominal's percents.
 func withRow(c screening.Claim, row types.Row) (screening.Claim, error) {
-	tabled, _ := row.Rating(VZ.Name)
+	tabled, hasVoltage := row.Rating(VZ.Name)
 	_, toleranceClaimed := c.Rating(screening.Tolerance.Name, "")
 	own := c
-	if vz, ok := c.Rating(VZ.Name, ""); ok && pointlike(vz) {
-		if math.Abs(vz.Nominal/tabled.Nominal-1) > 1e-6 {
+	if vz, ok := c.Rating(VZ.Name, ""); ok && hasVoltage && pointlike(vz) {
+		near := math.Abs(vz.Nominal/tabled.Nominal-1) <= 1e-6
+		if !tabled.HasNominal() { // a house row may state bounds alone
+			near = vz.Nominal >= tabled.Low && vz.Nominal <= tabled.High
+		}
+		if !near {
 			return c, fmt.Errorf("vz: %s is claimed, but %s is %s", vz, row.Type, tabled)
 		}
 		if !toleranceClaimed {
@@ -70,7 +75,7 @@ func withRow(c screening.Claim, row types.Row) (screening.Claim, error) {
 		if _, claimed := own.Rating(r.Of, ""); claimed {
 			continue
 		}
-		if r.Of == VZ.Name && toleranceClaimed {
+		if r.Of == VZ.Name && toleranceClaimed && r.HasNominal() {
 			// The tolerance that was claimed stands over the row's.
 			r.Low, r.High = r.Nominal, r.Nominal
 		}

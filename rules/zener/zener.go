@@ -38,20 +38,24 @@ const (
 	forwardCriterion screening.Criterion = "forward"
 )
 
-// Book returns the rulebook.
-func Book() *screening.Rulebook {
+// rulebook is the rulebook's functions with the table of types that they look names up in.
+type rulebook struct{ types *types.Table }
+
+// Book returns the rulebook for a table of types.
+func Book(t *types.Table) *screening.Rulebook {
+	b := rulebook{t}
 	return &screening.Rulebook{
-		Kind: Kind, Label: "Zener diode", Tables: book.Version(Kind, edition, figuresCSV, lettersCSV) + ", " + types.Version(),
-		Claims: claims(), Bench: bench(), Look: []screening.Check{book.MainsOrCracked()},
-		Complete: complete, Limits: limits, Convert: convert, Adjust: adjust, Lesser: lesser, Untested: untested, Cautions: cautions,
+		Kind: Kind, Label: "Zener diode", Tables: book.Version(Kind, edition, figuresCSV, lettersCSV) + ", " + t.Version(Kind),
+		Claims: b.claims(), Bench: bench(), Look: book.Look(),
+		Complete: b.complete, Limits: limits, Convert: convert, Adjust: adjust, Lesser: lesser, Untested: untested, Cautions: cautions,
 		Recipes: recipes,
 	}
 }
 
-func claims() []screening.Field {
+func (b rulebook) claims() []screening.Field {
 	return []screening.Field{
 		{
-			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "BZX79-C5V1", AcceptText: acceptType,
+			Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: "BZX79-C5V1", AcceptText: b.acceptType,
 			Help: "the type number as printed; a known one says all the rest",
 		},
 		{Definition: VZ, Example: "5V1", Help: "the voltage printed on it; leave it out where nothing is printed"},
@@ -68,8 +72,8 @@ func claims() []screening.Field {
 	}
 }
 
-func acceptType(word string) (string, bool) {
-	row, ok := types.Lookup(Kind, word)
+func (b rulebook) acceptType(word string) (string, bool) {
+	row, ok := b.types.Lookup(Kind, word)
 	return row.Type, ok
 }
 

@@ -18,7 +18,7 @@ import (
 // judge judges a part from the words that a person types.
 func judge(t testing.TB, words string, policy screening.Policy) screening.Judgement {
 	t.Helper()
-	return booktest.Judge(t, Book(), words, policy)
+	return booktest.Judge(t, Book(types.Builtin()), words, policy)
 }
 
 var verdictCases = []struct {
@@ -98,7 +98,7 @@ func TestFormulasSayWhereTheBandComesFrom(t *testing.T) {
 		"BZX79-C5V1": "BZX79-C5V1 is printed as 4.8 V to 5.4 V", "1N4748A": "1N4748A: 22 V ±5 % = 20.9 V to 23.1 V",
 		"1N4733": "1N4733: 5.1 V ±10 % = 4.59 V to 5.61 V", "BZX79-C2V4": "BZX79-C2V4 is printed as 2.2 V to 2.6 V", "1N4740D": "1N4740D: 10 V ±1 % = 9.9 V to 10.1 V",
 	} {
-		c, _, err := complete(screening.Claim{}.WithTrait(screening.TraitType, typ))
+		c, _, err := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, typ))
 		if l := voltageLimit(c); err != nil || l.FormulaText() != want {
 			t.Errorf("%s: %q, %v; want %q", typ, l.FormulaText(), err, want)
 		}
@@ -153,7 +153,7 @@ func TestEveryTypeAtItsBounds(t *testing.T) {
 			if tt.of == screening.IR && math.IsNaN(number("vr_v")) {
 				continue // the voltage of that leakage was not kept
 			}
-			j, err := screening.Judge(Book(), screening.Part{
+			j, err := screening.Judge(Book(types.Builtin()), screening.Part{
 				Claim:    screening.Claim{}.WithTrait(screening.TraitType, name),
 				Readings: []screening.Reading{{Of: tt.of.Name, Unit: tt.of.Unit, Value: tt.value, At: tt.at}},
 			}, booktest.Exactly())
@@ -171,7 +171,7 @@ func TestEveryTypeAtItsBounds(t *testing.T) {
 // VZ(IZT) = VZ(I) + r·(IZT−I), 0 ≤ r ≤ rmax: of BZX79-C5V1 (60 Ω at 5 mA) at 10 mA the whole is 0.3 V, so −0.15 V ± 0.15 V rectangular,
 // u = 0.0866 V; at 2.5 mA rmax·IZT·ln 2 = 0.2079 V, so +0.104 V, u = 0.0600 V (GUM, JCGM 100 4.3.7; derived from the published 60 Ω).
 func TestCorrectionToTheTestCurrent(t *testing.T) {
-	completed, _, err := complete(screening.Claim{}.WithTrait(screening.TraitType, "BZX79-C5V1"))
+	completed, _, err := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, "BZX79-C5V1"))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -198,7 +198,7 @@ func TestCorrectionToTheTestCurrent(t *testing.T) {
 
 // The correction's range holds whatever slope a real junction has: of a slope that falls with current as 1/I, and of a constant one.
 func TestTheCorrectionContainsTheTruth(t *testing.T) {
-	completed, _, _ := complete(screening.Claim{}.WithTrait(screening.TraitType, "BZX79-C5V1"))
+	completed, _, _ := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, "BZX79-C5V1"))
 	limit := voltageLimit(completed)
 	const izt, rmax = 5e-3, 60.0
 	rapid.Check(t, func(t *rapid.T) {
@@ -223,7 +223,7 @@ func TestTolerances(t *testing.T) {
 			t.Errorf("%s: %v, %v", letter, got, ok)
 		}
 	}
-	if _, err := entry.Words(Book(), []string{"5V1", "C"}); err == nil || !strings.Contains(err.Error(), "±2 %") || !strings.Contains(err.Error(), "±5 %") {
+	if _, err := entry.Words(Book(types.Builtin()), []string{"5V1", "C"}); err == nil || !strings.Contains(err.Error(), "±2 %") || !strings.Contains(err.Error(), "±5 %") {
 		t.Errorf("a bare C: %v", err)
 	}
 	for words, want := range map[string][2]float64{
@@ -245,12 +245,12 @@ func TestTolerances(t *testing.T) {
 		"rated:vz=10 10% izt=20mA":     {9, 11},
 		"rated:vz=10V J rated:izt=5mA": {9.5, 10.5},
 	} {
-		p, err := entry.Words(Book(), strings.Fields(words))
+		p, err := entry.Words(Book(types.Builtin()), strings.Fields(words))
 		if err != nil {
 			t.Errorf("%s: %v", words, err)
 			continue
 		}
-		completed, _, err := complete(p.Claim)
+		completed, _, err := builtin.complete(p.Claim)
 		if err != nil {
 			t.Errorf("%s: %v", words, err)
 			continue
@@ -270,9 +270,9 @@ func TestClaimsThatContradictThemselves(t *testing.T) {
 		"5V1 rated:ptot=0":      "above zero",
 		"5V1 rated:tolerance=C": "",
 	} {
-		p, err := entry.Words(Book(), strings.Fields(words))
+		p, err := entry.Words(Book(types.Builtin()), strings.Fields(words))
 		if err == nil {
-			_, err = screening.Judge(Book(), screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
+			_, err = screening.Judge(Book(types.Builtin()), screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
 		}
 		if err == nil || !strings.Contains(err.Error(), want) {
 			t.Errorf("%s: %v, want %q", words, err, want)
@@ -281,10 +281,10 @@ func TestClaimsThatContradictThemselves(t *testing.T) {
 }
 
 func TestCompleteIsIdempotent(t *testing.T) {
-	for _, name := range types.Names(Kind) {
+	for _, name := range types.Builtin().Names(Kind) {
 		for _, extra := range []string{"", "tolerance", "voltage"} {
 			c := screening.Claim{}.WithTrait(screening.TraitType, name)
-			row, _ := types.Lookup(Kind, name)
+			row, _ := types.Builtin().Lookup(Kind, name)
 			vz, _ := row.Rating(VZ.Name)
 			switch extra {
 			case "tolerance":
@@ -292,8 +292,8 @@ func TestCompleteIsIdempotent(t *testing.T) {
 			case "voltage":
 				c = c.WithRating(screening.NominalRating(VZ, vz.Nominal))
 			}
-			once, _, err := complete(c)
-			twice, _, err2 := complete(once)
+			once, _, err := builtin.complete(c)
+			twice, _, err2 := builtin.complete(once)
 			a, b := voltageLimit(once), voltageLimit(twice)
 			if err != nil || err2 != nil || len(once.Ratings) != len(twice.Ratings) || a.Low != b.Low || a.High != b.High || a.At != b.At {
 				t.Errorf("%s %s: %v, %v; %v..%v then %v..%v", name, extra, err, err2, a.Low, a.High, b.Low, b.High)
@@ -305,12 +305,12 @@ func TestCompleteIsIdempotent(t *testing.T) {
 // However poor the meter, a Zener that reads inside its band at its test current is never rejected.
 func TestASoundZenerIsNeverRejected(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		c, _, _ := complete(screening.Claim{}.WithTrait(screening.TraitType, rapid.SampledFrom(types.Names(Kind)).Draw(t, "type")))
+		c, _, _ := builtin.complete(screening.Claim{}.WithTrait(screening.TraitType, rapid.SampledFrom(types.Builtin().Names(Kind)).Draw(t, "type")))
 		l := voltageLimit(c)
 		policy := screening.DefaultPolicy()
 		accuracy := screening.Accuracy{Relative: rapid.Float64Range(0, 0.5).Draw(t, "accuracy")}
 		policy.Meters = map[string]screening.Meter{"": {ByUnit: map[quantity.Unit]screening.Accuracy{quantity.Volt: accuracy}}}
-		j, err := screening.Judge(Book(), screening.Part{Claim: c, Readings: []screening.Reading{
+		j, err := screening.Judge(Book(types.Builtin()), screening.Part{Claim: c, Readings: []screening.Reading{
 			{Of: VZ.Name, Unit: quantity.Volt, Value: rapid.Float64Range(l.Low, l.High).Draw(t, "vz"), At: l.At},
 		}}, policy)
 		if err != nil || j.Verdict == screening.Reject || j.Verdict == screening.Regrade {
@@ -319,4 +319,6 @@ func TestASoundZenerIsNeverRejected(t *testing.T) {
 	})
 }
 
-func BenchmarkJudge(b *testing.B) { booktest.Benchmark(b, Book(), "BZX79-C5V1 vz@7mA=5.15") }
+func BenchmarkJudge(b *testing.B) {
+	booktest.Benchmark(b, Book(types.Builtin()), "BZX79-C5V1 vz@7mA=5.15")
+}

@@ -245,15 +245,8 @@ func (p *parser) seen(value, typed string) error {
 }
 
 func checkOf(book *screening.Rulebook, word string) (screening.Check, bool) {
-	for _, c := range book.Look {
-		if c.Name == word {
-			return c, true
-		}
-		for _, w := range c.Words {
-			if strings.EqualFold(w, word) {
-				return c, true
-			}
-		}
+	if i := checkNamed(book.Look, word); i >= 0 {
+		return book.Look[i], true
 	}
 	return screening.Check{}, false
 }

@@ -15,7 +15,7 @@ func TestMainsOrCrackedBars(t *testing.T) {
 	if strings.Join(c.Words, " ") != "mains cracked" {
 		t.Errorf("words are %v", c.Words)
 	}
-	for text, want := range map[string]string{c.Do: "never open", c.Reason: "no reading shows", c.Question: "across the mains"} {
+	for text, want := range map[string]string{c.Do: "never open", c.Reason: "no reading shows", c.Question: "cross the mains"} {
 		if !strings.Contains(text, want) {
 			t.Errorf("%q does not say %q", text, want)
 		}

@@ -104,7 +104,7 @@ func chargeText(c screening.Caution, nominal, worst, volts float64) string {
 		"(two or more in series where one is not): %.1f W at first. To %.0f V it takes %s",
 		quantity.Format(v["discharge-resistance"], quantity.Ohm, 0), dischargeWatts, quantity.Format(volts, quantity.Volt, 0),
 		v["discharge-power"], float64(screening.SafeVoltage), seconds(v["discharge-time"]))
-	if worst > nominal {
+	if worst > nominal && v["discharge-time-worst"] >= 0.1 {
 		fmt.Fprintf(&b, ", %s at %+.0f %% of capacitance", seconds(v["discharge-time-worst"]), 100*(worst/nominal-1))
 	}
 	fmt.Fprintf(&b, ". Never a screwdriver. Then measure the volts that remain. A part that was shorted can charge itself again (dielectric "+
@@ -120,6 +120,9 @@ func seconds(s float64) string {
 	}
 	if s >= 10 {
 		return fmt.Sprintf("%.0f s", s)
+	}
+	if s < 0.1 {
+		return "less than 0.1 s"
 	}
 	return fmt.Sprintf("%.1f s", s)
 }

@@ -74,6 +74,9 @@ func (t *Table) checkHeader() {
 // Rows returns the rows in the order of the file.
 func (t *Table) Rows() []Row { return t.rows }
 
+// Columns returns the header, in the order of the file; nil where there is none.
+func (t *Table) Columns() []string { return t.columns }
+
 // Has reports whether the table has a column.
 func (t *Table) Has(column string) bool { return slices.Contains(t.columns, column) }
 

@@ -1,0 +1,6 @@
+package zener
+
+import "goodbin/rules/types"
+
+// builtin is the rulebook's functions with the table that the program brings along.
+var builtin = rulebook{types.Builtin()}
