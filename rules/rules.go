@@ -3,10 +3,17 @@ package rules
 
 import (
 	"goodbin/rules/bipolar"
+	"goodbin/rules/ceramic"
 	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
+	"goodbin/rules/film"
+	"goodbin/rules/mainscap"
+	"goodbin/rules/mica"
+	"goodbin/rules/polymer"
 	"goodbin/rules/resistor"
+	"goodbin/rules/tantalum"
 	"goodbin/rules/types"
+	"goodbin/rules/variablecap"
 	"goodbin/rules/zener"
 	"goodbin/screening"
 )
@@ -16,6 +23,13 @@ func All() screening.Kinds {
 	t := types.Builtin()
 	return screening.Kinds{
 		electrolytic.Book(),
+		tantalum.Book(),
+		polymer.Book(),
+		film.Book(),
+		mica.Book(),
+		ceramic.Book(),
+		mainscap.Book(),
+		variablecap.Book(),
 		diode.Book(t),
 		zener.Book(t),
 		bipolar.Book(t),

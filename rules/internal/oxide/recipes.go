@@ -1,0 +1,162 @@
+package oxide
+
+import (
+	"fmt"
+	"math"
+
+	"goodbin/rules/internal/book"
+	"goodbin/rules/internal/capacitor"
+	"goodbin/screening"
+	"goodbin/screening/quantity"
+)
+
+// leakagePractice is how it is measured.
+var leakagePractice = screening.Source{
+	Document: "MIL-PRF-49137E", Clause: "4.8.4: rated voltage through 1000 Ω, at most 5 min; a larger resistor only spares the part", Status: screening.Published,
+}
+
+// Charging is what puts a voltage on a part without harm, SI.
+type Charging struct {
+	Supply, Ohms float64 // rated voltage, series resistance
+	Watts        float64 // of the resistor when the part is a dead short: U²/R
+	Fault        float64 // the most that a fault in the part can take, half of the voltage across each: U²/(4·R)
+	Current      float64 // into a dead short
+	Seconds      float64 // five time constants at worst-case capacitance
+}
+
+// The resistor of a leakage test, Ω: more than the most and a 10 MΩ voltmeter across it would falsify the reading (house).
+const mostOhms, leastOhms = 100e3, 100.0
+
+// ChargingOf computes it: as large a resistor as leaves a part at its leakage limit within 3 % of the rated voltage, and 100 kΩ at most.
+// The slower the part charges, the less a weak spot in its oxide can burn.
+func (r *Rules) ChargingOf(claim screening.Claim, u capacitor.Unit) Charging {
+	technology := r.Technology(claim)
+	ohms := r.Tables.Named(figureDrop, technology).Value * u.Volts / r.Tables.LeakageLimit(technology, u)
+	ohms = roundDown(math.Min(math.Max(ohms, leastOhms), mostOhms))
+	return Charging{
+		Supply: u.Volts, Ohms: ohms, Watts: u.Volts * u.Volts / ohms, Fault: u.Volts * u.Volts / ohms / 4, Current: u.Volts / ohms,
+		Seconds: 5 * ohms * u.Top(),
+	}
+}
+
+// roundDown rounds down to one significant digit of 1, 2 or 5.
+func roundDown(x float64) float64 {
+	scale := math.Pow(10, math.Floor(math.Log10(x)*(1+1e-12)))
+	switch digit := x / scale * (1 + 1e-9); {
+	case digit >= 5:
+		return 5 * scale
+	case digit >= 2:
+		return 2 * scale
+	}
+	return scale
+}
+
+// Values are the computed numbers by name.
+func (c Charging) Values() map[string]float64 {
+	return map[string]float64{
+		"supply": c.Supply, "series-resistance": c.Ohms, "resistor-power": c.Watts, "fault-power": c.Fault, "current": c.Current, "charge-time": c.Seconds,
+	}
+}
+
+// Resistor words the series resistor: "100 kΩ, 0.25 W or more (2.6 mW if the part is a dead short)".
+func (c Charging) Resistor() string {
+	sold := math.Ceil(2*c.Watts/5) * 5
+	for _, w := range []float64{10, 5, 3, 2, 1, 0.5, 0.25} {
+		if 2*c.Watts <= w {
+			sold = w
+		}
+	}
+	return fmt.Sprintf("%s, %g W or more (%s if the part is a dead short)", quantity.Format(c.Ohms, quantity.Ohm, 0), sold,
+		quantity.Format(c.Watts, quantity.Watt, 2))
+}
+
+// UnderVoltage is the caution of a leakage test: reverse says what a reversed part does, fails what a weak one does.
+func (r *Rules) UnderVoltage(part screening.Part, reverse, fails string, source screening.Source) []screening.Caution {
+	us, err := r.Units(part.Claim)
+	if err != nil {
+		return nil
+	}
+	u := us[0]
+	for _, x := range us {
+		if x.Volts > u.Volts {
+			u = x
+		}
+	}
+	c := r.ChargingOf(part.Claim, u)
+	text := fmt.Sprintf("before any voltage: plus to plus (%s), supply at 0 V, through %s, then turn it up slowly over 10 s or more. %s "+
+		"The resistor limits what a fault can draw to %s, and what it can take to %s.", reverse, c.Resistor(), fails,
+		book.About(c.Current, quantity.Ampere), book.About(c.Fault, quantity.Watt))
+	level := screening.Notice
+	if u.Volts > book.TouchVoltage {
+		level = screening.Danger
+		text += " Isolated supply, one hand, eye protection; high voltage: your local code and licensed practice."
+	}
+	return []screening.Caution{{
+		Code: "test-under-voltage", Level: level, Text: text, Values: c.Values(), Source: source, Gate: u.Volts > book.TouchVoltage,
+	}}
+}
+
+// Recipes says how to measure what a limit asks with what people own.
+func (r *Rules) Recipes(part screening.Part, l screening.Limit) []screening.Recipe {
+	u, ok := capacitor.UnitOf(part.Claim, r.Span, l.Section)
+	if !ok || u.Volts <= 0 {
+		return nil
+	}
+	switch l.On {
+	case screening.Resistance.Name:
+		return []screening.Recipe{shortByOhms(u, l)}
+	case screening.ESR.Name, screening.TanDelta.Name:
+		all := capacitor.Recipes(part, l, r.Span)
+		for i := range all {
+			all[i].Lines = append(all[i].Lines, r.LossLines...)
+		}
+		return all
+	case screening.Leakage.Name:
+		return []screening.Recipe{r.leakageRecipe(part.Claim, u, l)}
+	}
+	return capacitor.Recipes(part, l, r.Span)
+}
+
+func shortByOhms(u capacitor.Unit, l screening.Limit) screening.Recipe {
+	const meterOhms = 1e6 // what a pocket meter's highest range charges through, about (from memory)
+	settle := 5 * meterOhms * u.Top()
+	return screening.Recipe{
+		Title: "ohms range of a pocket meter", Source: book.Practice,
+		Lines: []string{
+			"discharge the part and read the volts that remain: 0 V, or the meter is gone",
+			"highest ohms range, the meter's plus probe to the part's plus (on some analogue meters the black one is plus); hands off the leads",
+			fmt.Sprintf("it starts low and climbs while the part charges: allow about %s, longer where it still climbs", waiting(settle)),
+			fmt.Sprintf("%s or more, or over-range, is no short; type resistance=… or resistance=OL", book.About(l.Low, quantity.Ohm)),
+			"it shows a short, not that the part stands its voltage",
+		},
+		Values: map[string]float64{"resistance-at-limit": l.Low, "charge-time": settle},
+	}
+}
+
+func (r *Rules) leakageRecipe(claim screening.Claim, u capacitor.Unit, l screening.Limit) screening.Recipe {
+	c := r.ChargingOf(claim, u)
+	after, timed := l.At.Get(screening.After)
+	if !timed {
+		after = 300
+	}
+	volts := l.High * c.Ohms
+	lines := []string{
+		"discharge the part and read the volts that remain; leads clean and dry",
+		fmt.Sprintf("supply at 0 V, plus to plus, through %s; turn it up over 10 s or more to %s, never above; it charges in about %s", c.Resistor(),
+			quantity.Format(c.Supply, quantity.Volt, 0), waiting(c.Seconds)),
+		fmt.Sprintf("%s after the part reached it read the volts across the resistor: leakage = volts / %s; the limit of %s is %s there", waiting(after),
+			quantity.Format(c.Ohms, quantity.Ohm, 0), quantity.Format(l.High, quantity.Ampere, 3), quantity.Format(volts, quantity.Volt, 2)),
+		"volts that rise or jump are a weak oxide: turn the supply down at once",
+		"turn it down to 0 V, wait as long again, and read the volts that remain before you touch it",
+	}
+	values := c.Values()
+	values["after"], values["volts-at-limit"] = after, volts
+	return screening.Recipe{Title: "leakage with a supply and a voltmeter", Lines: lines, Values: values, Source: leakagePractice}
+}
+
+func waiting(seconds float64) string {
+	if seconds >= 120 {
+		return fmt.Sprintf("%.0f min", math.Ceil(seconds/60))
+	}
+	return fmt.Sprintf("%.0f s", math.Max(1, math.Ceil(seconds)))
+}
