@@ -7,13 +7,19 @@ import (
 	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
 	"goodbin/rules/film"
+	"goodbin/rules/inductor"
 	"goodbin/rules/mainscap"
 	"goodbin/rules/mica"
 	"goodbin/rules/polymer"
+	"goodbin/rules/potentiometer"
+	"goodbin/rules/relay"
 	"goodbin/rules/resistor"
 	"goodbin/rules/tantalum"
+	"goodbin/rules/thermistor"
+	"goodbin/rules/transformer"
 	"goodbin/rules/types"
 	"goodbin/rules/variablecap"
+	"goodbin/rules/varistor"
 	"goodbin/rules/zener"
 	"goodbin/screening"
 )
@@ -34,5 +40,11 @@ func All() screening.Kinds {
 		zener.Book(t),
 		bipolar.Book(t),
 		resistor.Book(),
+		potentiometer.Book(),
+		thermistor.Book(),
+		varistor.Book(),
+		inductor.Book(),
+		transformer.Book(),
+		relay.Book(),
 	}
 }
