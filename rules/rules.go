@@ -3,19 +3,28 @@ package rules
 
 import (
 	"goodbin/rules/bipolar"
+	"goodbin/rules/bridge"
 	"goodbin/rules/ceramic"
 	"goodbin/rules/diode"
 	"goodbin/rules/electrolytic"
 	"goodbin/rules/film"
+	"goodbin/rules/igbt"
 	"goodbin/rules/inductor"
+	"goodbin/rules/jfet"
+	"goodbin/rules/led"
 	"goodbin/rules/mainscap"
 	"goodbin/rules/mica"
+	"goodbin/rules/mosfet"
+	"goodbin/rules/optocoupler"
 	"goodbin/rules/polymer"
 	"goodbin/rules/potentiometer"
+	"goodbin/rules/regulator"
 	"goodbin/rules/relay"
 	"goodbin/rules/resistor"
+	"goodbin/rules/selenium"
 	"goodbin/rules/tantalum"
 	"goodbin/rules/thermistor"
+	"goodbin/rules/thyristor"
 	"goodbin/rules/transformer"
 	"goodbin/rules/types"
 	"goodbin/rules/variablecap"
@@ -38,7 +47,15 @@ func All() screening.Kinds {
 		variablecap.Book(),
 		diode.Book(t),
 		zener.Book(t),
+		bridge.Book(t),
+		led.Book(t),
+		selenium.Book(),
 		bipolar.Book(t),
+		jfet.Book(t),
+		mosfet.Book(t),
+		igbt.Book(t),
+		thyristor.Book(t),
+		thyristor.TriacBook(t),
 		resistor.Book(),
 		potentiometer.Book(),
 		thermistor.Book(),
@@ -46,5 +63,7 @@ func All() screening.Kinds {
 		inductor.Book(),
 		transformer.Book(),
 		relay.Book(),
+		optocoupler.Book(t),
+		regulator.Book(t),
 	}
 }
