@@ -197,7 +197,11 @@ func (c Claim) String() string {
 		}
 	}
 	for _, t := range c.Traits {
-		if t.Name != TraitPinout { // it stands by itself wherever a verdict does
+		switch {
+		case t.Name == TraitPinout: // it stands by itself wherever a verdict does
+		case t.Text != "" && t.Name != TraitType && t.Name != TraitDated && strings.Trim(t.Text, "0123456789") == "":
+			words = append(words, t.Name+" "+t.Text) // a bare number says nothing here either
+		default:
 			words = append(words, t.Text)
 		}
 	}

@@ -181,6 +181,7 @@ func (j *judging) nextSteps(r *Judgement, states []criterionState) {
 			r.Next = append([]Step{{Code: code, Text: s.Do}}, r.Next...)
 		}
 	}
+	r.Next = once(r.Next) // a family told by the claim and seen on the part asks for one thing
 }
 
 func treatText(t Treatment) string {

@@ -166,9 +166,13 @@ func possible(v, current float64) string {
 // untested says what the readings leave open: its light above all.
 func untested(part screening.Part, _ []screening.Finding) []string {
 	var lines []string
-	if _, looked := part.Seen("dark"); !looked {
+	_, looked := part.Seen("dark")
+	dim, _ := part.Seen("dim")
+	switch {
+	case dim: // seen lit, and how brightly
+	case !looked:
 		lines = append(lines, "whether it lights, and how brightly")
-	} else {
+	default:
 		lines = append(lines, "how brightly it lights (compare it with a twin)")
 	}
 	current, most := testCurrent(part.Claim), 0.0

@@ -197,7 +197,8 @@ func dark() screening.Check {
 func dim() screening.Check {
 	return screening.Check{
 		Name: "dim", Words: []string{"dim"}, Question: "Is it dimmer than a sound twin at the same current?",
-		Help: "light fades with hours and heat long before the voltage tells; kept with the part",
+		Help:   "light fades with hours and heat long before the voltage tells; kept with the part",
+		Reason: "it is dimmer than a sound twin: it has aged, so use it where its light need not match another's",
 	}
 }
 

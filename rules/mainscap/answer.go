@@ -66,12 +66,14 @@ func bars(claim screening.Claim) []screening.Stop {
 	switch name {
 	case motorRun, motorStart:
 		s.Reason = "a motor capacitor lies across the mains with a winding; how it fails when it does (safe, or as a short with fire) is a type approval that " +
-			"no reading shows, and a used one has lost part of its plates already"
+			"no reading shows, and a used one may have lost part of its plates already"
 	case "", unmarked:
 		s.Reason = "no class is marked: nothing says that it was ever approved for the mains, whatever it reads"
 	default:
-		s.Reason = name + " is a type approval (impulse, endurance at 1.25 or 1.7 times its voltage, flame): no reading shows that a used part would pass it " +
-			"again, and a used metallised film has lost part of its plates already"
+		s.Reason = name + " is a type approval (impulse, endurance at 1.25 or 1.7 times its voltage, flame): no reading shows that a used part would pass it again"
+		if claim.Trait(screening.TraitTechnology) != "ceramic" {
+			s.Reason += ", and a used metallised one may have lost part of its plates already"
+		}
 	}
 	s.Do = instead(claim, name) + "; scrap this one, or keep it apart marked \"exhibit, not for use\"; never open it"
 	return []screening.Stop{s}

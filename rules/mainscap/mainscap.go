@@ -76,7 +76,7 @@ func claims() []screening.Field {
 		capacitor.DatedClaim("year or decade; oil-filled parts of unknown date or before July 1979 may hold PCB"),
 		{
 			Definition: book.Trait(traitNoPCB, "marked \"No PCBs\""), Trait: true, Example: "no-pcb", Help: "only where the part itself is marked so",
-			Words: []screening.Word{{Word: "no-pcb", Text: "marked"}, {Word: "no-pcbs", Text: "marked"}, {Word: "pcb-free", Text: "marked"}},
+			Words: []screening.Word{{Word: "no-pcb", Text: "no-PCBs"}, {Word: "no-pcbs", Text: "no-PCBs"}, {Word: "pcb-free", Text: "no-PCBs"}},
 		},
 	}
 }

@@ -21,7 +21,7 @@ const (
 	TraitTaper    = "taper"
 	TraitForm     = "form"     // trimmer, panel, slider
 	TraitSections = "sections" // how many tracks on one shaft: "1", "2"
-	TraitSwitch   = "switch"   // "yes" where it has one
+	TraitSwitch   = "switch"   // "switched" where it has one
 )
 
 // overOhms is what OL shows of any of a potentiometer's resistances, as of [screening.Resistance].
@@ -82,7 +82,7 @@ func claims() []screening.Field {
 		},
 		{
 			Definition: book.Trait(TraitSwitch, "switch"), Trait: true, Example: "switched", Help: "where a switch sits on the same shaft",
-			Words: []screening.Word{{Word: "switched", Text: "yes"}, {Word: "with-switch", Text: "yes"}},
+			Words: []screening.Word{{Word: "switched", Text: "switched"}, {Word: "with-switch", Text: "switched"}},
 		},
 		{Definition: screening.Power, Help: "printed, or judged by size; it is not tested", Example: "0.25W"},
 		book.DatedField(),

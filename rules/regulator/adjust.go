@@ -79,6 +79,41 @@ func failWords(c screening.Claim, f *screening.Finding) string {
 	return "below its band: read it again with both capacitors at its legs, an oscillating one reads wrong; if it stays, it is damaged"
 }
 
+// proven is the tolerance that a pocket meter can show of a reference (house): 1 % and two counts of a range of 20 V are already 2 % of 2.5 V.
+const proven = 0.05
+
+// lesser answers a reference whose band is too tight for the meter with one that the reading proves.
+func lesser(part screening.Part, findings []screening.Finding) []screening.Lesser {
+	d, r, ok := voltageOf(part.Claim)
+	if !ok || functionOf(part.Claim) != shunt {
+		return nil
+	}
+	for i := range findings {
+		f := &findings[i]
+		e := f.Evidence()
+		if f.Limit.Criterion != voltageCriterion || f.Outcome != screening.Close || f.Unconfirmed || e == nil {
+			continue
+		}
+		mid := (r.Low + r.High) / 2
+		wide := screening.RangeRating(d, book.Honest(mid*(1-proven), 0, 3), book.Honest(mid*(1+proven), 0, 3))
+		below, above := screening.ConformanceProbability(e.Value, e.U, wide.Low, wide.High)
+		if wide.Low >= r.Low || wide.High <= r.High || 1-below-above < 0.95 {
+			continue
+		}
+		wide.At = r.At
+		wide.Source = screening.Source{Document: "what a pocket meter proves of a reference", Status: screening.House}
+		wide.Typed = volts(wide.Low) + ".." + volts(wide.High)
+		claim := part.Claim
+		claim.Ratings = append(book.Without(claim.Ratings, d.Name), wide)
+		return []screening.Lesser{{
+			Claim: claim, Answers: voltageCriterion, Tolerance: true, Source: wide.Source,
+			Text: volts(wide.Low) + " to " + volts(wide.High) + " proven (±" + quantity.Format(proven, quantity.Ratio, 0) + "); " + volts(r.Low) + " to " +
+				volts(r.High) + " not provable with this meter",
+		}}
+	}
+	return nil
+}
+
 // untested says what the readings leave open: the load above all.
 func untested(part screening.Part, _ []screening.Finding) []string {
 	var most float64

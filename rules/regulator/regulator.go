@@ -100,7 +100,7 @@ func Book(t *types.Table) *screening.Rulebook {
 		Kind: Kind, Label: "voltage regulator or reference", Tables: book.Version(Kind, edition, figuresCSV) + ", " + t.Version(Kind),
 		Claims: claims(t), Bench: bench(), Look: book.Look(burnt()),
 		Complete: func(c screening.Claim) (screening.Claim, []screening.Reason, error) { return complete(t, c) },
-		Limits:   limits, Derive: derive, Adjust: adjust, Untested: untested, Cautions: cautions, Recipes: recipes,
+		Limits:   limits, Derive: derive, Adjust: adjust, Lesser: lesser, Untested: untested, Cautions: cautions, Recipes: recipes,
 	}
 }
 

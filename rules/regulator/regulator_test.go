@@ -43,6 +43,8 @@ func TestVerdictsOfRegulators(t *testing.T) {
 		{"LM317 below its least load", "LM317 vref@7V,2mA=1.9", screening.Undecided, "regulates from 10 mA up"},
 		{"LM317 at 1.9 V under load", "LM317 vref@7V,10mA=1.90", screening.Reject, ""},
 		{"TL431 at 10 mA", "TL431 vref@10mA=2.493", screening.Accept, "noise and drift"},
+		{"a reference that two counts of a 20 V range leave open", "TL431 vref@10mA=2.45", screening.Accept, "2.37 V to 2.62 V proven (±5 %); 2.44 V to 2.55 V not"},
+		{"a regulator is not held wider than its sheet", "7812 vout@17V,100mA=12.55", screening.Undecided, "REPEAT"},
 		{"TL431 at 2.2 V", "TL431 vref@10mA=2.21", screening.Reject, ""},
 		{"TL431 at 2.2 V with its current not stated", "TL431 vref=2.21", screening.Undecided, "state the current"},
 		{"unknown, its voltage printed", "type=XR12 12V vout@17V,100mA=12.1", screening.Accept, "is not in the table"},

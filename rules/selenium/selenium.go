@@ -75,7 +75,7 @@ func bench() []screening.Field {
 
 func bars(c screening.Claim) []screening.Stop {
 	do := "KEEP it disconnected and marked \"exhibit, not for use\", or bag it as hazardous waste by your local rules; never power it up, burn or grind it. " +
-		"Replacing it in a set: silicon drops " + replaced(c) + ", so the output rises; fit a resistor in series that brings the loaded voltage back to " +
+		"Replacing it in a set: silicon drops " + replaced(c) + ", so the output rises (" + replacingSource.Status.String() + "); fit a resistor in series that brings the loaded voltage back to " +
 		"what the set's papers say, rated for its watts, and see that the capacitors behind it stand the voltage without load"
 	return []screening.Stop{{
 		Check: "selenium", Verdict: screening.Barred,
@@ -88,7 +88,7 @@ func bars(c screening.Claim) []screening.Stop {
 func replaced(c screening.Claim) string {
 	n, ok := plates(c)
 	if !ok {
-		return "about 1 V where selenium drops about 1 V for each plate (" + replacingSource.Clause + ")"
+		return "about 1 V where selenium drops about 1 V for each plate"
 	}
 	return fmt.Sprintf("about 1 V where these %.0f plates drop about %s", n, quantity.Format(n*dropPerPlate, quantity.Volt, 0))
 }

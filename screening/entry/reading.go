@@ -16,7 +16,7 @@ func (p *parser) reading(t *target, text string) (screening.Reading, error) {
 		over := t.field.Over
 		if over.Sense == quantity.Exactly {
 			return r, problem(string(t.field.Name), "%s proves nothing here", shown(text)).
-				hint("write what the meter's range proves, such as >%s", exampleOr(t.field, "2"))
+				hint("write what the meter's range proves, such as >%s", strings.TrimLeft(exampleOr(t.field, "2"), ".<>="))
 		}
 		r.Over, r.Sense, r.Value = true, over.Sense, over.Value
 		return r, nil

@@ -72,9 +72,11 @@ func TestReadTypes(t *testing.T) {
 		{"a value that is missing", "kind,type,rated:hfe\ntransistor,QX1,@ic=1mA\n", "line 2, column 3 (rated:hfe): the value is missing"},
 		{"a condition that is none", "kind,type,rated:hfe\ntransistor,QX1,100@vxx=1V\n", `line 2, column 3 (rated:hfe): "vxx" is no condition`},
 		{"too many cells", "kind,type\ntransistor,QX1,30V\n", "line 2: the row has 3 columns, the header 2"},
-		{"every error of every row", "kind,type,rated:vceo,rated:hfe\ntransistor,A,1A,x\ntransistor,B,30V,50\ntransistor,C,1F,\n",
+		{
+			"every error of every row", "kind,type,rated:vceo,rated:hfe\ntransistor,A,1A,x\ntransistor,B,30V,50\ntransistor,C,1F,\n",
 			"line 2, column 3 (rated:vceo): \"1A\" is a current; vceo is a voltage such as 35V\nline 2, column 4 (rated:hfe): \"x\" has no number in it\n" +
-				"3: transistor B vceo 30 V hfe 50\nline 4, column 3 (rated:vceo): \"1F\" is a capacitance; vceo is a voltage such as 35V"},
+				"3: transistor B vceo 30 V hfe 50\nline 4, column 3 (rated:vceo): \"1F\" is a capacitance; vceo is a voltage such as 35V",
+		},
 		{"an unclosed quote spoils its line alone", "kind,type\ntransistor,\"QX1\ntransistor,QX2\n", "line 2: column 2: the quote is never closed\n3: transistor QX2"},
 		{"a terminal escape", "kind,type\ntransistor,QX\x1b[1m\n", `line 2: control character '\x1b' in the line`},
 	} {
