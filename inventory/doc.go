@@ -14,7 +14,7 @@
 // follows every page that way before bbolt walks the file, and then compares every record with every index. Run it in a child process with
 // a time limit all the same.
 //
-// # Layout, schema 1
+// # Layout, schema 2
 //
 // All integers in keys are big-endian, so that keys sort as numbers do. "Sealed" values are a version byte, a CRC-32C (Castagnoli) of what
 // follows, and the payload; see codec.go. Top-level buckets:
@@ -25,8 +25,9 @@
 //	row              the part's key → sealed row: what a list of parts shows and filters by, derived from part and lot
 //	part_by_value    kind 0x00 characteristic 0x00 origin, float64, the part's key → verdict byte; of parts in stock: every nominal of the
 //	                 claim they are held to (origin 'c') and every reading that stands and is exact (origin 'm')
+//	house            tables → sealed tables of the user's group (CBOR, integer keys); new in schema 2
 //	journal          sequence uint64 → sealed entry: when, what in words, and the records as they were before (CBOR, integer keys)
-//	journal_by_part  the part's key (number 0 for the lot itself), sequence uint64 → empty
+//	journal_by_part  the part's key (number 0 for the lot itself, lot 0 for the house tables), sequence uint64 → empty
 //
 // float64 in keys: the bits, all inverted where negative, else the top bit set; −0 is folded to 0 and NaN has no key. Characteristics,
 // variables, units, verdicts and every other enumeration are stored by name, in rows and index by its place in a list that is only ever

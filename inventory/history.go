@@ -34,6 +34,9 @@ type Done struct {
 
 // String words it: "12-07: capacitance 2010 µF", "12-01 and 41 more: screened box.csv".
 func (d Done) String() string {
+	if d.ID == houseID && d.Parts == 1 {
+		return d.Action + " (the tables of your own; used from the next start)"
+	}
 	if d.Parts > 1 {
 		return fmt.Sprintf("%s and %d more: %s", d.ID, d.Parts-1, d.Action)
 	}
@@ -219,7 +222,10 @@ func (c *change) swap(e *entry) error {
 			return damaged(errShort)
 		}
 		bucket, key := c.tx.Bucket(bucketPart), ch.Key
-		if id.IsLot() {
+		switch {
+		case id == houseID:
+			bucket, key = c.tx.Bucket(bucketHouse), keyHouse
+		case id.IsLot():
 			bucket, key = c.tx.Bucket(bucketLot), lotKey(id.Lot)
 			lots[id.Lot] = true
 			delete(c.lots, id.Lot)

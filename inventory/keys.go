@@ -19,8 +19,8 @@ var (
 	bucketByPart  = []byte("journal_by_part")
 )
 
-// buckets lists every bucket, derived ones last.
-var buckets = [][]byte{bucketMeta, bucketLot, bucketPart, bucketJournal, bucketRow, bucketValue, bucketByPart}
+// buckets lists every bucket, derived ones last; the first is new in schema 2.
+var buckets = [][]byte{bucketHouse, bucketMeta, bucketLot, bucketPart, bucketJournal, bucketRow, bucketValue, bucketByPart}
 
 // The keys in meta.
 var (

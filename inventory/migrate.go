@@ -9,7 +9,7 @@ import (
 )
 
 // schemaVersion is the layout that this program writes; see the package comment.
-const schemaVersion = 1
+const schemaVersion = 2
 
 func schemaOf(value []byte) uint32 { return binary.BigEndian.Uint32(value) }
 
@@ -20,8 +20,8 @@ type migration struct {
 	run  func(*bolt.Tx) error
 }
 
-// migrations are ordered and without gaps. Schema 1 is the first, so there is none yet; the loop that runs them is tested with others.
-var migrations []migration
+// migrations are ordered and without gaps.
+var migrations = []migration{{from: 1, name: "room for house tables", run: addHouseBucket}}
 
 // migrate runs what leads from the file's schema to the program's, each step in one transaction with the new version. Before the first it
 // leaves a copy beside the file.

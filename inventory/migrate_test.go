@@ -7,6 +7,7 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"slices"
 	"testing"
 
 	bolt "go.etcd.io/bbolt"
@@ -25,29 +26,32 @@ func TestMigrationsRunInOrderEachOnceAfterACopy(t *testing.T) {
 		return migration{from, fmt.Sprintf("step %d", from), func(tx *bolt.Tx) error { ran = append(ran, from); return err }}
 	}
 	failing := errors.New("no")
-	if err := migrate(db, w.Path(), 4, []migration{step(0, nil), step(1, failing), step(2, nil)}); !errors.Is(err, failing) {
+	const now = schemaVersion
+	if err := migrate(db, w.Path(), now+3, []migration{step(now-1, nil), step(now, failing), step(now+1, nil)}); !errors.Is(err, failing) {
 		t.Errorf("a step that fails: %v", err)
 	}
-	if err := migrate(db, w.Path(), 4, []migration{step(0, nil), step(2, nil)}); !errors.Is(err, ErrCorrupt) {
+	if err := migrate(db, w.Path(), now+3, []migration{step(now-1, nil), step(now+1, nil)}); !errors.Is(err, ErrCorrupt) {
 		t.Errorf("a gap in the steps: %v", err)
 	}
-	if err := migrate(db, w.Path(), 4, []migration{step(1, nil), step(2, nil), step(3, nil)}); err != nil {
+	if err := migrate(db, w.Path(), now+3, []migration{step(now, nil), step(now+1, nil), step(now+2, nil)}); err != nil {
 		t.Error(err)
 	}
-	if got := fmt.Sprint(ran); got != "[1 1 2 3]" {
-		t.Errorf("steps ran from %s", got)
+	if want := []uint32{now, now, now + 1, now + 2}; !slices.Equal(ran, want) {
+		t.Errorf("steps ran from %v, want %v", ran, want)
 	}
 	must0(t, db.Close())
-	if report, err := Verify(fmt.Sprintf("%s.schema-1", w.Path())); err != nil || report.Lots != 1 {
+	before := fmt.Sprintf("%s.schema-%d", w.Path(), now)
+	if report, err := Verify(before); err != nil || report.Lots != 1 {
 		t.Errorf("the copy from before: %+v, %v", report, err)
 	}
 	if _, err := Open(w.Path(), Options{}); !errors.Is(err, ErrNewer) {
-		t.Errorf("a file brought to schema 4: %v", err)
+		t.Errorf("a file brought to a newer schema: %v", err)
 	}
-	must0(t, os.Rename(fmt.Sprintf("%s.schema-1", w.Path()), w.Path()))
+	must0(t, os.Rename(before, w.Path()))
 }
 
-// testdata/schema-1.goodbin.gz was written when schema 1 was new: a lot and a part with every field filled.
+// testdata/schema-1.goodbin.gz was written when schema 1 was new: a lot and a part with every field filled. The file of schema 2 is that
+// one brought to it, with a row of a house table.
 func TestAWorkbookOfEverySchemaOpens(t *testing.T) {
 	for schema := 1; schema <= schemaVersion; schema++ {
 		packed, err := os.Open(fmt.Sprintf("testdata/schema-%d.goodbin.gz", schema))
@@ -59,6 +63,12 @@ func TestAWorkbookOfEverySchemaOpens(t *testing.T) {
 		must0(t, err)
 		path := filepath.Join(t.TempDir(), "old")
 		must0(t, os.WriteFile(path, file, 0o600))
+		if report, err := Verify(path); err != nil || report.Parts == 0 {
+			t.Errorf("schema %d, before it is opened for writing: %+v, %v", schema, report, err)
+		}
+		if h, err := ReadHouse(path); err != nil || (schema > 1) != (len(h.Types) == 1 && h.Types[0].Claim.Trait(screening.TraitType) == "X100") {
+			t.Errorf("schema %d: house tables %+v, %v", schema, h, err)
+		}
 		w := mustOpen(t, path, Options{})
 		p, err := w.GetPart(ID{12, 7})
 		if err != nil || len(p.Part.Readings) != 2 || len(p.Part.Claim.Ratings) != 2 {

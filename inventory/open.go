@@ -159,15 +159,16 @@ func recogniseOnce(path string) error {
 	case !ok || len(schema) != 4:
 		return corrupt(path, errors.New("it does not say its schema"))
 	}
-	if version := schemaOf(schema); version > schemaVersion {
+	version := schemaOf(schema)
+	if version > schemaVersion {
 		return fail(ErrNewer, fmt.Sprintf("%s is of a newer goodbin (schema %d; this one knows %d): use that version; nothing was changed",
 			quote(path), version, schemaVersion))
 	}
-	return p.sound(path)
+	return p.sound(path, bucketsOf(version))
 }
 
 // sound checks what bbolt reads while it opens a file: the list of free pages and the buckets.
-func (p *pages) sound(path string) error {
+func (p *pages) sound(path string, buckets [][]byte) error {
 	if p.freelist != noFreelist {
 		g, err := p.page(p.freelist)
 		if err == nil {

@@ -82,7 +82,7 @@ func TestWhatIsNoWorkbookIsSaidAndLeftAlone(t *testing.T) {
 		{"an executable", []byte("\x7fELF\x02\x01\x01\x00"), ErrForeign, "a binary file"},
 		{"zeros", make([]byte, 100_000), ErrForeign, "a binary file"},
 		{"another program's database", otherDatabase(t), ErrForeign, "another program"},
-		{"a newer schema", newerWorkbook(t), ErrNewer, "schema 2"},
+		{"a newer schema", newerWorkbook(t), ErrNewer, fmt.Sprintf("schema %d", schemaVersion+1)},
 		{"head pages wiped", metas, ErrForeign, "a binary file"},
 		{"both head pages with a flipped bit", badMetas, ErrCorrupt, "damaged"},
 		{"cut to a page", good[:os.Getpagesize()], ErrCorrupt, "shorter"},

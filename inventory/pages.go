@@ -232,12 +232,15 @@ func (p *pages) find(g page, key []byte) (e element, ok bool, err error) {
 }
 
 // meta looks a key up in the bucket named meta: that tells a goodbin workbook from any other database.
-func (p *pages) meta(key []byte) (value []byte, ok bool, err error) {
+func (p *pages) meta(key []byte) (value []byte, ok bool, err error) { return p.value(bucketMeta, key) }
+
+// value looks a key up in a top-level bucket. ok is false where bucket or key is not there.
+func (p *pages) value(name, key []byte) (value []byte, ok bool, err error) {
 	root, err := p.page(p.root)
 	if err != nil {
 		return nil, false, err
 	}
-	bucket, ok, err := p.find(root, bucketMeta)
+	bucket, ok, err := p.find(root, name)
 	if err != nil || !ok || !bucket.bucket {
 		return nil, false, err
 	}

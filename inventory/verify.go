@@ -13,6 +13,7 @@ import (
 // Report is what a check found.
 type Report struct {
 	Lots, Parts, Entries int      // records read; entries are those of the journal
+	Types                int      // type numbers of the user's own table
 	Problems             []string // at most MaxProblems; empty: all is well
 }
 
@@ -83,7 +84,7 @@ func (report *Report) check(ctx context.Context, tx *bolt.Tx) error {
 		return ctx.Err()
 	}
 	check := checker{ctx: ctx, tx: tx, found: found, report: report}
-	for _, step := range []func() error{check.meta, check.lots, check.parts, check.valueKeys, check.journal} {
+	for _, step := range []func() error{check.meta, check.house, check.lots, check.parts, check.valueKeys, check.journal} {
 		if err := step(); err != nil {
 			return err
 		}
@@ -120,6 +121,15 @@ func (c *checker) meta() error {
 			c.found.add("position: %v", err)
 		}
 	}
+	return nil
+}
+
+func (c *checker) house() error {
+	h, err := houseIn(c.tx)
+	if err != nil {
+		c.found.add("%v", err)
+	}
+	c.report.Types = len(h.Types)
 	return nil
 }
 

@@ -154,18 +154,6 @@ func (c *cardData) notTested() string {
 	return strings.Join(append(gaps, c.judged.Untested...), "; ")
 }
 
-// nameOf words a characteristic: by its label where its rulebook is known, else by the word of the command line.
-func (c *cardData) nameOf(of screening.Characteristic, section string) string {
-	name := strings.ReplaceAll(string(of), "-", " ")
-	if c.book != nil {
-		name = c.book.Definition(of).Label
-	}
-	if section != "" {
-		name += " of section " + section
-	}
-	return name
-}
-
 // headlines chooses one finding per criterion and section: what decides it, at the grade reached. A limit of a stricter grade decides
 // nothing where the part was taken at a laxer one: beside an accept it would read as a failure.
 func headlines(j screening.Judgement, asked *screening.Question) []screening.Finding {
@@ -299,7 +287,7 @@ func sourceText(l screening.Limit) string {
 // findingLine shows one limit in a line: its name, what was read, a small scale, the outcome.
 func (t *theme) findingLine(c *cardData, f *screening.Finding, w int) string {
 	const nameW, valueW, outcomeW = 13, 9, 11 // "unconfirmed" is the longest
-	name := fit(t.clean(c.findingName(f)), nameW, t.g.more) + " "
+	name := fit(t.clean(c.shortName(f, nameW, t.g.more)), nameW, t.g.more) + " "
 	value := "none"
 	if e := f.Evidence(); e != nil {
 		value = t.clean(shortValue(*e))
@@ -309,28 +297,6 @@ func (t *theme) findingLine(c *cardData, f *screening.Finding, w int) string {
 		line += t.scale(f.Limit, f.Evidence(), room) + " "
 	}
 	return t.outcomeInk(f.Outcome).paint(fit(line+outcomeText(f), w, t.g.more))
-}
-
-// ambiguous reports whether one reading answers several criteria, so that its name alone does not say which one is meant.
-func (c *cardData) ambiguous(f *screening.Finding) bool {
-	return slices.ContainsFunc(c.judged.Findings, func(other screening.Finding) bool {
-		return other.Limit.On == f.Limit.On && other.Limit.Section == f.Limit.Section && other.Limit.Criterion != f.Limit.Criterion
-	})
-}
-
-func criterionName(f *screening.Finding) string {
-	return strings.ReplaceAll(string(f.Limit.Criterion), "-", " ")
-}
-
-func (c *cardData) findingName(f *screening.Finding) string {
-	name := strings.ReplaceAll(string(f.Limit.On), "-", " ")
-	if c.ambiguous(f) {
-		name = criterionName(f)
-	}
-	if f.Limit.Section != "" {
-		name += " " + f.Limit.Section
-	}
-	return name
 }
 
 func readingText(f *screening.Finding) string {

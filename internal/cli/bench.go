@@ -93,7 +93,7 @@ func (a *app) showPages(ctx context.Context, bell bool) error {
 			name = "demo"
 		}
 		return tui.Run(ctx, tui.Options{
-			Workbook: w, WorkbookName: name, Kinds: a.books, Tables: a.tablesText(), Policy: screening.DefaultPolicy(), Now: a.env.Now,
+			Workbook: w, WorkbookName: name, Kinds: a.books, Tables: a.tablesText(), Policy: screening.DefaultPolicy(), Now: a.env.Now, Meanings: a.meanings,
 			ASCII: a.env.ascii, NoColor: a.env.plain, Bell: bell, Demo: a.demo, In: a.env.In, Out: a.env.Out,
 			Width: a.env.Width, Height: a.env.Height,
 		})

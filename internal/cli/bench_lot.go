@@ -4,11 +4,13 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"strconv"
 	"strings"
 
 	"goodbin/inventory"
 	"goodbin/screening"
 	"goodbin/screening/entry"
+	"goodbin/tui"
 )
 
 // benchPage is the name of the bench in the workbook's position, which both faces share.
@@ -77,22 +79,12 @@ func lotTitle(lot inventory.Lot) string {
 // newLot asks for the header of a lot, once, and keeps it.
 func (l *lines) newLot(ctx context.Context) error {
 	lot := inventory.Lot{}
-	names := l.kindNames()
-	err := l.answer(ctx, "kind ("+strings.Join(names, ", ")+")", func(text string) error {
-		if done, err := l.common(text, linesHelp); done || err != nil {
-			return err
-		}
-		book, err := l.book1(text)
-		if err != nil {
-			return refusal(err)
-		}
-		l.book, lot.Kind = book, book.Kind
-		return nil
-	})
+	decoded, err := l.askKind(ctx)
 	if err != nil {
 		return err
 	}
-	if err := l.askHeader(ctx, &lot); err != nil {
+	lot.Kind = l.book.Kind
+	if err := l.askHeader(ctx, &lot, decoded); err != nil {
 		return err
 	}
 	for _, more := range []struct {
@@ -117,6 +109,49 @@ func (l *lines) newLot(ctx context.Context) error {
 	return l.say("lot %d: %s %s", lot.ID, lot.Kind, lotTitle(lot))
 }
 
+// askKind asks what the parts are: a kind, or what is printed on them, of whose meanings one is then picked by its number. It returns the
+// words that a marking claims, "" where a kind was named.
+func (l *lines) askKind(ctx context.Context) (decoded string, err error) {
+	var offered []tui.Meaning
+	kinds := "the kinds are " + strings.Join(l.kindNames(), ", ")
+	err = l.answer(ctx, "kind, or what is printed on them (? lists the kinds)", func(text string) error {
+		if done, err := l.common(text, kinds+"\n"+linesHelp); done || err != nil {
+			return err
+		}
+		if n, err := strconv.Atoi(text); err == nil && n >= 1 && n <= len(offered) {
+			m := offered[n-1]
+			l.book, _ = l.books.Find(m.Kind)
+			decoded = m.Header
+			return l.say("%s: %s", m.Kind, m.Text)
+		}
+		if text == "" {
+			return again("a kind, what is printed on them, or unknown where nobody can tell; ? lists the kinds")
+		}
+		book, err := l.book1(text)
+		if err == nil {
+			l.book = book
+			return nil
+		}
+		if meanings := l.meanings(text); len(meanings) > 0 {
+			offered = meanings
+			return l.offer(meanings)
+		}
+		return refusal(err)
+	})
+	return decoded, err
+}
+
+// offer lists the meanings of a marking by number.
+func (l *lines) offer(meanings []tui.Meaning) error {
+	var b strings.Builder
+	b.WriteString("as a marking it can mean:")
+	for i, m := range meanings {
+		fmt.Fprintf(&b, "\n  %d %s  %s  (%s)", i+1, m.Kind, m.Text, m.Source)
+	}
+	b.WriteString("\ntype its number, or a kind")
+	return l.sayLines(b.String())
+}
+
 // book1 finds a kind by its name or its beginning, where only one begins so.
 func (l *lines) book1(name string) (*screening.Rulebook, error) {
 	name = strings.ToLower(name)
@@ -138,12 +173,17 @@ func (l *lines) book1(name string) (*screening.Rulebook, error) {
 }
 
 // askHeader asks what is printed on every part of the lot; nothing makes it a mixed one, whose parts are asked each.
-func (l *lines) askHeader(ctx context.Context, lot *inventory.Lot) error {
+// decoded is what their marking claims already; more may follow.
+func (l *lines) askHeader(ctx context.Context, lot *inventory.Lot, decoded string) error {
 	prompt := "what is printed on them, such as " + l.book.ExampleClaim() + " (empty: they differ)"
+	if decoded != "" {
+		prompt = "they claim " + decoded + "; what else is printed on them (empty: nothing)"
+	}
 	return l.answer(ctx, prompt, func(text string) error {
 		if done, err := l.common(text, claimHelp(l.book)+"\n"+linesKeys); done || err != nil {
 			return err
 		}
+		text = strings.TrimSpace(decoded + " " + text)
 		if text == "" {
 			lot.Mixed = true
 			return nil

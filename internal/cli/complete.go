@@ -5,7 +5,6 @@ import (
 
 	"github.com/spf13/cobra"
 
-	"goodbin/rules/types"
 	"goodbin/screening"
 )
 
@@ -37,7 +36,7 @@ func (a *app) completeWords(_ *cobra.Command, args []string, typing string) ([]s
 		}
 	}
 	words = append(words, "seen=\twhat was found by eye")
-	for _, name := range types.Builtin().Names(book.Kind) {
+	for _, name := range a.types.Names(book.Kind) {
 		words = append(words, name+"\ttype number")
 	}
 	var fitting []string

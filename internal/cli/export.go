@@ -53,6 +53,14 @@ func (a *app) export(ctx context.Context, f exportFlags) error {
 		return request(errors.New("--decimal-comma needs another delimiter than the comma"), "add --delimiter semicolon")
 	}
 	return a.withWorkbook(ctx, true, func(w *inventory.Workbook) error {
+		h, err := w.House()
+		if err != nil {
+			return err
+		}
+		if n := len(h.Types); n > 0 && !a.json {
+			a.env.note("goodbin: %d %s of your own %s no part and not in this file: goodbin types export writes them", n, plural(n, "type"),
+				map[bool]string{true: "is", false: "are"}[n == 1])
+		}
 		return a.toFile(f.out, w.Path(), func(out io.Writer) error {
 			if a.json {
 				return a.exportJSON(ctx, w, out)

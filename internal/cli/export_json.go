@@ -64,10 +64,52 @@ type jsonPart struct {
 	History   []jsonEvent    `json:"history"`
 }
 
-// exportJSON writes the lots, each followed by its parts with every reading ever taken, one object a line.
+// jsonHouseType is one type number of the user's own table.
+type jsonHouseType struct {
+	Schema    int       `json:"schema"`
+	HouseType string    `json:"house_type"`
+	Kind      string    `json:"kind"`
+	Alias     *string   `json:"alias"`
+	Claim     jsonClaim `json:"claim"`
+	Source    *string   `json:"source"`
+	Note      *string   `json:"note"`
+	Added     string    `json:"added"`
+}
+
+// jsonFamilies is the list of families that the user's group never or always keeps, as the CSV that it was read from.
+type jsonFamilies struct {
+	Schema   int    `json:"schema"`
+	Families string `json:"house_families"`
+}
+
+// exportHouseJSON writes the house tables, one object a line.
+func exportHouseJSON(w *inventory.Workbook, enc *json.Encoder) error {
+	h, err := w.House()
+	if err != nil {
+		return err
+	}
+	for _, t := range h.Types {
+		err := enc.Encode(jsonHouseType{
+			Schema: schema, HouseType: t.Claim.Trait(screening.TraitType), Kind: string(t.Kind), Alias: text(t.Alias), Claim: claimJSON(t.Claim),
+			Source: text(t.Source), Note: text(t.Note), Added: t.Added.Format(time.RFC3339),
+		})
+		if err != nil {
+			return err
+		}
+	}
+	if h.Families == "" {
+		return nil
+	}
+	return enc.Encode(jsonFamilies{schema, h.Families})
+}
+
+// exportJSON writes the house tables, then the lots, each followed by its parts with every reading ever taken, one object a line.
 func (a *app) exportJSON(ctx context.Context, w *inventory.Workbook, out io.Writer) error {
 	enc := json.NewEncoder(out)
 	enc.SetEscapeHTML(false)
+	if err := exportHouseJSON(w, enc); err != nil {
+		return err
+	}
 	lots, err := w.Lots()
 	if err != nil {
 		return err

@@ -34,9 +34,11 @@ func runHere(t testing.TB, stdin string, args ...string) (stdout, stderr string,
 var jsonShapes = map[string][]any{
 	"judge":   {jsonJudgement{}},
 	"limits":  {jsonLimits{}},
+	"marking": {jsonMarking{}},
 	"screen":  {jsonJudgement{}, jsonWrong{}, jsonCounts{}},
 	"stock":   {jsonStock{}},
-	"export":  {jsonLot{}, jsonPart{}},
+	"export":  {jsonLot{}, jsonPart{}, jsonHouseType{}, jsonFamilies{}},
+	"types":   {jsonTypeRow{}, jsonGuess{}},
 	"verify":  {jsonVerify{}},
 	"version": {jsonVersion{}},
 }
@@ -120,9 +122,15 @@ func TestJSONIsWhatTheShapesSay(t *testing.T) {
 		{"judge, undecided", "judge", ExitNotAccepted, []string{"judge", "bipolar", "2N3904", "vbe=0.68"}},
 		{"judge, rejected", "judge", ExitNotAccepted, []string{"judge", "electrolytic", "2200uF", "35V", "capacitance=100uF"}},
 		{"limits", "limits", ExitDone, []string{"limits", "electrolytic", "2200uF", "35V", "--all"}},
+		{"marking", "marking", ExitDone, []string{"marking", "2A474J"}},
+		{"marking, a date", "marking", ExitDone, []string{"marking", "1208"}},
+		{"marking, unknown", "marking", ExitNotAccepted, []string{"marking", "hello"}},
 		{"screen", "screen", ExitRequest, []string{"screen", box, "--workbook", workbook}},
 		{"stock", "stock", ExitDone, []string{"stock", "--all", "--workbook", workbook}},
 		{"export", "export", ExitDone, []string{"export", "--workbook", workbook}},
+		{"types", "types", ExitDone, []string{"types", "show", "BC547B"}},
+		{"types, unknown", "types", ExitNotAccepted, []string{"types", "show", "D965"}},
+		{"types, listed", "types", ExitDone, []string{"types", "list", "zener"}},
 		{"version", "version", ExitDone, []string{"version"}},
 	}
 	for _, tt := range tests {

@@ -24,6 +24,9 @@ func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, pa
 	if err := e.line("%s: %s", book.Label, parsed.Claim); err != nil {
 		return err
 	}
+	if err := a.printOfType(book, &j, parsed.Claim); err != nil {
+		return err
+	}
 	if err := a.printWhy(j, book); err != nil {
 		return err
 	}
@@ -50,6 +53,30 @@ func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, pa
 		}
 	}
 	return nil
+}
+
+// printOfType prints what the type number brings along: the pinout, and that figures of the user's own table count.
+func (a *app) printOfType(book *screening.Rulebook, j *screening.Judgement, own screening.Claim) error {
+	if pinout := j.Pinout(own); pinout != "" {
+		if err := a.env.wrapped("pinout      ", pinout); err != nil {
+			return err
+		}
+	}
+	row, ok := a.types.Lookup(book.Kind, j.Claim.Trait(screening.TraitType))
+	if !ok || !row.House {
+		return nil
+	}
+	var ownRatings []string
+	for _, r := range j.Claim.Ratings {
+		if r.Source.Status == screening.House && r.Source.Document == row.Source.Document {
+			ownRatings = append(ownRatings, symbolOf(book, r.Of)+" "+r.String())
+		}
+	}
+	text := "your own row of " + row.Type + " counts"
+	if len(ownRatings) > 0 {
+		text += ": " + strings.Join(ownRatings, ", ")
+	}
+	return a.env.wrapped("house       ", text+" ("+row.Source.Document+")")
 }
 
 // verdictLine words the verdict with what it is held as: "ACCEPT, serviceable", "REGRADE: as measured, 112 µF".

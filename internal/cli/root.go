@@ -8,7 +8,9 @@ import (
 
 	"github.com/spf13/cobra"
 
+	"goodbin/inventory"
 	"goodbin/rules"
+	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/entry"
 )
@@ -17,6 +19,8 @@ import (
 type app struct {
 	env   *Env
 	books screening.Kinds
+	types *types.Table    // the type numbers that the rulebooks look up
+	house inventory.House // the workbook's own tables; zero where there are none
 
 	workbook string
 	demo     bool
@@ -28,7 +32,8 @@ type app struct {
 
 // Run runs the program with its arguments (without its name) and returns the exit status. It never panics on what it reads.
 func Run(ctx context.Context, args []string, env Env) int {
-	a := &app{env: &env, books: rules.All()}
+	a := &app{env: &env, types: types.Builtin()}
+	a.books = a.kinds(rules.House{})
 	root := a.root()
 	root.SetArgs(dashWords(args))
 	root.SetIn(env.In)
@@ -41,6 +46,9 @@ func Run(ctx context.Context, args []string, env Env) int {
 	a.env.report(err)
 	return statusOf(err)
 }
+
+// kinds is the table of all rulebooks, with house tables and whatever kinds the environment adds.
+func (a *app) kinds(h rules.House) screening.Kinds { return append(rules.With(h), a.env.Kinds...) }
 
 // dashWords lets a tolerance such as -10/+50% stand among the words: no flag begins with a digit, so its minus becomes the sign that the
 // words read as minus too.
@@ -60,6 +68,7 @@ const rootExamples = `  goodbin                                                 
   goodbin judge electrolytic 2200uF 35V M capacitance=2010uF esr@120Hz=61m leakage@35V,2min=45uA
   goodbin judge bipolar type=2N3904 hfe@ic=10mA,vce=1V=180 vbe=0.68
   goodbin limits electrolytic 2200uF 35V M                 every limit, with formula and source
+  goodbin marking 2A474J                                   what a marking means, every reading of it
   goodbin screen box.csv                                   judge a box of parts and keep them
   goodbin stock 35V                                        what can be used
   goodbin bench --lines                                    measure part by part, a line at a time`
@@ -74,8 +83,9 @@ meter's own error, and says what to do with the part and why. Every judged part 
 		SilenceErrors: true,
 		SilenceUsage:  true,
 		Args:          a.noSuchCommand,
-		PersistentPreRunE: func(*cobra.Command, []string) error {
+		PersistentPreRunE: func(cmd *cobra.Command, _ []string) error {
 			a.env.settle(a.ascii)
+			a.loadHouse(cmd.Name())
 			return nil
 		},
 		RunE: func(cmd *cobra.Command, _ []string) error { return a.pages(cmd) },
@@ -91,8 +101,9 @@ meter's own error, and says what to do with the part and why. Every judged part 
 	})
 	root.CompletionOptions.HiddenDefaultCmd = false
 	root.AddCommand(
-		a.judgeCommand(), a.limitsCommand(), a.screenCommand(), a.stockCommand(), a.benchCommand(), a.exportCommand(),
-		a.backupCommand(), a.verifyCommand(), a.verifyChildCommand(), a.versionCommand(),
+		a.judgeCommand(), a.limitsCommand(), a.markingCommand(), a.screenCommand(), a.stockCommand(), a.benchCommand(), a.exportCommand(),
+		a.backupCommand(), a.verifyCommand(), a.verifyChildCommand(), a.versionCommand(), a.typesCommand(),
+		a.familiesCommand(),
 	)
 	root.AddCommand(a.stockCommands()...)
 	return root

@@ -71,6 +71,7 @@ type jsonVerify struct {
 	Lots     int      `json:"lots"`
 	Parts    int      `json:"parts"`
 	Entries  int      `json:"entries"`
+	Types    int      `json:"types"` // of the user's own table
 	Problems []string `json:"problems"`
 	Rejudged int      `json:"rejudged"`
 	Changed  int      `json:"changed"`
@@ -100,7 +101,7 @@ func (a *app) verify(ctx context.Context, rejudge bool, limit time.Duration) err
 
 func verifyJSON(path string, r inventory.Report) jsonVerify {
 	return jsonVerify{
-		Schema: schema, Workbook: path, OK: r.OK(), Lots: r.Lots, Parts: r.Parts, Entries: r.Entries, Problems: append([]string{}, r.Problems...),
+		Schema: schema, Workbook: path, OK: r.OK(), Lots: r.Lots, Parts: r.Parts, Entries: r.Entries, Types: r.Types, Problems: append([]string{}, r.Problems...),
 	}
 }
 
@@ -119,7 +120,11 @@ func (a *app) tellVerified(out jsonVerify, rejudged bool) error {
 	case a.json:
 		err = a.writeJSON(out)
 	case out.OK:
-		err = a.env.line("%s: sound; lots %d, parts %d, entries of history %d", out.Workbook, out.Lots, out.Parts, out.Entries)
+		own := ""
+		if out.Types > 0 {
+			own = fmt.Sprintf(", types of your own %d", out.Types)
+		}
+		err = a.env.line("%s: sound; lots %d, parts %d, entries of history %d%s", out.Workbook, out.Lots, out.Parts, out.Entries, own)
 		if err == nil && rejudged {
 			err = a.env.line("judged again under the present tables: %d, of which %d have another verdict now", out.Rejudged, out.Changed)
 		}
