@@ -2,159 +2,185 @@ package rules_test
 
 import (
 	"fmt"
-	"math"
-	"math/rand/v2"
+	"slices"
 	"strings"
 	"testing"
 
 	"goodbin/rules"
 	"goodbin/screening"
-	"goodbin/screening/quantity"
 )
 
-// The first evening: what becomes of healthy parts that are measured once with the assumed meter. The populations are invented; their
-// spreads are what the design states for them.
+// The first evening: what becomes of parts that are measured once, by whoever walks through the questions with one pocket meter. The populations
+// are invented; each states its spreads. Sound parts must mostly be accepted, with what the bench did not see said; what is not sound must not be.
 
-const perPopulation = 2000
-
-// bench draws true values and meter errors.
-type bench struct {
-	*rand.Rand
-	meter screening.Meter
+// evening is one population.
+type evening struct {
+	kind  screening.Kind
+	name  string // with its spreads
+	with  string // what is on the bench besides the pocket meter; "" is nothing
+	sound func(*bench) *specimen
+	least float64 // share of the sound ones that must be accepted, where why says so; else it is usualShare. At 0 none may be
+	why   string
+	ill   []fault
+	// unseen is a word of what such a bench does not see: it must stand with every part that is accepted.
+	unseen string
+	// most is how many answers a sound part may take, where ask says why so many; else it is usualAnswers.
+	most int
+	ask  string
 }
 
-// measure returns a reading of a true value: the assumed meter's error, rectangular inside its specification, rounded to three digits.
-func (b bench) measure(d screening.Definition, truth float64, at screening.Condition) screening.Reading {
-	r := screening.Reading{Of: d.Name, Unit: d.Unit, Value: truth, At: at}
-	r.Step = math.Pow10(int(math.Floor(math.Log10(truth))) - 2)
-	half := b.meter.Uncertainty(r) * math.Sqrt(3)
-	r.Value = math.Round((truth+half*(2*b.Float64()-1))/r.Step) * r.Step
-	return r
+// fault is what befalls parts of a population.
+type fault struct {
+	name    string
+	strike  func(*bench, *specimen)
+	most    float64 // share that may be accepted all the same, where why says so; else none
+	why     string
+	further bool // the person goes on to the questions that are wanted, not required
 }
 
-func (b bench) pick(from ...float64) float64 { return from[b.IntN(len(from))] }
+const (
+	soundParts, illParts = 120, 30
+	usualShare           = 0.95
+	usualAnswers         = 6
+)
 
-func field(book *screening.Rulebook, name screening.Characteristic) screening.Definition {
-	f, ok := book.BenchField(name)
-	if !ok {
-		panic("no reading " + name)
-	}
-	return f.Definition
+// notWalked are the kinds without an evening, and why.
+var notWalked = map[screening.Kind]string{
+	"mains-capacitor": "barred from the mains on any reading",
+	"selenium":        "barred on any reading",
+	"unknown":         "it is kept as measured, whatever it reads",
 }
 
-// tanDeltaMax is the ladder that low-impedance and normal-size series print (Nichicon UPW, Rubycon ZL: published).
-var tanDeltaMax = map[float64]float64{6.3: .22, 10: .19, 16: .16, 25: .14, 35: .12, 50: .10}
-
-var populations = []struct {
-	name string
-	kind screening.Kind
-	make func(bench, *screening.Rulebook) screening.Part
-}{
-	{"radial electrolytics after 1985, under 63 V, to 2200 µF", "electrolytic", func(b bench, book *screening.Rulebook) screening.Part {
-		c := b.pick(1, 2.2, 4.7) * b.pick(1e-6, 10e-6, 100e-6)
-		if b.IntN(4) == 0 {
-			c = b.pick(1000e-6, 2200e-6)
-		}
-		v := b.pick(6.3, 10, 16, 25, 35, 50)
-		claim := screening.Claim{}.WithRating(screening.NominalRating(screening.Capacitance, c)).
-			WithRating(screening.NominalRating(screening.RatedVoltage, v)).
-			WithTrait(screening.TraitCase, "radial").WithTrait(screening.TraitDated, fmt.Sprint(1986+b.IntN(30)))
-		truth := c * (1 - 0.05 + 0.06*b.NormFloat64())
-		// A printed maximum is about twice the typical value (EPCOS B41456 rows: derived).
-		tan := (tanDeltaMax[v] + 0.02*max(0, math.Floor(c/1000e-6)-1)) * 0.55 * math.Exp(0.2*b.NormFloat64())
-		at := screening.At(screening.Frequency, 120)
-		return screening.Part{Claim: claim, Readings: []screening.Reading{
-			b.measure(screening.Capacitance, truth, at),
-			b.measure(screening.ESR, tan/(2*math.Pi*120*truth), at),
-		}}
-	}},
-	{"5 % resistors, 10 Ω to 1 MΩ", "resistor", func(b bench, _ *screening.Rulebook) screening.Part {
-		r := b.pick(1, 1.2, 1.5, 1.8, 2.2, 2.7, 3.3, 3.9, 4.7, 5.6, 6.8, 8.2) * b.pick(10, 100, 1e3, 10e3, 100e3)
-		claim := screening.Claim{}.WithRating(screening.NominalRating(screening.Resistance, r)).
-			WithRating(screening.RangeRating(screening.Tolerance, -0.05, 0.05))
-		truth := r * (1 + 0.005 + 0.012*b.NormFloat64())
-		return screening.Part{Claim: claim, Readings: []screening.Reading{b.measure(screening.Resistance, truth, screening.Condition{})}}
-	}},
-	{"signal diodes, reverse OL on the diode range", "diode", func(b bench, book *screening.Rulebook) screening.Part {
-		over := field(book, "vbr")
-		return screening.Part{
-			Claim: screening.Claim{}.WithTrait(screening.TraitType, "1N4148"),
-			Readings: []screening.Reading{
-				b.measure(field(book, "vf"), 0.62+0.02*b.NormFloat64(), screening.Condition{}),
-				{Of: over.Name, Unit: over.Unit, Over: true, Sense: over.Over.Sense, Value: over.Over.Value, Typed: "OL"},
-			},
-		}
-	}},
-	{"small silicon transistors with centred gains", "bipolar", func(b bench, book *screening.Rulebook) screening.Part {
-		kinds := []struct {
-			name        string
-			gain        float64
-			ic, vce, cv float64
-		}{{"2N3904", 190, 10e-3, 1, 0.12}, {"BC547B", 300, 2e-3, 5, 0.12}, {"2SC1815", 200, 2e-3, 6, 0.2}, {"BC557B", 300, 2e-3, 5, 0.12}}
-		k := kinds[b.IntN(len(kinds))]
-		at := screening.At(screening.IC, k.ic).With(screening.VCE, k.vce)
-		name, group := k.name, ""
-		if strings.HasPrefix(name, "BC") {
-			name, group = name[:5], name[5:]
-		}
-		claim := screening.Claim{}.WithTrait(screening.TraitType, name).WithTrait(screening.TraitGroup, group)
-		iceo := field(book, "iceo")
-		return screening.Part{Claim: claim, Readings: []screening.Reading{
-			b.measure(field(book, "vbe"), 0.66+0.015*b.NormFloat64(), screening.Condition{}),
-			b.measure(field(book, "hfe"), k.gain*(1+k.cv*b.NormFloat64()), at),
-			{Of: iceo.Name, Unit: iceo.Unit, Sense: quantity.AtMost, Value: 0.1e-6, At: screening.At(screening.VCE, 20), Typed: "<0.1uA"},
-		}}
-	}},
+func evenings() []evening {
+	return slices.Concat(oxideEvenings(), dryEvenings(), ceramicEvenings(), filmEvenings(), trackEvenings(), thermistorEvenings(), windingEvenings(),
+		diodeEvenings(), lightEvenings(), transistorEvenings(), switchEvenings(), circuitEvenings())
 }
 
-func TestFirstEveningOfHealthyParts(t *testing.T) {
-	b := bench{rand.New(rand.NewPCG(1, 2)), screening.AssumedMeter()}
+func TestFirstEvening(t *testing.T) {
 	var table strings.Builder
-	fmt.Fprintf(&table, "%-56s", "healthy parts, assumed meter, share in %")
-	for _, v := range screening.Verdicts() {
-		fmt.Fprintf(&table, "%10s", v)
-	}
-	rest := map[string]int{}
-	for _, p := range populations {
-		book, ok := rules.All().Find(p.kind)
-		if !ok {
-			t.Errorf("no rulebook %q", p.kind)
-			continue
-		}
-		counts := map[screening.Verdict]int{}
-		for range perPopulation {
-			j, err := screening.Judge(book, p.make(b, book), screening.DefaultPolicy())
-			if err != nil {
-				t.Fatal(err)
+	table.WriteString("accepted in %, of sound parts by the walk and as a row without conditions; mean and most answers; accepted in %, of parts with a fault")
+	met, books := map[screening.Kind]bool{}, rules.All()
+	all := evenings()
+	lines := make([]string, len(all))
+	t.Run("kinds", func(t *testing.T) {
+		for i, e := range all {
+			met[e.kind] = true
+			book, ok := books.Find(e.kind)
+			if !ok {
+				t.Fatalf("no rulebook %q", e.kind)
 			}
-			counts[j.Verdict]++
-			if j.Verdict != screening.Accept {
-				why := ""
-				if len(j.Reasons) > 0 {
-					why = j.Reasons[len(j.Reasons)-1].Text
+			t.Run(string(e.kind)+" "+e.name, func(t *testing.T) {
+				t.Parallel()
+				b := newBench(uint64(i + 1))
+				lines[i] = soundEvening(t, b, book, e)
+				for _, f := range e.ill {
+					lines[i] += fmt.Sprintf(" | %s %.0f", f.name, 100*illEvening(t, b, book, e, f))
 				}
-				rest[fmt.Sprintf("  %s, %s: %s", p.kind, j.Verdict, firstWords(why, 6))]++
-			}
+			})
 		}
-		fmt.Fprintf(&table, "\n%-56s", p.name)
-		for _, v := range screening.Verdicts() {
-			fmt.Fprintf(&table, "%10.1f", 100*float64(counts[v])/perPopulation)
+	})
+	for i, e := range all {
+		name := e.name
+		if e.with != "" {
+			name += "; " + e.with
 		}
-		if share := float64(counts[screening.Accept]) / perPopulation; share < 0.95 {
-			t.Errorf("%s: %.1f %% are accepted; at least 95 %% must be", p.name, 100*share)
-		}
+		fmt.Fprintf(&table, "\n%-18s %s\n%18s %s", e.kind, name, "", lines[i])
 	}
-	table.WriteString("\nwhat becomes of the rest:")
-	for what, n := range rest {
-		fmt.Fprintf(&table, "\n%s (%d of %d)", what, n, perPopulation)
+	for _, book := range books {
+		if met[book.Kind] == (notWalked[book.Kind] != "") {
+			t.Errorf("%s: has an evening: %v; why it has none: %q", book.Kind, met[book.Kind], notWalked[book.Kind])
+		}
 	}
 	t.Log("\n" + table.String())
 }
 
-func firstWords(text string, n int) string {
-	words := strings.Fields(text)
-	if len(words) > n {
-		words = append(words[:n], "…")
+// soundEvening walks a population through, holds it to its floor and its number of answers, and words what became of it.
+func soundEvening(t *testing.T, b *bench, book *screening.Rulebook, e evening) string {
+	accepted, rows, typed, longest := 0, 0, 0, 0
+	rest := map[string]int{}
+	for range soundParts {
+		s := e.sound(b)
+		o := b.evening(t, book, s, false)
+		typed += o.answers
+		longest = max(longest, o.answers)
+		if o.row == screening.Accept {
+			rows++
+		}
+		if o.Verdict != screening.Accept {
+			rest[fmt.Sprintf("%s: %s (%s)", o.Verdict, lastWords(o.Judgement), s.claim)]++
+			continue
+		}
+		accepted++
+		if text := notTested(book, o.Judgement); !strings.Contains(text, e.unseen) || text == "" {
+			t.Errorf("%s %s: accepted, and of what was not tested it says %q, not %q", e.kind, s.claim, text, e.unseen)
+		}
 	}
-	return strings.Join(words, " ")
+	least, most := usualShare, usualAnswers
+	if e.why != "" {
+		least = e.least
+	}
+	if e.ask != "" {
+		most = e.most
+	}
+	share := float64(accepted) / soundParts
+	switch {
+	case least == 0 && accepted > 0:
+		t.Errorf("%s, %s: %d are accepted; none can be: %s", e.kind, e.name, accepted, e.why)
+	case share < least:
+		t.Errorf("%s, %s: %.1f %% are accepted; at least %.0f %% must be\n%s", e.kind, e.name, 100*share, 100*least, listed(rest))
+	}
+	if longest > most {
+		t.Errorf("%s, %s: %d answers for a sound part; %d are enough", e.kind, e.name, longest, most)
+	}
+	return fmt.Sprintf("%.1f (%.0f); %.1f (%d)", 100*share, 100*float64(rows)/soundParts, float64(typed)/soundParts, longest)
+}
+
+// illEvening does the same with a fault, and returns the share that is accepted, by the walk or as a row.
+func illEvening(t *testing.T, b *bench, book *screening.Rulebook, e evening, f fault) float64 {
+	accepted, as := 0, map[string]int{}
+	for range illParts {
+		s := e.sound(b)
+		f.strike(b, s)
+		if o := b.evening(t, book, s, f.further); o.Verdict == screening.Accept || o.row == screening.Accept {
+			accepted++
+			as[fmt.Sprintf("%s %v: %s", s.claim, s.reads, lastWords(o.Judgement))]++
+		}
+	}
+	most, share := 0.0, float64(accepted)/illParts
+	if f.why != "" {
+		most = f.most
+	}
+	if share > most {
+		t.Errorf("%s, %s, %s: %.0f %% are accepted; at most %.0f %% may be\n%s", e.kind, e.name, f.name, 100*share, 100*most, listed(as))
+	}
+	return share
+}
+
+// notTested is all that a judgement says of what was not tested.
+func notTested(book *screening.Rulebook, j screening.Judgement) string {
+	said := slices.Clone(j.Untested)
+	for _, g := range j.NotTested {
+		said = append(said, book.Definition(g.Of).Label)
+	}
+	return strings.Join(said, "; ")
+}
+
+func lastWords(j screening.Judgement) string {
+	text := "no reason"
+	if len(j.Reasons) > 0 {
+		text = j.Reasons[len(j.Reasons)-1].Text
+	}
+	if len(j.Next) > 0 {
+		text += "; " + j.Next[0].Text
+	}
+	return text
+}
+
+func listed(what map[string]int) string {
+	lines := make([]string, 0, len(what))
+	for text, n := range what {
+		lines = append(lines, fmt.Sprintf("  %d× %s", n, text))
+	}
+	slices.Sort(lines)
+	return strings.Join(lines[:min(len(lines), 12)], "\n")
 }

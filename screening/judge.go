@@ -28,12 +28,13 @@ func Judge(book *Rulebook, part Part, policy Policy) (Judgement, error) {
 		part.Readings = append(part.Readings, derived...)
 		notes = append(notes, why...)
 	}
+	stops := j.stops(part)
 	findings, adjusted, err := j.findings(part)
-	if err != nil {
+	if err != nil && stopVerdict(stops) != Barred { // what bars a part needs no number, and no rating that nobody can read any more
 		return Judgement{Part: part, Claim: claim, Tables: book.Tables}, err
 	}
 	result := Judgement{
-		Part: part, Claim: claim, Tables: book.Tables, Stops: j.stops(part), Findings: findings,
+		Part: part, Claim: claim, Tables: book.Tables, Stops: stops, Findings: findings,
 		Reasons: append(notes, adjusted...),
 	}
 	j.rollUp(&result)

@@ -16,6 +16,9 @@ import (
 //
 // It returns an error where the claim contradicts its type: another polarity or material, or a group that the type does not have.
 func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
+	if err := book.CheckStands(c, &screening.VCEO, &VCBO, &VEBO, &ICMax, &screening.Ptot); err != nil {
+		return c, nil, err
+	}
 	name := c.Trait(screening.TraitType)
 	row, known := b.types.Lookup(Kind, name)
 	var notes []screening.Reason

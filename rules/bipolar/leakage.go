@@ -84,9 +84,6 @@ func weakened(s screening.Source) screening.Source {
 // ICEOFrom returns the open-base leakage ICEO = (1 + β)·ICBO, amperes (identity of the junction transistor, published in textbooks).
 func ICEOFrom(icbo, beta float64) float64 { return (1 + beta) * icbo }
 
-// CollectorCurrent returns IC = β·IB + (1 + β)·ICBO, amperes.
-func CollectorCurrent(beta, ib, icbo float64) float64 { return beta*ib + ICEOFrom(icbo, beta) }
-
 // openEmitter lists the limits on ICBO: the sheet's own of a new part; of a serviceable one what is required of ICEO, because ICBO is
 // never more than ICEO.
 func (p *promise) openEmitter(all []screening.Limit, required screening.Limit) []screening.Limit {

@@ -32,17 +32,18 @@ func TestTablesLoadAndHoldEveryNameUsed(t *testing.T) {
 // Worked examples of the textbooks, recomputed; their statements were read in companion code (published), the last two are derived.
 func TestTransistorIdentities(t *testing.T) {
 	beta := func(alpha float64) float64 { return alpha / (1 - alpha) }
+	collectorCurrent := func(beta, ib, icbo float64) float64 { return beta*ib + ICEOFrom(icbo, beta) }
 	for _, tt := range []struct {
 		name      string
 		got, want float64
 		relative  float64
 	}{
-		{"β 100, ICBO 4 µA, IB 40 µA: IC 4.404 mA (Nandi 5.11.5)", CollectorCurrent(100, 40e-6, 4e-6), 4.404e-3, 1e-9},
-		{"α .97, IB 50 µA, ICBO 10 µA: IC 1.95 mA (Kakani 5.1)", CollectorCurrent(beta(0.97), 50e-6, 10e-6), 1.95e-3, 1e-9},
-		{"the same: IE 2.00 mA (Kakani 5.1)", CollectorCurrent(beta(0.97), 50e-6, 10e-6) + 50e-6, 2.00e-3, 1e-9},
-		{"β 50, IB 100 µA, ICBO 5 µA: IC 5.255 mA (Kakani 5.2)", CollectorCurrent(50, 100e-6, 5e-6), 5.255e-3, 1e-9},
+		{"β 100, ICBO 4 µA, IB 40 µA: IC 4.404 mA (Nandi 5.11.5)", collectorCurrent(100, 40e-6, 4e-6), 4.404e-3, 1e-9},
+		{"α .97, IB 50 µA, ICBO 10 µA: IC 1.95 mA (Kakani 5.1)", collectorCurrent(beta(0.97), 50e-6, 10e-6), 1.95e-3, 1e-9},
+		{"the same: IE 2.00 mA (Kakani 5.1)", collectorCurrent(beta(0.97), 50e-6, 10e-6) + 50e-6, 2.00e-3, 1e-9},
+		{"β 50, IB 100 µA, ICBO 5 µA: IC 5.255 mA (Kakani 5.2)", collectorCurrent(50, 100e-6, 5e-6), 5.255e-3, 1e-9},
 		{"β 50 is α .9804 (Kakani 5.2)", 50.0 / 51, 0.9804, 1e-4},
-		{"α .98, ICBO 5 µA, IB 100 µA: IC 5.15 mA (Bell 3.1)", CollectorCurrent(beta(0.98), 100e-6, 5e-6), 5.15e-3, 1e-9},
+		{"α .98, ICBO 5 µA, IB 100 µA: IC 5.15 mA (Bell 3.1)", collectorCurrent(beta(0.98), 100e-6, 5e-6), 5.15e-3, 1e-9},
 		{"ICEO = (1 + 100)·5 nA = 0.505 µA", ICEOFrom(5e-9, 100), 0.505e-6, 1e-9},
 	} {
 		if !near(tt.got, tt.want, tt.relative) {

@@ -203,3 +203,34 @@ func TestTablesAreChecked(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), "100nF 50V K X7R capacitance=84nF tan-delta@1kHz=0.02 leakage@50V=1.0nA")
 }
+
+// MIL-PRF-123D 3.11 and 3.12 (published): after heat and rest class 1 may lie 1 % or 0.3 pF outside its tolerance, class 2 5 % or 0.5 pF; on
+// top of it what ageing takes at most. An undated part is 90 years old in 2040: 4 %·log(90·8766 h/1000 h) = 11.6 %.
+func TestServiceableBands(t *testing.T) {
+	for _, tt := range []struct {
+		words     string
+		low, high float64
+	}{
+		{"470pF J C0G", 470 * 0.94, 470 * 1.06},
+		{"5p6 C C0G", 5.05, 6.15},
+		{"100nF K X7R", 1e5 * (0.9*(1-0.04*math.Log10(788.94)) - 0.05), 1e5 * 1.15},
+		{"100nF K Y5V", 1e5 * (0.9*(1-0.10*math.Log10(788.94)) - 0.05), 1e5 * 1.15},
+		{"100nF K Z5V dated=2039", 1e5 * (0.9*0.7 - 0.05), 1e5 * 1.15},
+	} {
+		all, err := limits(booktest.Judge(t, Book(), tt.words, screening.DefaultPolicy()).Claim)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if l := all[1]; l.Grade != screening.Serviceable || math.Abs(l.Low*1e12/tt.low-1) > 1e-6 || math.Abs(l.High*1e12/tt.high-1) > 1e-6 {
+			t.Errorf("%s: %v to %v F, want %v to %v pF", tt.words, l.Low, l.High, tt.low, tt.high)
+		}
+	}
+	// A barrier layer's 5 % is the disc sheet's (published); that worn it may lose twice as much is the program's.
+	all, _ := limits(booktest.Judge(t, Book(), "47nF barrier", screening.DefaultPolicy()).Claim)
+	for _, l := range all {
+		want := map[screening.Grade]screening.Status{screening.WithinSpec: screening.Published, screening.Serviceable: screening.House}[l.Grade]
+		if l.On == screening.TanDelta.Name && l.Source.Status != want {
+			t.Errorf("%s: %s", l.Grade, l.Source)
+		}
+	}
+}

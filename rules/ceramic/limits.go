@@ -183,7 +183,7 @@ func tableLoss(claim screening.Claim, d *dielectric, u capacitor.Unit) []screeni
 		fresh.Set, fresh.InUse = r.set, r.set == inUse
 		all = append(all, fresh)
 		if !math.IsNaN(r.worn) {
-			worn := capacitor.LossLimit(u, hertz, r.worn, screening.Serviceable, "after life", r.source)
+			worn := capacitor.LossLimit(u, hertz, r.worn, screening.Serviceable, "after life", r.wornSource)
 			worn.Set, worn.InUse = fresh.Set, fresh.InUse
 			all = append(all, worn)
 		}
@@ -212,7 +212,7 @@ func insulation(d *dielectric, u capacitor.Unit) []screening.Limit {
 		fresh.Set, fresh.InUse = r.set, r.set == screening.GeneralSet
 		all = append(all, fresh)
 		if !math.IsNaN(r.worn) {
-			worn := capacitor.InsulationLimit(u, volts, capacitor.Insulation{Ohms: r.worn, Seconds: r.wornS, Source: r.source}, screening.Serviceable)
+			worn := capacitor.InsulationLimit(u, volts, capacitor.Insulation{Ohms: r.worn, Seconds: r.wornS, Source: r.wornSource}, screening.Serviceable)
 			worn.Set, worn.InUse = fresh.Set, fresh.InUse
 			all = append(all, worn)
 		}

@@ -45,7 +45,7 @@ type row struct {
 	overVolts, toVolts float64
 	fresh, freshS      float64
 	worn, wornS        float64 // NaN where nothing is printed
-	source             screening.Source
+	source, wornSource screening.Source
 }
 
 type tables struct {
@@ -97,6 +97,13 @@ func (t *tables) readRow(r book.Row) row {
 		overVolts: r.NumberOr("over_volts", 0), toVolts: r.NumberOr("to_volts", math.Inf(1)),
 		fresh: r.Number("new"), freshS: r.NumberOr("new_s", math.Inf(1)), worn: r.NumberOr("worn", math.NaN()), wornS: r.NumberOr("worn_s", math.Inf(1)),
 		source: r.Source(),
+	}
+	x.wornSource = x.source
+	if r.Has("worn_status") {
+		var ok bool
+		if x.wornSource.Status, ok = screening.StatusNamed(r.Text("worn_status")); !ok {
+			r.Errorf("worn_status", "%q is no status", r.Text("worn_status"))
+		}
 	}
 	if codes := r.Required("codes"); codes != "*" {
 		x.codes = strings.Split(codes, "|")

@@ -123,3 +123,16 @@ func TestTechnologyWords(t *testing.T) {
 		t.Errorf("wet: %v", err)
 	}
 }
+
+// A ceiling stands in both directions alike: no published series confirms a reading beyond it.
+func TestBothDirectionsHaveTheirCeiling(t *testing.T) {
+	found := map[screening.Characteristic]int{}
+	for _, l := range mustLimits(t, claimed(t, 47, 100, screening.TraitTechnology, techNonPolar)) {
+		if isCeiling(l.Criterion) {
+			found[l.On]++
+		}
+	}
+	if found[screening.Leakage.Name] == 0 || found[screening.Leakage.Name] != found[LeakageReversed.Name] || len(found) != 2 {
+		t.Errorf("ceilings: %v", found)
+	}
+}

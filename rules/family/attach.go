@@ -91,7 +91,7 @@ func complete(kind screening.Kind, own completion, families []Family) completion
 			}
 			text := "age alone is no reason to refuse it (" + f.Label + "): " + f.Reason + "; " + f.Source.String()
 			if f.List == AlwaysKeep {
-				text = "your group always keeps " + f.Label + ": " + f.Reason
+				text = "your group always keeps it (" + f.ID + "): " + f.Reason
 			}
 			notes = append(slices.Clip(notes), screening.Reason{Code: screening.CodeNote, Text: text})
 		}

@@ -93,7 +93,7 @@ func (f *Family) Holds(kind screening.Kind, c screening.Claim) bool {
 	if !f.byClaim() || !slices.Contains(f.Kinds, kind) {
 		return false
 	}
-	if f.Types != nil && !f.namesType(c.Trait(screening.TraitType)) {
+	if f.Types != nil && !f.NamesType(c.Trait(screening.TraitType)) {
 		return false
 	}
 	for i := range f.Traits {
@@ -109,7 +109,8 @@ func (f *Family) Holds(kind screening.Kind, c screening.Claim) bool {
 	return f.oldEnough(c)
 }
 
-func (f *Family) namesType(name string) bool {
+// NamesType reports whether a type number is among those that tell the family; false where it is told by something else.
+func (f *Family) NamesType(name string) bool {
 	folded := fold(name)
 	return folded != "" && slices.ContainsFunc(f.Types, func(pattern string) bool { return matchType(pattern, folded) })
 }

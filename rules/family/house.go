@@ -151,7 +151,7 @@ func houseFamily(r houseRow, books screening.Kinds) Family {
 	if f.ID == "" || len(f.ID) > maxID || strings.Trim(f.ID, "abcdefghijklmnopqrstuvwxyz0123456789-") != "" {
 		r.Errorf("id", "%q is no id; it is a word of letters, digits and hyphens such as no-carbon-film", r.text("id"))
 	}
-	if f.Reason == "" {
+	if !r.Has("reason") {
 		r.Errorf("reason", "is empty; say why, it is shown with the verdict")
 	}
 	switch r.text("list") {

@@ -20,7 +20,7 @@ const wornLoss, dampRise = 2.0, 0.001
 // floor is the least insulation of any film (house): a coupling capacitor of 100 MΩ is the least that repairers accept (second-hand).
 var floor = capacitor.Insulation{
 	Ohms: 100e6, Seconds: 33,
-	Source: screening.Source{Document: "no sound film insulates less; repairers ask 100 MΩ of a coupling capacitor (second-hand)", Status: screening.House},
+	Source: screening.Source{Document: "the program's rule: no sound film insulates less; repairers ask 100 MΩ of a coupling capacitor (second-hand)", Status: screening.House},
 }
 
 // testVolts is the voltage of the insulation test.
@@ -59,7 +59,7 @@ func loss(d dielectric, u capacitor.Unit) []screening.Limit {
 		}
 		most := math.Max(wornLoss*r.tan, r.tan+dampRise)
 		source := screening.Source{
-			Document: r.source.Document, Clause: r.source.Clause + "; serviceable is twice that, or 0.001 more", Status: screening.House,
+			Document: r.source.Document, Clause: r.source.Clause + "; the program's rule: serviceable is twice that, or 0.001 more", Status: screening.House,
 		}
 		worn := capacitor.LossLimit(u, r.hertz, most, screening.Serviceable, fmt.Sprintf("%.3g·%.2g, or %.2g + %.2g", wornLoss, r.tan, r.tan, dampRise),
 			capacitor.Weaker(source, r.source))
@@ -80,7 +80,7 @@ func lossFloor(u capacitor.Unit, hertz float64) screening.Limit {
 			most, source = wornLoss*r.tan, r.source
 		}
 	}
-	source.Clause, source.Status = source.Clause+"; twice that is no sound film", screening.House
+	source.Clause, source.Status = source.Clause+"; the program's rule: twice that is no sound film", screening.House
 	l := capacitor.LossLimit(u, hertz, most, screening.AnyGrade, "twice the laxest film", source)
 	l.Criterion = criterionLossFloor
 	return l

@@ -94,7 +94,7 @@ func lampRecipe(l screening.Limit) screening.Recipe {
 
 func thresholdRecipe(l screening.Limit) screening.Recipe {
 	amps, _ := l.At.Get(screening.IC)
-	ohms := (supply - (l.Low+l.High)/2) / amps
+	ohms := (supply - semi.Middle(l)) / amps
 	return screening.Recipe{
 		Title: "threshold, collector tied to gate",
 		Lines: []string{

@@ -14,6 +14,7 @@ import (
 	"goodbin/rules/bipolar"
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
+	"goodbin/rules/internal/sheet"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -83,7 +84,7 @@ func Book(t *types.Table) *screening.Rulebook {
 
 func (b rulebook) claims() []screening.Field {
 	return []screening.Field{
-		semi.TypeField(b.table, Kind, "IRG4BC20U"),
+		sheet.Field(b.table, Kind, "IRG4BC20U"),
 		{
 			Definition: VCES, Example: "600V", AcceptRange: semi.StandsIn(quantity.Volt), Help: "the collector-emitter voltage it claims to block",
 		},
@@ -124,13 +125,12 @@ func bench() []screening.Field {
 		},
 		{
 			Definition: VCEOn, Example: "vce-on@ic=0.4A,vge=12V=0.95", Effort: 40 * time.Second,
-			Fit:  screening.Fit{screening.IC: screening.Any},
 			Ask:  "LIGHT a lamp through it with 12 V on the gate and read the volts across it (vce-on@ic=0.4A,vge=12V=…)",
 			Help: "12 V at the gate, a lamp in the collector: volts from collector to emitter; state gate voltage and current",
 		},
 		{
-			Definition: VGETh, Example: "vge-th@ic=0.5mA=4.6", Effort: time.Minute, Fit: screening.Fit{screening.IC: {Low: 0.4, High: 2.5}},
-			Help: "collector tied to gate, about 0.5 mA through a resistor: volts from gate to emitter; state the current",
+			Definition: VGETh, Example: "vge-th@ic=0.5mA=4.6", Effort: time.Minute, Fit: screening.Fit{screening.IC: {Low: 0.8, High: 1.25}},
+			Help: "collector tied to gate, the sheet's current through a resistor, else about 0.5 mA: volts from gate to emitter; state the current",
 		},
 		{
 			Definition: IGES, Example: "iges@15V=..10nA", Effort: 90 * time.Second,
@@ -156,13 +156,16 @@ func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reas
 	if d := c.Trait(TraitDiode); d != "" && d != coPacked && d != noDiode {
 		return c, nil, fmt.Errorf("diode: %q is not known; co-packed or none", d)
 	}
+	if err := book.CheckStands(c, &VCES); err != nil {
+		return c, nil, err
+	}
 	name := c.Trait(screening.TraitType)
 	if name == "" {
 		return c, nil, nil
 	}
 	row, known := b.table.Lookup(Kind, name)
 	if !known {
-		return c, []screening.Reason{semi.UnknownType(b.table, Kind, c, "rated:vces=600V")}, nil
+		return c, []screening.Reason{sheet.Unknown(b.table, Kind, c, "rated:vces=600V")}, nil
 	}
 	c, err := semi.Complete(c, &row, VCES, TraitDiode)
 	return c, nil, err

@@ -41,9 +41,13 @@ func limits(c screening.Claim) ([]screening.Limit, error) {
 	all = semi.Graded(all, figures().Limit(VCEOn, turnsOn, "on"), "as good as new only where its sheet's threshold is proved")
 	th := figures().Limit(VGETh, threshold, "threshold")
 	if r, ok := c.Rating(VGETh.Name, ""); ok && !(r.HasNominal() && r.Low == r.High) {
-		note, at := th.Note, th.At
+		at := th.At
 		th = semi.LimitOf(VGETh, threshold, &r)
-		th.Note, th.At = note, at
+		th.Note = "collector tied to gate"
+		if ic, ok := r.At.Get(screening.IC); ok {
+			at = screening.At(screening.IC, ic)
+		}
+		th.At = at
 	}
 	th.Need = screening.Wanted
 	return append(all, th), nil
@@ -59,6 +63,11 @@ func convert(part screening.Part, r screening.Reading, l screening.Limit) screen
 		return semi.GateLeakage(r, l, screening.VGE, l.Criterion == gateInsulates, leastLeak)
 	case VCEOn.Name:
 		return turnedOn(r, l)
+	case VGETh.Name:
+		if l.Source == figures()["threshold"].Source {
+			return semi.Threshold(r, l, screening.IC, semi.ThresholdFrom, semi.ThresholdTo)
+		}
+		return semi.Threshold(r, l, screening.IC, 0, 0)
 	}
 	return screening.Conversion{}
 }
@@ -72,7 +81,7 @@ func turnedOn(r screening.Reading, l screening.Limit) screening.Conversion {
 	case vge < leastGate:
 		return screening.Conversion{Why: "taken at " + semi.Volts(vge) + " on the gate; at least " + semi.Volts(leastGate) + " is needed"}
 	}
-	c := screening.Conversion{OK: true, Reading: r, Source: book.Practice, Rule: "the limit holds at whatever gate voltage is stated"}
+	c := screening.Conversion{OK: true, Reading: r, Source: book.Practice, Rule: "the limit holds at whatever gate voltage and current are stated"}
 	c.Reading.At, c.Reading.Rule = l.At, c.Rule
 	if ic < leastIC && r.Sense != quantity.AtMost {
 		c.Reading.Sense, c.Rule = quantity.AtLeast, "at more current it drops no less than at "+semi.Amps(ic)

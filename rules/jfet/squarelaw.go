@@ -6,17 +6,8 @@ import (
 	"goodbin/screening"
 )
 
-// squareLaw is where the three identities of this file come from.
+// squareLaw is where the identities of this file come from: ID = IDSS·(1 − VGS/VGS(off))², voltages as magnitudes.
 var squareLaw = screening.Source{Document: "textbook square law of the junction FET (Malvino and Bates, worked examples)", Status: screening.Published}
-
-// DrainCurrent returns ID = IDSS·(1 − VGS/VGS(off))², amperes; voltages as magnitudes. At and beyond the cut-off it is 0.
-func DrainCurrent(idss, vgs, vgsOff float64) float64 {
-	if !(vgs < vgsOff) {
-		return 0
-	}
-	x := 1 - vgs/vgsOff
-	return idss * x * x
-}
 
 // CutOff returns VGS(off) = 2·IDSS/gm0, volts, as a magnitude: from IDSS in amperes and the transconductance at VGS = 0 in siemens, which is
 // one over the resistance from drain to source with the gate tied to the source.

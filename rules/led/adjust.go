@@ -51,7 +51,11 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 				f.Why = "at a tester's current it drops less than its colour should: another colour, or leaky; read it at " +
 					quantity.Format(testCurrent(part.Claim), quantity.Ampere, 0) + " through a resistor"
 			}
-			say(f.Limit.On, forwardWords(f))
+			if words := forwardWords(f); f.Outcome == screening.Missing && words != "" {
+				f.Why = words
+			} else {
+				say(f.Limit.On, words)
+			}
 		}
 		if f.Limit.On == screening.VBR.Name && f.Reading != nil && f.Reading.Value > reverseMost {
 			say(f.Limit.On, "that reading put more than 5 V on it in reverse: most LEDs are not rated for that; not again")

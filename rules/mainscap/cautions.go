@@ -87,7 +87,7 @@ func oilAndPaper(claim screening.Claim, at screening.Moment) []screening.Caution
 	return all
 }
 
-// dischargeCaution says what resistor the equipment needs across the part that is fitted instead, and how long the part on the bench takes.
+// dischargeCaution says what resistor the equipment needs across the part that is fitted instead, at the top of its tolerance, and how long the part on the bench takes.
 func dischargeCaution(claim screening.Claim) []screening.Caution {
 	us, err := capacitor.Units(claim, span)
 	if err != nil {
@@ -95,12 +95,12 @@ func dischargeCaution(claim screening.Claim) []screening.Caution {
 	}
 	u, crest := us[0], peak(claim)
 	volts, _ := acVolts(claim)
-	touch := DischargeConstant(crest, touchVolts, touchSeconds) / u.Farad
-	machine := DischargeConstant(crest, machineVolts, machineAfter) / u.Farad
+	touch := DischargeConstant(crest, touchVolts, touchSeconds) / u.Top()
+	machine := DischargeConstant(crest, machineVolts, machineAfter) / u.Top()
 	bench, benchWatts := book.DischargeResistor(u.Top(), crest)
 	values := map[string]float64{
-		"peak": crest, "resistance-34V-1s": touch, "power-34V-1s": volts * volts / touch, "resistance-plug-a": plugA / u.Farad,
-		"resistance-plug-b": plugB / u.Farad, "resistance-60V-5s": machine, "bench-resistance": bench, "bench-power": benchWatts,
+		"peak": crest, "resistance-34V-1s": touch, "power-34V-1s": volts * volts / touch, "resistance-plug-a": plugA / u.Top(),
+		"resistance-plug-b": plugB / u.Top(), "resistance-60V-5s": machine, "bench-resistance": bench, "bench-power": benchWatts,
 		"bench-time": book.DischargeTime(bench, u.Top(), crest),
 	}
 	ohms := func(x float64) string { return quantity.Format(roundDown(x), quantity.Ohm, 2) }
@@ -110,16 +110,27 @@ func dischargeCaution(claim screening.Claim) []screening.Caution {
 	case class == motorRun || class == motorStart:
 		text += "The rules quoted for discharge are those of suppressors: keep the discharge resistor that the equipment has. "
 	case u.Farad > ruleAbove:
-		text += fmt.Sprintf("The equipment needs a resistor across it, rated for the voltage: to %g V in %g s at most %s (%s in it all the time), for a time constant of "+
-			"%g s (plug) %s, of %g s %s, to %g V in %g s %s (rules second-hand: yours may differ; licensed practice). ", touchVolts, touchSeconds,
-			ohms(touch), quantity.Format(volts*volts/touch, quantity.Watt, 2), plugA, ohms(plugA/u.Farad), plugB, ohms(plugB/u.Farad), machineVolts,
+		text += fmt.Sprintf("The equipment needs a resistor across it, rated for the voltage, for up to %s: to %g V in %g s at most %s (%s in it all the time), for a time constant of "+
+			"%g s (plug) %s, of %g s %s, to %g V in %g s %s (rules second-hand: yours may differ; licensed practice). ", capacitor.Farads(u.Top()), touchVolts, touchSeconds,
+			ohms(touch), quantity.Format(volts*volts/touch, quantity.Watt, 2), plugA, ohms(plugA/u.Top()), plugB, ohms(plugB/u.Top()), machineVolts,
 			machineAfter, ohms(machine))
 	default:
 		text += "Up to 0.1 µF the rules quoted ask for no discharge resistor. "
 	}
-	text += fmt.Sprintf("On the bench: %s, %s at first, to %d V in %.2g s, then measure what remains.", quantity.Format(bench, quantity.Ohm, 0),
-		quantity.Format(benchWatts, quantity.Watt, 2), int(screening.SafeVoltage), values["bench-time"])
+	text += fmt.Sprintf("On the bench: %s, %s at first, to %d V in %s, then measure what remains.", quantity.Format(bench, quantity.Ohm, 0),
+		quantity.Format(benchWatts, quantity.Watt, 2), int(screening.SafeVoltage), inSeconds(values["bench-time"]))
 	return []screening.Caution{{Code: "discharge-rules", Level: screening.Notice, Text: text, Values: values, Source: dischargeRules}}
+}
+
+// inSeconds words a time; what is over before a hand moves is no number to read.
+func inSeconds(s float64) string {
+	if s < 0.1 {
+		return "less than 0.1 s"
+	}
+	if s >= 10 {
+		return fmt.Sprintf("%.0f s", s)
+	}
+	return fmt.Sprintf("%.2g s", s)
 }
 
 // roundDown rounds down to two significant digits: a resistor at most this large.

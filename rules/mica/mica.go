@@ -72,7 +72,7 @@ func claims() []screening.Field {
 
 func bench() []screening.Field {
 	return append([]screening.Field{
-		capacitor.CapacitanceReading("capacitance=468pF", "out of circuit; zero the leads first, a few picofarads count", capacitor.AnyFrequency),
+		capacitor.CapacitanceReading("capacitance=468pF", "out of circuit; zero the leads first, a few picofarads count; at whatever frequency the meter has", capacitor.AnyFrequency),
 		capacitor.TanDeltaReading("tan-delta@100kHz=0.001"),
 		capacitor.ESRReading("esr@100kHz=5"),
 		capacitor.InsulationReading("insulation-resistance@500V=>10G"),
@@ -144,7 +144,7 @@ func readRows(text string) ([]row, error) {
 
 // drift is what a mica part may have drifted beyond its tolerance (house; class 1 ceramic is allowed 1 % or 0.3 pF, published).
 var drift = capacitor.Allowance{Ratio: 0.01, Farad: 0.5e-12, Source: screening.Source{
-	Document: "1 % or 0.5 pF beyond the tolerance, as MIL-PRF-123D allows class 1 ceramic about as much", Status: screening.House,
+	Document: "the program's rule: 1 % or 0.5 pF beyond the tolerance, as MIL-PRF-123D allows class 1 ceramic about as much", Status: screening.House,
 }}
 
 func limits(claim screening.Claim) ([]screening.Limit, error) {

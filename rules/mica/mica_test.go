@@ -103,3 +103,16 @@ func TestTheTableIsChecked(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), "470pF 500V J moulded capacitance=468pF tan-delta@100kHz=0.001")
 }
+
+// The program's rule: 1 % or 0.5 pF, whichever is more, beyond the tolerance; below 50 pF the picofarads are more.
+func TestDriftIsOnePercentOrHalfAPicofarad(t *testing.T) {
+	for words, want := range map[string]float64{"22pF J": 22*1.05 + 0.5, "470pF J": 470*1.05 + 4.7} {
+		all, err := limits(booktest.Judge(t, Book(), words, screening.DefaultPolicy()).Claim)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if l := all[1]; l.Grade != screening.Serviceable || math.Abs(l.High*1e12-want) > 1e-9 {
+			t.Errorf("%s: up to %v, want %v pF", words, l.High, want)
+		}
+	}
+}

@@ -131,34 +131,43 @@ func ampereRecipe(c screening.Claim, l screening.Limit, vgs float64) screening.R
 	if r, ok := c.Rating(IDMax.Name, ""); ok && r.Low/2 < amps {
 		amps = r.Low / 2
 	}
-	ohms := supply / amps
-	gate, source := semi.Ends(c, "gate", "source")
-	drain, other := semi.Ends(c, "drain", "source")
-	if l.Evidence == screening.ByRating {
-		l.High = figures()["switches"].High
+	if l.Criterion != turnsOn && amps*l.High > mostDrop {
+		amps = semi.Honest2(mostDrop / l.High)
 	}
 	drop := amps * l.High
+	on := "the limit is " + quantity.Format(drop, quantity.Volt, 2) + ", " + semi.Watts(drop*amps) + " in the part"
+	watts := drop * amps
+	if l.Criterion == turnsOn {
+		// Any type: what is asked is that it switches, and half on it takes most.
+		drop, watts = 0, supply*amps/4
+		on = semi.Volts(supply) + " there is off, a volt or less is on; half on the part takes up to " + semi.Watts(watts)
+	}
+	ohms := (supply - drop) / amps
+	gate, source := semi.Ends(c, "gate", "source")
+	drain, other := semi.Ends(c, "drain", "source")
 	return screening.Recipe{
 		Title: "on-resistance with " + semi.Amps(amps) + " and millivolts",
 		Lines: []string{
 			"gate first: " + semi.Volts(vgs) + ", plus on the " + gate + ", minus on the " + source,
-			"then " + semi.Volts(supply) + " through " + semi.Ohms(ohms) + " (" + semi.Watts(supply*amps) + " in it, it gets hot; or a current-limited supply), plus side to the " +
+			"then " + semi.Volts(supply) + " through " + semi.Ohms(ohms) + " (" + semi.Watts(supply*supply/ohms) + " in it, it gets hot; or a current-limited supply), plus side to the " +
 				drain + ", minus to the " + other,
-			"volts right at the two leads, not at the clips: the limit is " + quantity.Format(drop, quantity.Volt, 2) + ", " + semi.Watts(drop*amps) +
-				" in the part; a few seconds. Type vds-on@id=" + semi.Typed(amps, quantity.Ampere) + ",vgs=" + semi.Typed(vgs, quantity.Volt) + "=…",
+			"volts right at the two leads, not at the clips: " + on + "; a few seconds. Type vds-on@id=" + semi.Typed(amps, quantity.Ampere) + ",vgs=" + semi.Typed(vgs, quantity.Volt) + "=…",
 		},
 		Values: map[string]float64{
-			"supply": supply, "series-resistance": ohms, "resistor-power": supply * amps, "drain-current": amps, "part-power": drop * amps,
+			"supply": supply, "series-resistance": ohms, "resistor-power": supply * supply / ohms, "drain-current": amps, "part-power": watts,
 			"limit-voltage": drop,
 		},
 		Source: book.Practice,
 	}
 }
 
+// mostDrop is what a part may drop in the test of its on-resistance, V (house).
+const mostDrop = 1.0
+
 // thresholdRecipe ties drain to gate: R = (supply − VGS(th))/ID.
 func thresholdRecipe(c screening.Claim, l screening.Limit) screening.Recipe {
 	amps := value(l.At, screening.ID)
-	ohms := (battery - (l.Low+l.High)/2) / amps
+	ohms := (battery - semi.Middle(l)) / amps
 	drain, source := semi.Ends(c, "drain and gate", "source")
 	return screening.Recipe{
 		Title: "threshold, drain tied to gate",

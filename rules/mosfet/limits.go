@@ -57,10 +57,12 @@ func onLimits(all []screening.Limit, c screening.Claim) []screening.Limit {
 	l := figures().Limit(screening.VGSTh, threshold, "threshold")
 	l.Need, l.Grade = screening.Wanted, screening.AnyGrade
 	if r, ok := c.Rating(screening.VGSTh.Name, ""); ok && !(r.HasNominal() && r.Low == r.High) {
-		note := l.Note
+		at := l.At
 		l = semi.LimitOf(screening.VGSTh, threshold, &r)
-		l.Need, l.Note = screening.Wanted, note
-		l.At = screening.At(screening.ID, 0.5e-3)
+		l.Need, l.Note = screening.Wanted, "drain tied to gate"
+		if l.At = at; r.At.Has(screening.ID) {
+			l.At = screening.At(screening.ID, value(r.At, screening.ID))
+		}
 	}
 	return append(all, l)
 }
@@ -101,6 +103,10 @@ func convert(part screening.Part, r screening.Reading, l screening.Limit) screen
 	switch {
 	case l.On == screening.RDSOn.Name:
 		return toGateVoltage(r, l)
+	case l.On == screening.VGSTh.Name && l.Source == figures()["threshold"].Source:
+		return semi.Threshold(r, l, screening.ID, semi.ThresholdFrom, semi.ThresholdTo)
+	case l.On == screening.VGSTh.Name:
+		return semi.Threshold(r, l, screening.ID, 0, 0)
 	case l.On == screening.IGSS.Name:
 		return semi.GateLeakage(r, l, screening.VGS, l.Criterion == gateInsulates, leastOn)
 	}

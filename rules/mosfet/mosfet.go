@@ -14,6 +14,7 @@ import (
 
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
+	"goodbin/rules/internal/sheet"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -73,7 +74,7 @@ func Book(t *types.Table) *screening.Rulebook {
 
 func (b rulebook) claims() []screening.Field {
 	return []screening.Field{
-		semi.TypeField(b.table, Kind, "2N7000"),
+		sheet.Field(b.table, Kind, "2N7000"),
 		semi.ChannelField(),
 		{
 			Definition: screening.VDSS, Example: "60V", AcceptRange: semi.StandsIn(quantity.Volt), Help: "the drain-source voltage it claims to stand",
@@ -117,8 +118,8 @@ func bench() []screening.Field {
 		},
 		{
 			Definition: screening.VGSTh, Example: "vgs-th@id=0.5mA=2.9", Effort: time.Minute, Band: both(100),
-			Fit:  screening.Fit{screening.ID: {Low: 0.4, High: 2.5}},
-			Help: "drain tied to gate, about 0.5 mA through a resistor: volts from gate to source; state the current",
+			Fit:  screening.Fit{screening.ID: {Low: 0.8, High: 1.25}},
+			Help: "drain tied to gate, the sheet's current through a resistor, else about 0.5 mA: volts from gate to source; state the current",
 		},
 		{
 			Definition: screening.IGSS, Example: "igss@15V=..10nA", Effort: 90 * time.Second, Band: both(1),
@@ -146,13 +147,16 @@ func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reas
 	if ch := semi.Channel(c); ch != "" && ch != semi.N && ch != semi.P {
 		return c, nil, fmt.Errorf("channel: %q is not known; n-channel or p-channel", ch)
 	}
+	if err := book.CheckStands(c, &screening.VDSS, &IDMax, &screening.Ptot); err != nil {
+		return c, nil, err
+	}
 	name := c.Trait(screening.TraitType)
 	if name == "" {
 		return c, nil, nil
 	}
 	row, known := b.table.Lookup(Kind, name)
 	if !known {
-		return c, []screening.Reason{semi.UnknownType(b.table, Kind, c, "rated:vdss=60V rated:rds-on@vgs=10V=..5ohm")}, nil
+		return c, []screening.Reason{sheet.Unknown(b.table, Kind, c, "rated:vdss=60V rated:rds-on@vgs=10V=..5ohm")}, nil
 	}
 	c, err := semi.Complete(c, &row, screening.VDSS, semi.TraitChannel)
 	return c, nil, err

@@ -150,6 +150,73 @@ func TestAsGoodAsNewTakesItsSheetsOnResistance(t *testing.T) {
 	}
 }
 
+// A threshold grows with its current: a sheet's figure is asked for at the sheet's current (2N7000: 0.8 to 3 V at 1 mA, IRF540N: 2 to 4 V at
+// 0.25 mA, both published), and at another one it only bounds. One that reads 0.76 V at 0.25 mA may have 0.8 V at 1 mA.
+func TestAThresholdHoldsAtItsCurrent(t *testing.T) {
+	for words, want := range map[string]screening.Outcome{
+		"2N7000 vgs-th@id=1mA=0.80":     screening.Pass,
+		"2N7000 vgs-th@id=1mA=0.77":     screening.Fail,
+		"2N7000 vgs-th@id=0.25mA=0.76":  screening.Missing,
+		"2N7000 vgs-th@id=0.25mA=3.10":  screening.Fail, // at 1 mA no less
+		"2N7000 vgs-th@id=5mA=0.76":     screening.Fail, // at 1 mA no more
+		"IRF540N vgs-th@id=0.25mA=3.1":  screening.Pass,
+		"IRF540N vgs-th@id=0.5mA=4.03":  screening.Missing,
+		"n-channel vgs-th@id=1.2mA=2.0": screening.Pass, // of any type: from 0.2 to 1.25 mA
+		"n-channel vgs-th@id=1.2mA=6.4": screening.Fail,
+		"n-channel vgs-th@id=20mA=3.0":  screening.Missing,
+		"2N7000 vgs-th=2.0":             screening.Missing,
+		"IRF9540 vgs-th@id=0.25mA=4.5":  screening.Close, // its current is not kept: derived
+	} {
+		for _, f := range judge(t, words, booktest.Exactly()).Findings {
+			if f.Limit.Criterion == threshold && f.Outcome != want {
+				t.Errorf("%s: %v, want %v (%s)", words, f.Outcome, want, f.Why)
+			}
+		}
+	}
+}
+
+// R = (12 V − drop)/ID, and never more than a volt across the part: 44 mΩ at 1 A is (12 − 0.044)/1 = 11.96 Ω, 12.04 W at most; 5 Ω at half of
+// 0.2 A is (12 − 0.5)/0.1 = 115 Ω, 1.25 W; 22 Ω at 1/22 A = 45 mA. That any type switches is shown through 12 Ω, where half on it takes 3 W.
+func TestTheAmpereTestIsComputed(t *testing.T) {
+	b := Book(types.Builtin())
+	for words, want := range map[string][3]float64{
+		"IRF540N": {11.956, 144 / 11.956, 0.044}, "2N7000": {115, 144.0 / 115, 0.05}, "n-channel rated:rds-on@vgs=10V=..22ohm": {(12 - 0.99) / 0.045, 144 / ((12 - 0.99) / 0.045), 0.04455},
+	} {
+		j := judge(t, words, screening.DefaultPolicy())
+		for _, f := range j.Findings {
+			switch f.Limit.Criterion {
+			case onResistance:
+				v := b.Recipes(j.Part, f.Limit)[0].Values
+				if math.Abs(v["series-resistance"]-want[0]) > 1e-6*want[0] || math.Abs(v["resistor-power"]-want[1]) > 1e-6*want[1] || math.Abs(v["part-power"]-want[2]) > 1e-9 {
+					t.Errorf("%s: %v", words, v)
+				}
+			case turnsOn:
+				v := b.Recipes(j.Part, f.Limit)[1].Values
+				if p := v["part-power"]; math.Abs(p-12*v["drain-current"]/4) > 1e-9 || p > 3 {
+					t.Errorf("%s: %v W in the part", words, p)
+				}
+			}
+		}
+	}
+}
+
+// R = (9 V − middle)/ID: 2N7000 at 1 mA (9 − 1.9)/1 mA = 7.1 kΩ; IRF540N at 0.25 mA (9 − 3)/0.25 mA = 24 kΩ; any at 0.5 mA (9 − 3.2)/0.5 mA.
+func TestTheThresholdRecipeIsComputed(t *testing.T) {
+	b := Book(types.Builtin())
+	for words, want := range map[string]float64{"2N7000": 7100, "IRF540N": 24e3, "n-channel": 11600, "n-channel rated:vgs-th@id=1mA=..2V": 7000} {
+		j := judge(t, words, screening.DefaultPolicy())
+		for _, f := range j.Findings {
+			if f.Limit.Criterion != threshold {
+				continue
+			}
+			v := b.Recipes(j.Part, f.Limit)[0].Values
+			if math.Abs(v["series-resistance"]-want) > 1e-6*want || math.Abs(v["resistor-power"]-81/want) > 1e-6 {
+				t.Errorf("%s: %v", words, v)
+			}
+		}
+	}
+}
+
 func TestContradictionsAreRefused(t *testing.T) {
 	b := Book(types.Builtin())
 	for words, want := range map[string]string{

@@ -213,6 +213,9 @@ func ratio(c screening.Claim) (r screening.Rating, current, vce float64, ok bool
 	return screening.Rating{}, usualCurrent, usualVCE, false
 }
 
+// legsStatus is what the table's legs are: no text was seen for them, whatever the status of the row.
+const legsStatus = screening.FromMemory
+
 // complete adds what the type's row says, and refuses a claim that cannot be.
 func complete(t *types.Table, c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	own := c.Trait(traitOutput)
@@ -232,8 +235,8 @@ func complete(t *types.Table, c screening.Claim) (screening.Claim, []screening.R
 			notes = append(notes, book.Note(CTR.Name, "rated:ctr=%s is not used: it does not say at which LED current it holds", r))
 		}
 	}
-	if p := c.Trait(screening.TraitPinout); p != "" && tabled {
-		notes = append(notes, book.Note("", "%s: legs %s (%s)", row.Type, p, row.Source.Status))
+	if p := row.Trait(screening.TraitPinout); p != "" && tabled && c.Trait(screening.TraitPinout) == p {
+		notes = append(notes, book.Note("", "%s: legs %s (%s)", row.Type, p, legsStatus))
 	}
 	return c, notes, nil
 }

@@ -182,7 +182,7 @@ func looks() []screening.Check {
 func untested(part screening.Part, findings []screening.Finding) []string {
 	lines := shared().Untested(part, findings)
 	if _, claimed := part.Claim.Rating(screening.ESR.Name, ""); !claimed {
-		lines = append(lines, "ESR at 100 kHz, for which a polymer part is chosen: compare it with the part that it replaces")
+		lines = append(lines, "whether its ESR is low enough for its place (100 kHz): compare it with the part that it replaces")
 	}
 	return lines
 }

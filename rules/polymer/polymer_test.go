@@ -66,7 +66,7 @@ func TestVerdicts(t *testing.T) {
 		grade       screening.Grade
 		says        string
 	}{
-		{"a pocket meter is enough", "470uF 6V3 can capacitance=455uF resistance=OL", screening.Accept, screening.WithinSpec, "ESR at 100 kHz, for which"},
+		{"a pocket meter is enough", "470uF 6V3 can capacitance=455uF resistance=OL", screening.Accept, screening.WithinSpec, "whether its ESR is low enough"},
 		{"read with all there is", "470uF 6V3 al capacitance=455uF leakage@6.3V,2min=40uA esr@120Hz=0.03", screening.Accept, screening.WithinSpec, ""},
 		{"its own data sheet's ESR", "470uF 6V3 al rated:esr@100kHz=..12m capacitance=455uF resistance=OL esr@100kHz=11m", screening.Accept, 0, ""},
 		{"worn, but inside 150 %", "470uF 6V3 al capacitance=455uF resistance=OL tan-delta=0.12", screening.Accept, screening.Serviceable, ""},

@@ -3,6 +3,7 @@ package potentiometer
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"goodbin/rules/internal/book"
 	"goodbin/screening"
@@ -65,7 +66,7 @@ func dirty(part screening.Part) bool {
 // partOfTrack says what the wiper may carry, where a power is claimed.
 func partOfTrack(part screening.Part) []screening.Caution {
 	p, claimed := part.Claim.Nominal(screening.Power.Name, "")
-	whole, ok := total(part.Claim, sections(part.Claim)[0])
+	whole, ok := total(part.Claim, book.Sections(part.Claim)[0])
 	if !claimed || !ok || !(p > 0) || !(whole > 0) {
 		return nil
 	}
@@ -85,6 +86,9 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 		return nil
 	}
 	recipe := func(title string, lines ...string) []screening.Recipe {
+		if l.Section == "1" {
+			lines = append(slices.Clip(lines), "section 1 is the one nearest the knob; count from there, and keep to it")
+		}
 		return []screening.Recipe{{Title: title, Lines: lines, Source: book.Practice, Values: map[string]float64{"expected-resistance": whole}}}
 	}
 	jump := l.High

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"regexp"
 	"slices"
-	"strconv"
 	"strings"
 
 	"goodbin/rules/internal/book"
@@ -69,11 +68,8 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 			return c, nil, taperError(name)
 		}
 	}
-	if n := c.Trait(TraitSections); n != "" {
-		named := c.Sections()
-		if named[0] != "" && strconv.Itoa(len(named)) != n {
-			return c, nil, fmt.Errorf("sections: %s are claimed, and values for %d (%s)", n, len(named), strings.Join(named, ", "))
-		}
+	if err := book.CheckSections(c); err != nil {
+		return c, nil, err
 	}
 	tech := technologyOf(c)
 	t, claimed := c.Rating(screening.Tolerance.Name, "")
@@ -95,25 +91,6 @@ func taperError(name string) error {
 	}
 	return fmt.Errorf("taper: %q is not known; one of linear, log, reverse-log, other", name)
 }
-
-// sections lists the tracks of a part: those whose values are claimed one by one, else as many as are claimed, else the one without a name.
-func sections(c screening.Claim) []string {
-	if named := c.Sections(); named[0] != "" {
-		return named
-	}
-	n, _ := strconv.Atoi(c.Trait(TraitSections))
-	if n < 2 {
-		return []string{""}
-	}
-	var list []string
-	for i := range min(n, mostSections) {
-		list = append(list, strconv.Itoa(i+1))
-	}
-	return list
-}
-
-// mostSections is how many tracks one shaft moves at most (house).
-const mostSections = 8
 
 // total returns the claimed resistance of a section in ohms: its nominal, or of a claimed range the middle.
 func total(c screening.Claim, section string) (float64, bool) {

@@ -23,7 +23,7 @@ const (
 const lifeChange = 0.10
 
 var lifeSource = screening.Source{
-	Document: "the claimed band and the 10 % that MIL-PRF-94 lets a track change in its load life", Status: screening.House,
+	Document: "the program's rule: the claimed band and the 10 % that MIL-PRF-94 lets a track change in its load life", Status: screening.House,
 }
 
 // closedMost and openLeast are what a switch for signals and low voltages must show, ohms.
@@ -38,7 +38,7 @@ func limit(on screening.Definition, section string, criterion screening.Criterio
 
 func limits(c screening.Claim) ([]screening.Limit, error) {
 	var all []screening.Limit
-	for _, s := range sections(c) {
+	for _, s := range book.Sections(c) {
 		if _, ok := total(c, s); !ok {
 			continue
 		}

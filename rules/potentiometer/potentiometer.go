@@ -18,10 +18,9 @@ const edition = "1"
 
 // The traits that a potentiometer claims.
 const (
-	TraitTaper    = "taper"
-	TraitForm     = "form"     // trimmer, panel, slider
-	TraitSections = "sections" // how many tracks on one shaft: "1", "2"
-	TraitSwitch   = "switch"   // "switched" where it has one
+	TraitTaper  = "taper"
+	TraitForm   = "form"   // trimmer, panel, slider
+	TraitSwitch = "switch" // "switched" where it has one
 )
 
 // overOhms is what OL shows of any of a potentiometer's resistances, as of [screening.Resistance].
@@ -77,7 +76,7 @@ func claims() []screening.Field {
 			Words: []screening.Word{{Word: "trimmer", Text: "trimmer"}, {Word: "trimpot", Text: "trimmer"}, {Word: "preset", Text: "trimmer"}, {Word: "panel", Text: "panel"}, {Word: "slider", Text: "slider"}},
 		},
 		{
-			Definition: book.Trait(TraitSections, "sections"), Trait: true, Example: "dual", Help: "tracks moved together: single, dual, 2-gang",
+			Definition: book.Trait(book.TraitSections, "sections"), Trait: true, Example: "dual", Help: "tracks moved together: single, dual, 2-gang",
 			Words: []screening.Word{{Word: "single", Text: "1"}, {Word: "dual", Text: "2"}, {Word: "stereo", Text: "2"}, {Word: "2-gang", Text: "2"}, {Word: "3-gang", Text: "3"}, {Word: "4-gang", Text: "4"}},
 		},
 		{

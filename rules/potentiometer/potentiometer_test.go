@@ -261,3 +261,25 @@ func TestTablesAreChecked(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), "10k linear resistance=9.8k crv=20 midpoint=4.8k end-ccw=3 end-cw=4")
 }
+
+// A switch that only carries signals: at most 1 Ω closed (the program's rule), at least 1 MΩ open (an ohmmeter's OL).
+func TestSwitchContacts(t *testing.T) {
+	closed, open := highest(t, "50k switched", SwitchClosed.Name, screening.AnyGrade), highest(t, "50k switched", SwitchOpen.Name, screening.AnyGrade)
+	if closed.High != 1 || closed.Source.Status != screening.House || open.Low != 1e6 || open.Source.Status != screening.CommonPractice {
+		t.Errorf("closed %v (%s), open %v (%s)", closed.High, closed.Source, open.Low, open.Source)
+	}
+	j := booktest.Judge(t, Book(), "50k switched resistance=48k crv=10 switch-closed=4 switch-open=OL treated=1", screening.DefaultPolicy())
+	if j.Verdict != screening.Regrade {
+		t.Errorf("4 Ω through a closed switch: %s", j.Verdict)
+	}
+}
+
+// 20·log(0.6/0.5) is 1.6 dB, 20·log(0.6/0.4) 3.5 dB; 3 dB is the usual limit (from memory).
+func TestTrackingOfTwoSections(t *testing.T) {
+	for second, apart := range map[string]bool{"5k": false, "4k": true} {
+		j := booktest.Judge(t, Book(), "10k dual resistance/1=10k resistance/2=10k crv/1=0 crv/2=0 midpoint/1=6k midpoint/2="+second, screening.DefaultPolicy())
+		if got := strings.Contains(booktest.Texts(j), "where they need not match"); got != apart || !strings.Contains(booktest.Texts(j), "3 dB is the usual") {
+			t.Errorf("6 and %s: said to be apart %v\n%s", second, got, booktest.Texts(j))
+		}
+	}
+}

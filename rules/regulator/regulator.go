@@ -201,6 +201,9 @@ func voltageOf(c screening.Claim) (screening.Definition, screening.Rating, bool)
 	return d, r, ok && !math.IsInf(r.Low, 0) && !math.IsInf(r.High, 0) && r.Low > 0
 }
 
+// legsStatus is what the table's legs are: no text was seen for them, whatever the status of the row.
+const legsStatus = screening.FromMemory
+
 // complete adds what the type's row says, shows the legs, and refuses a claim that cannot be.
 func complete(t *types.Table, c screening.Claim) (screening.Claim, []screening.Reason, error) {
 	own := c
@@ -221,7 +224,7 @@ func complete(t *types.Table, c screening.Claim) (screening.Claim, []screening.R
 		}
 	}
 	if tabled && row.Trait(screening.TraitPinout) != "" {
-		notes = append(notes, book.Note("", "%s: %s (%s); check against its own sheet before power", row.Type, row.Trait(screening.TraitPinout), row.Source.Status))
+		notes = append(notes, book.Note("", "%s: %s (%s); check against its own sheet before power", row.Type, row.Trait(screening.TraitPinout), legsStatus))
 	}
 	return c, notes, nil
 }

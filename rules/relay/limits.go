@@ -127,13 +127,13 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		}
 		switch f.Limit.Criterion {
 		case contactCriterion:
-			if x, stated := f.Reading.At.Get(screening.Current); stated && x >= load()["least"].value {
+			amperes, volts := judgedAt(part.Claim)
+			if x, stated := f.Reading.At.Get(screening.Current); stated && x >= load()["least"].value*amperes {
 				continue
 			}
-			amperes, volts := judgedAt(part.Claim)
 			f.Limit.At = screening.At(screening.Current, amperes).With(screening.Voltage, volts)
 			f.Outcome, f.Wants.At = screening.Missing, f.Limit.At
-			f.Why = "an ohmmeter's current does not break the film on a contact: only a reading at " + quantity.Format(amperes, quantity.Ampere, 0) +
+			f.Why = "so small a current does not break the film on a contact: only a reading at " + quantity.Format(amperes, quantity.Ampere, 0) +
 				" may refuse it"
 			reasons = append(reasons, book.Note(f.Limit.On, "make sure that the contact is in the state in which it should be closed"))
 		case openCriterion:

@@ -27,6 +27,10 @@ func TestVerdicts(t *testing.T) {
 		{"of signal contacts at 10 mA", "5V signal coil-resistance=178 contact-resistance/1=14", screening.Undecided, "at 10 mA"},
 		{"an ohmmeter shows it open", "12V coil-resistance=268 contact-resistance/1=OL", screening.Undecided, "in which it should be closed"},
 		{"bad at 1 A", "12V coil-resistance=268 contact-resistance/1@1A=3.4", screening.Reject, "closed contact of section 1"},
+		{"20 mA break no film on a power contact", "12V coil-resistance=268 contact-resistance/1@20mA=14", screening.Undecided, "only a reading at 1 A may refuse it"},
+		{"half the current that its sort is judged at does", "12V coil-resistance=268 contact-resistance/1@0.5A=3.4", screening.Reject, "closed contact of section 1"},
+		{"bad at 10 mA, where signal contacts are judged", "5V signal coil-resistance=178 contact-resistance/1@10mA=14", screening.Reject, "closed contact of section 1"},
+		{"a milliampere refuses no signal contact", "5V signal coil-resistance=178 contact-resistance/1@1mA=14", screening.Undecided, "at 10 mA"},
 		{"one bad contact of two", "12V coil-resistance=268 contact-resistance/1@1A=30m contact-resistance/2@1A=3.4", screening.Reject, "section 2"},
 		{"coil open", "12V coil-resistance=OL", screening.Reject, "coil resistance reads at least"},
 		{"a coil 30 % off its print is only remembered as wrong", "12V 270R coil-resistance=380 contact-resistance/1=0.4", screening.Accept, ""},
@@ -51,7 +55,7 @@ func TestVerdicts(t *testing.T) {
 	booktest.EveryVerdict(t, seen, screening.Regrade, screening.Treat)
 }
 
-// Power contacts are judged at 6 V and 1 A (Design News 2013-02-11), signal contacts at 1 V and 10 mA (relay makers' note): published. A new
+// Power contacts are judged at 6 V and 1 A (Design News 2013-02-11), signal contacts at 1 V and 10 mA (relay maker quoted on a question-and-answer page: second-hand). A new
 // contact reads 50 to 100 mΩ (from memory): it cannot reject.
 func TestContactsAreJudgedAtTheirOwnCurrent(t *testing.T) {
 	for words, want := range map[string][4]float64{ // supply, resistor, watts, volts at 100 mΩ
@@ -168,4 +172,18 @@ func TestTheTableIsChecked(t *testing.T) {
 
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), "12V 270R coil-resistance=268 contact-resistance/1@1A=28m open-contact/1=OL pull-in=7.9V drop-out=2.1V")
+}
+
+// From half the current at which its sort is judged a reading refuses a contact; below that it settles nothing.
+func TestFromWhichCurrentAReadingRefusesAContact(t *testing.T) {
+	for words, want := range map[string]screening.Outcome{
+		"12V contact-resistance/1@0.5A=14": screening.Fail, "12V contact-resistance/1@0.4A=14": screening.Missing,
+		"12V signal contact-resistance/1@5mA=14": screening.Fail, "12V signal contact-resistance/1@4mA=14": screening.Missing,
+	} {
+		j := booktest.Judge(t, Book(), words, screening.DefaultPolicy())
+		i := slices.IndexFunc(j.Findings, func(f screening.Finding) bool { return f.Limit.Criterion == contactCriterion })
+		if got := j.Findings[i].Outcome; got != want {
+			t.Errorf("%s: %s, want %s", words, got, want)
+		}
+	}
 }

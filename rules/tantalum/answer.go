@@ -16,7 +16,7 @@ var ignites = screening.Source{
 }
 
 var silverCase = screening.Source{
-	Document: "restorers' notes on wet tantalum in a silver case", Clause: "no reverse voltage at all", Status: screening.Published,
+	Document: "restorers' notes on wet tantalum in a silver case", Clause: "no reverse voltage at all", Status: screening.SecondHand,
 }
 
 // adjust adds to the shared rules the one explanation that is a solid part's own: damp.
@@ -45,7 +45,7 @@ func untested(part screening.Part, findings []screening.Finding) []string {
 	}
 	u := us[0]
 	if technology(part.Claim) == wet {
-		return append(lines, fmt.Sprintf("reverse voltage: allow none at all, not even while switching (%s)", silverCase.Status))
+		return append(lines, fmt.Sprintf("reverse voltage: allow none, not even while switching (%s)", silverCase.Status))
 	}
 	share, ohms, least := named("surge-share"), named("surge-ohms"), named("surge-least")
 	return append(lines, fmt.Sprintf("surge current: on a low-impedance rail use it only up to %s (half its voltage; %s), with %s or more in series "+

@@ -100,7 +100,7 @@ func TestVerdicts(t *testing.T) {
 		{"cracked", "10uF 16V capacitance=9.8uF resistance=OL seen=cracked", screening.Barred, 0, ""},
 		{"burnt", "10uF 16V capacitance=9.8uF resistance=OL seen=burnt", screening.Reject, 0, "burned once burns again"},
 		{"wet: the losses are needed", "100uF 50V wet capacitance=98uF resistance=OL", screening.Undecided, 0, "MEASURE equivalent series resistance at 120 Hz"},
-		{"wet and sound", "100uF 50V wet capacitance=98uF resistance=OL esr@120Hz=1.1", screening.Accept, 0, "allow none at all"},
+		{"wet and sound", "100uF 50V wet capacitance=98uF resistance=OL esr@120Hz=1.1", screening.Accept, 0, "allow none"},
 		{"wet: its figures are remembered and reject nothing", "100uF 50V wet capacitance=98uF resistance=OL esr@120Hz=30", screening.Undecided, 0, "CONFIRM the figure"},
 		{"wet: half its capacitance is gone whatever the figures", "100uF 50V wet capacitance=41uF resistance=OL esr@120Hz=1.1", screening.Reject, 0, "whatever its series"},
 	} {

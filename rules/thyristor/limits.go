@@ -7,6 +7,7 @@ import (
 
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
+	"goodbin/rules/internal/sheet"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
 )
@@ -40,6 +41,14 @@ func (b rulebook) directions() []string {
 }
 
 func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
+	if err := book.CheckStands(c, &VDRM, &ITRMS, &ITSM); err != nil {
+		return c, nil, err
+	}
+	for i := range c.Ratings {
+		if r := &c.Ratings[i]; (r.Of == IGT.Name || r.Of == IGTQ4.Name) && !(r.High > 0) {
+			return c, nil, fmt.Errorf("%s: %s triggers nothing; a gate needs a current, such as rated:%s=..15mA", r.Of, r, r.Of)
+		}
+	}
 	name := c.Trait(screening.TraitType)
 	if name == "" {
 		return c, nil, nil
@@ -50,7 +59,7 @@ func (b rulebook) complete(c screening.Claim) (screening.Claim, []screening.Reas
 		row, known = b.table.Lookup(b.kind, base)
 	}
 	if !known {
-		return c, []screening.Reason{semi.UnknownType(b.table, b.kind, c, "rated:vdrm=600V rated:igt=..15mA")}, nil
+		return c, []screening.Reason{sheet.Unknown(b.table, b.kind, c, "rated:vdrm=600V rated:igt=..15mA")}, nil
 	}
 	if graded {
 		row.Type += "-" + grade

@@ -2,6 +2,7 @@ package thyristor
 
 import (
 	"math"
+	"strings"
 
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
@@ -16,10 +17,6 @@ const (
 	gateDrop  = 0.75 // V, from gate to cathode when it triggers, where the sheet says nothing
 	below     = 0.9  // of the limit: what is driven into the gate, so that latching clears the limit
 )
-
-// TriggerSupply returns the voltage, V, that drives a gate current igt, A, through a resistance, Ω, into a gate that drops vgt, V:
-// IGT·R + VGT.
-func TriggerSupply(igt, ohms, vgt float64) float64 { return igt*ohms + vgt }
 
 // DropOutSupply returns the voltage, V, at which a thyristor that drops vt, V, behind a resistance, Ω, falls to its holding current, A:
 // IH·R + VT.
@@ -80,6 +77,14 @@ func (b rulebook) leads() (anode, cathode string) {
 	return "anode", "cathode"
 }
 
+// named puts an article before a lead that has a word for a name: "the anode", "T2".
+func named(lead string) string {
+	if strings.HasPrefix(lead, "T") {
+		return lead
+	}
+	return "the " + lead
+}
+
 // triggerRecipe lights a lamp through the part by a computed gate current, and reads what is left across it when the gate was let go.
 func (b rulebook) triggerRecipe(c screening.Claim, l screening.Limit) screening.Recipe {
 	trigger := b.triggerLimit(c, IGT, l.Section)
@@ -105,10 +110,10 @@ func (b rulebook) triggerRecipe(c screening.Claim, l screening.Limit) screening.
 	return screening.Recipe{
 		Title: "trigger and latch with a lamp" + quadrant(l.Section),
 		Lines: []string{
-			semi.Volts(supply) + " with a 1 A fuse and a " + semi.Volts(supply) + " " + semi.Watts(lampWatts) + " lamp in series with the " + anode + ": plus side to the " +
-				plus + ", minus side to the " + minus + ". Gate open: the lamp stays dark; wait ten seconds",
+			semi.Volts(supply) + " with a 1 A fuse and a " + semi.Volts(supply) + " " + semi.Watts(lampWatts) + " lamp in series with " + named(anode) + ": plus side to " +
+				named(plus) + ", minus side to " + named(minus) + ". Gate open: the lamp stays dark; wait ten seconds",
 			"touch the gate through " + semi.Ohms(ohms) + " (" + semi.Watts((supply-drop)*amps) + ") to " + gateTo + " of the supply, that is " +
-				quantity.Format(amps, quantity.Ampere, 2) + " into it: the lamp lights. Type igt" + slash + "=.." +
+				quantity.Format(semi.Honest2(amps), quantity.Ampere, 2) + " into it: the lamp lights. Type igt" + slash + "=.." +
 				semi.Typed(semi.Honest2(amps), quantity.Ampere) + "; where it does not, igt" + slash + "=" + semi.Typed(semi.Honest2(amps), quantity.Ampere) + "..",
 			"let the gate go: the lamp stays lit. Read the volts across the part and type vt" + slash + "@" +
 				semi.Typed(semi.Honest2(lamp), quantity.Ampere) + "=…; where it goes dark, vt" + slash + "@" + semi.Typed(semi.Honest2(lamp), quantity.Ampere) + "=OL",
@@ -161,7 +166,7 @@ func (b rulebook) holdingRecipe(l screening.Limit) screening.Recipe {
 	return screening.Recipe{
 		Title: "holding current",
 		Lines: []string{
-			"supply " + semi.Volts(supply) + " through " + semi.Ohms(ohms) + " (" + semi.Watts(supply*supply/ohms) + ") to the " + anode + ", minus to the " + cathode +
+			"supply " + semi.Volts(supply) + " through " + semi.Ohms(ohms) + " (" + semi.Watts(supply*supply/ohms) + ") to " + named(anode) + ", minus to " + named(cathode) +
 				"; trigger it and let the gate go",
 			"turn the supply down slowly and watch the volts across the resistor: the last before it lets go, over " + semi.Ohms(ohms) + ", is IH. With " +
 				semi.Amps(l.High) + " it lets go at " + quantity.Format(volts, quantity.Volt, 2),

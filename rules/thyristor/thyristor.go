@@ -13,6 +13,7 @@ import (
 
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
+	"goodbin/rules/internal/sheet"
 	"goodbin/rules/types"
 	"goodbin/screening"
 	"goodbin/screening/quantity"
@@ -102,7 +103,7 @@ func (b rulebook) claims() []screening.Field {
 		example, pinout = "BT234", "T1-T2-G"
 	}
 	fields := []screening.Field{
-		semi.TypeField(b.table, b.kind, example),
+		sheet.Field(b.table, b.kind, example),
 		{
 			Definition: VDRM, Example: "500V", AcceptRange: semi.StandsIn(quantity.Volt), Help: "the voltage it claims to block, both ways",
 		},
@@ -111,7 +112,7 @@ func (b rulebook) claims() []screening.Field {
 		},
 		{Definition: ITSM, Example: "rated:itsm=20A", Help: "the surge of one half-wave that its sheet allows; not tested"},
 		{Definition: IGT, Example: "rated:igt=..15mA", Help: "the gate current that its sheet says turns every part on"},
-		{Definition: VGT, Example: "rated:vgt=..1.4V", Help: "the gate voltage at that current"},
+		{Definition: VGT, Example: "rated:vgt=..1.5V", Help: "the gate voltage at that current"},
 		{Definition: IH, Example: "rated:ih=..15mA", Help: "the holding current its sheet allows"},
 		{Definition: VT, Example: "rated:vt@6A=..1.5V", Help: "the drop its sheet allows when on, at a current"},
 		semi.PinoutField(pinout), book.CaseField("case=TO-220"), book.DatedField(),

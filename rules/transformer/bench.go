@@ -68,7 +68,7 @@ func insulationRecipe(l screening.Limit) screening.Recipe {
 			Title: "Insulation tester",
 			Lines: []string{
 				fmt.Sprintf("with an insulation tester at %s DC, all ends of one winding joined against the core and all others joined: read after 2 min, "+
-					"stop earlier where it stands still or falls", quantity.Format(volts, quantity.Volt, 0)),
+					"earlier only where it stands still or rises above the limit", quantity.Format(volts, quantity.Volt, 0)),
 				"hands off while it is on; let the tester discharge the windings, then read the volts that remain",
 			},
 			Values: map[string]float64{"voltage": volts},

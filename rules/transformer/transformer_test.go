@@ -149,3 +149,27 @@ func TestTheTableIsChecked(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), small+"dcr/1=380 dcr/2=1.4 insulation-resistance/1-core=OL voltage-ratio/2=0.058")
 }
+
+// MIL-STD-202 method 302, condition B (published): 500 V, read after 2 min, or earlier where it stands still or rises above the limit.
+func TestInsulationIsTestedAsMethod302Says(t *testing.T) {
+	part := booktest.Part(t, Book(), small)
+	all, err := limits(part.Claim)
+	if err != nil {
+		t.Fatal(err)
+	}
+	found := 0
+	for _, l := range all {
+		if l.Criterion != testedCriterion {
+			continue
+		}
+		found++
+		text := strings.Join(Book().Recipes(part, l)[0].Lines, "\n")
+		if v, _ := l.At.Get(screening.Voltage); v != 500 || l.Need == screening.Required || l.Source.Status.MayReject() || !strings.Contains(text, "500 V DC") ||
+			!strings.Contains(text, "after 2 min") || !strings.Contains(text, "rises above the limit") {
+			t.Errorf("%v V, %s: %s", v, l.Source, text)
+		}
+	}
+	if found != 1 {
+		t.Errorf("%d such limits", found)
+	}
+}

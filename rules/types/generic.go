@@ -4,6 +4,7 @@ import (
 	"embed"
 	"errors"
 	"fmt"
+	"iter"
 	"slices"
 	"strings"
 
@@ -31,32 +32,26 @@ var shared = []screening.Definition{
 	screening.VRRM, screening.IFAV, screening.IFSM, screening.VCEO, screening.VDSS, screening.Ptot,
 }
 
-// readFiles reads every embedded table in the general format: <kind>.csv, whose header is type,alias,<trait>…,rated:NAME…,pinout,case,
+// general yields every embedded table in the general format: <kind>.csv, whose header is type,alias,<trait>…,rated:NAME…,pinout,case,
 // source,status,except,note and whose ratings are VALUE[@COND,…] with units, as on the command line.
-func (t *Table) readFiles() error {
-	entries, err := files.ReadDir(".")
-	if err != nil {
-		return err
-	}
-	for _, e := range entries {
-		kind := strings.TrimSuffix(e.Name(), ".csv")
-		if slices.Contains(ownFormat, kind) {
-			continue
-		}
-		text, err := files.ReadFile(e.Name())
-		if err != nil {
-			return err
-		}
-		t.versions[screening.Kind(kind)] = book.Fingerprint(string(text))
-		if err := t.readKind(screening.Kind(kind), string(text)); err != nil {
-			return err
+func general() iter.Seq2[screening.Kind, string] {
+	return func(yield func(screening.Kind, string) bool) {
+		entries, _ := files.ReadDir(".") // embedded: neither this nor the reading can fail
+		for _, e := range entries {
+			kind := strings.TrimSuffix(e.Name(), ".csv")
+			if slices.Contains(ownFormat, kind) {
+				continue
+			}
+			text, _ := files.ReadFile(e.Name())
+			if !yield(screening.Kind(kind), string(text)) {
+				return
+			}
 		}
 	}
-	return nil
 }
 
 // readKind reads one table in the general format.
-func (t *Table) readKind(kind screening.Kind, text string) error {
+func (t *content) readKind(kind screening.Kind, text string) error {
 	table := book.ReadTable(string(kind)+".csv", text)
 	for _, c := range commonColumns {
 		if !table.Has(c) {

@@ -63,12 +63,12 @@ func TestCellsOfTheGeneralFormat(t *testing.T) {
 		},
 		{"a figure of another status", "X1,,n,60V,,,,,sheet,published,vdss=from memory,", "vdss", 60, 60, 60, screening.Condition{}, screening.FromMemory},
 	} {
-		table := newTable()
+		table := newContent()
 		if err := table.readKind("mosfet", head+tt.row+"\n"); err != nil {
 			t.Errorf("%s: %v", tt.name, err)
 			continue
 		}
-		row, _ := table.Lookup("mosfet", "X1")
+		row, _ := table.lookup("mosfet", "X1")
 		r, ok := row.Rating(tt.of)
 		same := r.Nominal == tt.nominal || math.IsNaN(r.Nominal) && math.IsNaN(tt.nominal)
 		if !ok || !same || r.Low != tt.low || r.High != tt.high || r.At != tt.at || r.Source.Status != tt.status || row.Trait("channel") != "n" {
@@ -85,7 +85,7 @@ func TestCellsOfTheGeneralFormat(t *testing.T) {
 		"upside down":             head + "X1,,n,60V,,20mA..2mA,,,sheet,published,,\n",
 		"no alias column":         "type,rated:vdss,source,status,except,note\nX1,60V,sheet,published,,\n",
 	} {
-		if err := newTable().readKind("mosfet", text); err == nil {
+		if err := newContent().readKind("mosfet", text); err == nil {
 			t.Errorf("%s is read without an error", name)
 		}
 	}

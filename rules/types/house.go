@@ -5,6 +5,7 @@ import (
 	"maps"
 	"slices"
 	"strings"
+	"sync"
 
 	"goodbin/rules/internal/book"
 	"goodbin/screening"
@@ -50,10 +51,16 @@ func (t *Table) With(rows []Row) *Table {
 	if len(rows) == 0 {
 		return t
 	}
-	n := newTable()
-	for kind, list := range t.rows {
-		n.rows[kind], n.byName[kind], n.versions[kind] = list, t.byName[kind], t.versions[kind]
+	rows, versions := slices.Clone(rows), maps.Clone(t.versions)
+	for i := range rows {
+		versions[rows[i].Kind] = book.Fingerprint(versions[rows[i].Kind], fmt.Sprintf("%+v", rows[i]))
 	}
+	return &Table{versions: versions, content: sync.OnceValue(func() *content { return t.content().with(rows) })}
+}
+
+// with returns the content with house rows added; that of kinds without any is shared.
+func (t *content) with(rows []Row) *content {
+	n := &content{rows: maps.Clone(t.rows), byName: maps.Clone(t.byName)}
 	own := map[screening.Kind]bool{} // the kinds whose rows are no longer shared with t
 	for i := range rows {
 		kind := rows[i].Kind
@@ -63,14 +70,13 @@ func (t *Table) With(rows []Row) *Table {
 			n.byName[kind] = map[string]int{}
 			maps.Copy(n.byName[kind], t.byName[kind])
 		}
-		n.versions[kind] = book.Fingerprint(n.versions[kind], fmt.Sprintf("%+v", rows[i]))
 		n.addHouse(&rows[i])
 	}
 	return n
 }
 
 // addHouse adds one house row to a table whose rows of that kind are its own.
-func (t *Table) addHouse(house *Row) {
+func (t *content) addHouse(house *Row) {
 	row := *house
 	group := row.Group
 	if group != "" { // its gain is the group's, the rest the type's
@@ -78,7 +84,7 @@ func (t *Table) addHouse(house *Row) {
 		row.Traits = screening.Claim{Traits: row.Traits}.WithTrait(screening.TraitGroup, "").Traits
 		row.Ratings = slices.DeleteFunc(slices.Clone(row.Ratings), func(r screening.Rating) bool { return r.Of == gain })
 	}
-	if base, known := t.Lookup(row.Kind, row.Type); known {
+	if base, known := t.lookup(row.Kind, fold(row.Type)); known {
 		row = base.overruledBy(&row)
 	}
 	if g, ok := house.Rating(gain); ok && group != "" {

@@ -198,7 +198,7 @@ func TestAppendingToARowDoesNotReachTheTable(t *testing.T) {
 
 func TestTablesRefuseWhatIsWrong(t *testing.T) {
 	head := "type,group,alias,min,max,ic,vce,vcb,source,status,note\n"
-	tab := &Table{rows: map[screening.Kind][]Row{Bipolar: {{Type: "X1"}}}, byName: map[screening.Kind]map[string]int{Bipolar: {"X1": 0}}}
+	tab := &content{rows: map[screening.Kind][]Row{Bipolar: {{Type: "X1"}}}, byName: map[screening.Kind]map[string]int{Bipolar: {"X1": 0}}}
 	for name, text := range map[string]string{
 		"min above max":            head + "X1,A,,200,100,1,5,,sheet,published,\n",
 		"unknown type":             head + "X2,A,,100,200,1,5,,sheet,published,\n",

@@ -26,8 +26,8 @@ var (
 	pointsCSV string
 )
 
-func read() (*Table, error) {
-	t := newTable()
+func read() (*content, error) {
+	t := newContent()
 	transistors := book.ReadTable("transistors.csv", transistorsCSV)
 	diodes := book.ReadTable("diodes.csv", diodesCSV)
 	zeners := book.ReadTable("zeners.csv", zenersCSV)
@@ -48,13 +48,25 @@ func read() (*Table, error) {
 	for _, r := range points.Rows() {
 		t.addPoint(r)
 	}
-	t.versions[Bipolar] = book.Fingerprint(transistorsCSV, groupsCSV, pointsCSV)
-	t.versions[Diode], t.versions[Zener] = book.Fingerprint(diodesCSV), book.Fingerprint(zenersCSV)
-	err := t.readFiles()
+	var err error
+	for kind, text := range general() {
+		err = errors.Join(err, t.readKind(kind, text))
+	}
 	return t, errors.Join(transistors.Err(), diodes.Err(), zeners.Err(), groups.Err(), points.Err(), err)
 }
 
-func (t *Table) add(kind screening.Kind, r book.Row, row Row) {
+// builtinVersions are the versions of the embedded tables.
+func builtinVersions() map[screening.Kind]string {
+	versions := map[screening.Kind]string{
+		Bipolar: book.Fingerprint(transistorsCSV, groupsCSV, pointsCSV), Diode: book.Fingerprint(diodesCSV), Zener: book.Fingerprint(zenersCSV),
+	}
+	for kind, text := range general() {
+		versions[kind] = book.Fingerprint(text)
+	}
+	return versions
+}
+
+func (t *content) add(kind screening.Kind, r book.Row, row Row) {
 	row.Kind = kind
 	if t.byName[kind] == nil {
 		t.byName[kind] = map[string]int{}
@@ -240,7 +252,7 @@ func zener(r book.Row) Row {
 }
 
 // named finds the transistor that a row of a side table belongs to.
-func (t *Table) named(r book.Row) (*Row, bool) {
+func (t *content) named(r book.Row) (*Row, bool) {
 	i, ok := t.byName[Bipolar][fold(r.Required("type"))]
 	if !ok {
 		r.Errorf("type", "%q is in no table", r.Text("type"))
@@ -249,7 +261,7 @@ func (t *Table) named(r book.Row) (*Row, bool) {
 	return &t.rows[Bipolar][i], true
 }
 
-func (t *Table) addGroup(r book.Row) {
+func (t *content) addGroup(r book.Row) {
 	row, ok := t.named(r)
 	if !ok {
 		return
@@ -271,7 +283,7 @@ var pointUnits = map[string]quantity.Unit{
 	"hfe": quantity.One, "iceo": quantity.Ampere, "icex": quantity.Ampere, "vbe": quantity.Volt,
 }
 
-func (t *Table) addPoint(r book.Row) {
+func (t *content) addPoint(r book.Row) {
 	row, ok := t.named(r)
 	if !ok {
 		return

@@ -9,26 +9,34 @@ import (
 	"goodbin/screening"
 )
 
-// Table is a table of type numbers, by kind. It is a value that does not change: [Table.With] makes another one.
+// Table is a table of type numbers, by kind. It is a value that does not change: [Table.With] makes another one. Its rows are read when
+// they are first asked for: most runs of the program need only the versions.
 type Table struct {
-	rows     map[screening.Kind][]Row
-	byName   map[screening.Kind]map[string]int // folded name or alias to index in rows
 	versions map[screening.Kind]string
+	content  func() *content
 }
 
-func newTable() *Table {
-	return &Table{rows: map[screening.Kind][]Row{}, byName: map[screening.Kind]map[string]int{}, versions: map[screening.Kind]string{}}
+// content is the rows of a table.
+type content struct {
+	rows   map[screening.Kind][]Row
+	byName map[screening.Kind]map[string]int // folded name or alias to index in rows
+}
+
+func newContent() *content {
+	return &content{rows: map[screening.Kind][]Row{}, byName: map[screening.Kind]map[string]int{}}
 }
 
 // Builtin returns the table that the program brings along. A test holds the embedded files to load.
 func Builtin() *Table { return builtin() }
 
 var builtin = sync.OnceValue(func() *Table {
-	t, err := read()
-	if err != nil {
-		panic("types: embedded tables: " + err.Error())
-	}
-	return t
+	return &Table{versions: builtinVersions(), content: sync.OnceValue(func() *content {
+		c, err := read()
+		if err != nil {
+			panic("types: embedded tables: " + err.Error())
+		}
+		return c
+	})}
 })
 
 // Version names the state of the rows of these kinds, house rows included, or of the whole table where none is named; a verdict under
@@ -49,16 +57,17 @@ const edition = "3"
 
 // Kinds lists the kinds that the table has rows for, in the order of their names.
 func (t *Table) Kinds() []screening.Kind {
-	return slices.Sorted(maps.Keys(t.rows))
+	return slices.Sorted(maps.Keys(t.versions))
 }
 
 // Rows lists every row of a kind in the order of the table. They are there to be read.
-func (t *Table) Rows(kind screening.Kind) []Row { return t.rows[kind] }
+func (t *Table) Rows(kind screening.Kind) []Row { return t.content().rows[kind] }
 
 // Names lists every type number of a kind in the order of the table.
 func (t *Table) Names(kind screening.Kind) []string {
-	names := make([]string, len(t.rows[kind]))
-	for i, r := range t.rows[kind] {
+	rows := t.Rows(kind)
+	names := make([]string, len(rows))
+	for i, r := range rows {
 		names[i] = r.Type
 	}
 	return names
@@ -66,7 +75,7 @@ func (t *Table) Names(kind screening.Kind) []string {
 
 // GroupNamed reports whether any transistor has a gain group of this name, and how it is printed: "-25" and "25" are "25", "gr" is "GR".
 func (t *Table) GroupNamed(name string) (string, bool) {
-	for _, r := range t.rows[Bipolar] {
+	for _, r := range t.Rows(Bipolar) {
 		if g, ok := r.FindGroup(name); ok {
 			return g.Name, true
 		}
@@ -84,6 +93,10 @@ func (t *Table) Lookup(kind screening.Kind, word string) (Row, bool) {
 	if folded == "" {
 		return Row{}, false
 	}
+	return t.content().lookup(kind, folded)
+}
+
+func (t *content) lookup(kind screening.Kind, folded string) (Row, bool) {
 	if i, ok := t.byName[kind][folded]; ok {
 		return t.rows[kind][i], true
 	}

@@ -116,7 +116,7 @@ func isFolded(name string) bool {
 
 // otherTolerance serves the tolerance letters for which a sheet prints a rule rather than a table. The bounds are the nominal and the
 // printed tolerance; everything else is the row's.
-func (t *Table) otherTolerance(folded string) (Row, bool) {
+func (t *content) otherTolerance(folded string) (Row, bool) {
 	for _, s := range toleranceSuffixes {
 		base, ok := s.base(folded)
 		if !ok {

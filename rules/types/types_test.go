@@ -31,7 +31,7 @@ func TestEveryFigureHasASourceAndAStatus(t *testing.T) {
 			t.Errorf("%s %s: source %+v", typ, r.Of, r.Source)
 		}
 	}
-	for kind, rows := range Builtin().rows {
+	for kind, rows := range Builtin().content().rows {
 		for _, row := range rows {
 			for _, r := range slices.Concat(row.Ratings, row.Points) {
 				check(row.Type, r)

@@ -315,7 +315,7 @@ func permutations(n int) [][]int {
 // separating returns the measurement that leaves the fewest candidates in its worst case; false where none tells any of them apart.
 func separating(n int, readings []screening.Reading, left []fit) (measurement, bool) {
 	var best measurement
-	least := weight(left)
+	all, least := weight(left), inf
 	if len(left) < 2 {
 		return best, false
 	}
@@ -328,8 +328,8 @@ func separating(n int, readings []screening.Reading, left []fit) (measurement, b
 		for k := range load().classes[m.of] {
 			worst = max(worst, weight(after(left, m, 1<<k, taken)))
 		}
-		if worst < least {
-			least, best = worst, m
+		if cost := worst * dearness(m); worst < all && cost < least {
+			least, best = cost, m
 		}
 	}
 	return best, best.of != ""

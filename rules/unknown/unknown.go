@@ -20,11 +20,12 @@ const edition = "1"
 // Identity is what the part is not known to have: no reading answers it, so a part of this kind stays undecided until it is named.
 var Identity = book.Trait("identity", "what it is")
 
+const identityCriterion screening.Criterion = "identity"
+
 const (
-	identityCriterion screening.Criterion = "identity"
-	traitLeads                            = "leads"
-	traitMarking                          = "marking"
-	traitColours                          = "colours"
+	traitLeads   = "leads"
+	traitMarking = "marking"
+	traitColours = "colours"
 )
 
 // Book returns the rulebook. decode says what a marking may mean, a line a meaning; it may be nil.
@@ -64,7 +65,7 @@ func bench() []screening.Field {
 	return []screening.Field{
 		{
 			Definition: screening.VF, Example: "vf/1-2=0.62", Effort: 10 * time.Second, Band: screening.Span{Low: 0, High: 100},
-			Help: "diode test, red probe on the first lead of the pair, black on the second; OL counts",
+			Help: "diode test, red probe on the first lead of the pair, black on the second; OL counts as above 2 V. A meter that stops sooner: vf/1-2=1.5V..",
 			Ask:  "READ the diode test, red probe on the first lead of the pair, black on the second (OL counts)",
 		},
 		{
@@ -157,6 +158,7 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 		for _, p := range left {
 			reasons = append(reasons, p.reason())
 		}
+		reasons = append(reasons, book.Note("", doubt))
 	}
 	for i := range findings {
 		f := &findings[i]
@@ -174,6 +176,9 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	}
 	return findings, reasons
 }
+
+// doubt stands with whatever remains.
+const doubt = "a damaged part, or one with a chip inside, can read like another sort: its print and its place say more"
 
 // mostNamed is how many sorts are named; above that more is to be measured first.
 const mostNamed = 5

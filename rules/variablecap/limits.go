@@ -24,7 +24,7 @@ func limit(on screening.Definition, section string, criterion screening.Criterio
 
 func limits(c screening.Claim) ([]screening.Limit, error) {
 	var all []screening.Limit
-	for _, s := range sections(c) {
+	for _, s := range book.Sections(c) {
 		short := limit(screening.InsulationResistance, s, shortCriterion, screening.Required)
 		short.Low, short.Source = touching, figures()["insulation"].source
 		short.Note = "the lowest on the whole way from end to end"

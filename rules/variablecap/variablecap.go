@@ -7,7 +7,6 @@ import (
 	"fmt"
 	"math"
 	"slices"
-	"strconv"
 	"strings"
 	"sync"
 	"time"
@@ -27,7 +26,6 @@ const edition = "1"
 const (
 	TraitForm       = "form"
 	TraitDielectric = "dielectric"
-	TraitSections   = "sections"
 )
 
 // air is the dielectric whose plates can be bent back and cleaned.
@@ -87,7 +85,7 @@ func claims() []screening.Field {
 			Help: "lowest to highest, 10..365pF, or the highest alone; by section: rated:capacitance/1=10..365pF; none: it is kept as measured",
 		},
 		{
-			Definition: book.Trait(TraitSections, "sections"), Trait: true, Example: "2-gang", Help: "sections moved together: single, 2-gang, 3-gang",
+			Definition: book.Trait(book.TraitSections, "sections"), Trait: true, Example: "2-gang", Help: "sections moved together: single, 2-gang, 3-gang",
 			Words: []screening.Word{{Word: "single", Text: "1"}, {Word: "dual", Text: "2"}, {Word: "2-gang", Text: "2"}, {Word: "3-gang", Text: "3"}, {Word: "4-gang", Text: "4"}},
 		},
 		{
@@ -169,29 +167,7 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 			return c, nil, fmt.Errorf("capacitance: %s is no variable capacitor; they reach from a few pF to some 1000 pF, such as 10..365pF", r)
 		}
 	}
-	if n, named := c.Trait(TraitSections), c.Sections(); n != "" && named[0] != "" && strconv.Itoa(len(named)) != n {
-		return c, nil, fmt.Errorf("sections: %s are claimed, and values for %d (%s)", n, len(named), strings.Join(named, ", "))
-	}
-	return c, nil, nil
-}
-
-// mostSections is how many sections one shaft moves at most (house).
-const mostSections = 8
-
-// sections lists the sections of a part: those whose values are claimed one by one, else as many as are claimed, else the one without a name.
-func sections(c screening.Claim) []string {
-	if named := c.Sections(); named[0] != "" {
-		return named
-	}
-	n, _ := strconv.Atoi(c.Trait(TraitSections))
-	if n < 2 {
-		return []string{""}
-	}
-	var list []string
-	for i := range min(n, mostSections) {
-		list = append(list, strconv.Itoa(i+1))
-	}
-	return list
+	return c, nil, book.CheckSections(c)
 }
 
 func farads(x float64) string { return quantity.Format(x, quantity.Farad, 0) }

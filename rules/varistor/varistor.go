@@ -8,6 +8,7 @@ import (
 	"math"
 	"regexp"
 	"strconv"
+	"strings"
 	"sync"
 	"time"
 
@@ -77,13 +78,28 @@ func claims() []screening.Field {
 			Definition: VV, Required: true, Example: "rated:vv=470V", Ambiguous: codeMeaning,
 			Help: "at 1 mA: a print of 471K is rated:vv=470V 10%; of a print of an AC voltage, 275 V, say ac-voltage=275V",
 		},
-		{Definition: ACVoltage, Example: "ac-voltage=275V", Help: "where only the highest AC voltage is printed"},
+		{
+			Definition: ACVoltage, Example: "ac-voltage=275V", AcceptRange: acceptAC,
+			Help: "where only the highest AC voltage is printed: 275VAC, 275V~ or ac-voltage=275V",
+		},
 		{
 			Definition: screening.Tolerance, Example: "10%", Help: "of the voltage at 1 mA; letters J K L M; ±10 % where none is printed",
 			AcceptRange: book.ToleranceLetter, Ambiguous: book.ToleranceMeanings,
 		},
 		book.DatedField(),
 	}
+}
+
+var acPattern = regexp.MustCompile(`^(?i)(\d{1,4})(?:V~|V\.?A\.?C\.?|VRMS)$`)
+
+// acceptAC takes a bare word as a highest AC voltage: "275VAC", "275V~".
+func acceptAC(word string) (low, high float64, ok bool) {
+	m := acPattern.FindStringSubmatch(strings.TrimSpace(word))
+	if m == nil {
+		return 0, 0, false
+	}
+	volts, err := strconv.ParseFloat(m[1], 64)
+	return volts, volts, err == nil
 }
 
 // anyTemperature takes readings whatever the temperature: it moves the voltage by 0.05 % per kelvin.
@@ -142,6 +158,10 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 		if r, ok := c.Rating(d.Name, ""); ok && !(r.High > 0) {
 			return c, nil, fmt.Errorf("%s: %s is no voltage of a varistor; it lies above zero, such as 470V", d.Name, r)
 		}
+	}
+	if r, ok := c.Rating(ACVoltage.Name, ""); ok && !r.HasNominal() && r.Low == r.High { // printed as 275VAC
+		r.Nominal = r.Low
+		c = c.WithRating(r)
 	}
 	ac, hasAC := c.Nominal(ACVoltage.Name, "")
 	vv, hasVV := c.Rating(VV.Name, "")

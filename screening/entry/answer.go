@@ -128,8 +128,8 @@ func PromptUnit(q screening.Question) string {
 	switch unit {
 	case quantity.Farad, quantity.Henry, quantity.Ampere:
 	case quantity.Ohm:
-		if !q.Field.FollowsNominal {
-			return unit.Symbol()
+		if !q.Field.FollowsNominal || q.Limit == nil || !finite(q.Limit.Low) || !finite(q.Limit.High) {
+			return unit.Symbol() // "at most 100 kΩ" tells an open winding, and not what a sound one reads
 		}
 	default:
 		return unit.Symbol()

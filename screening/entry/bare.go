@@ -27,6 +27,10 @@ func (t taking) meaning(word string) string {
 // bare offers a word without "=" to every claim of the kind. A known type number comes before everything; then words that could mean two
 // things are refused; then words, letters and dates; then, where none of these takes it, numbers with their units.
 func (p *parser) bare(word string) error {
+	if strings.EqualFold(word, claimsNothing) {
+		p.echo(word, func() string { return "claims nothing" })
+		return nil
+	}
 	if f, ok := p.book.ClaimField(screening.TraitType); ok && f.AcceptText != nil {
 		if text, ok := f.AcceptText(word); ok {
 			return p.addTrait(&f, text, word)

@@ -86,7 +86,11 @@ func traitText(f *screening.Field, value string) (string, error) {
 func (p *parser) addRating(r screening.Rating, typed string) error {
 	for _, old := range p.parsed.Claim.Ratings {
 		if old.Of == r.Of && old.Section == r.Section && old.At == r.At {
-			return problem(string(r.Of), "is claimed twice: %s, then %s", old, r)
+			twice := problem(string(r.Of), "is claimed twice: %s, then %s", old, r)
+			if f, ok := p.book.ClaimField(r.Of); ok && r.Section == "" && strings.Contains(f.Example, "/1=") {
+				return twice.hint("say which is which, by a number or a name: %s/1=… %s/2=…", r.Of, r.Of)
+			}
+			return twice
 		}
 	}
 	p.parsed.Claim = p.parsed.Claim.WithRating(r)

@@ -54,7 +54,7 @@ const maxClaims = 10_000
 
 // CSV reads parts from a CSV file whose header names them by the words of the command line: kind, lot, part, place, source, note and claim
 // (bare words), and NAME[/SECTION][@COND,…], rated:NAME, TRAIT, seen, treated. A unit in brackets after a name is the unit of that column's bare
-// numbers. Kind and claim may be left empty in the rows of a lot after its first. The delimiter is a comma, a semicolon or a tab; a comma inside a cell is a decimal comma where it is not the delimiter.
+// numbers. Kind and claim may be left empty in the rows of a lot after its first; the claim "nothing" is a part's own. The delimiter is a comma, a semicolon or a tab; a comma inside a cell is a decimal comma where it is not the delimiter.
 type CSV struct {
 	books    screening.Kinds
 	records  *records
@@ -146,6 +146,9 @@ func (c *CSV) Scan() (Record, error) {
 // lotHead is what the first row of a lot says for those after it.
 type lotHead struct{ kind, claim string }
 
+// claimsNothing is the claim, in words, of a part that claims nothing whatever the other parts of its lot claim.
+const claimsNothing = "nothing"
+
 // inherit fills in kind and claim of a row from the first row of its lot that states them.
 func (c *CSV) inherit(cells []string) {
 	var lot string
@@ -174,17 +177,10 @@ func (c *CSV) inherit(cells []string) {
 		}
 	}
 	take(kind, &head.kind)
-	take(claim, &head.claim)
+	if claim != nil && !strings.EqualFold(*claim, claimsNothing) {
+		take(claim, &head.claim)
+	}
 	if known || len(c.heads) < maxClaims {
 		c.heads[lot] = head
 	}
-}
-
-// Next reads and understands the next row. Errors in the row are in the row; the error is io.EOF at the end, or what ended the reading.
-func (c *CSV) Next() (Row, error) {
-	r, err := c.Scan()
-	if err != nil {
-		return Row{}, err
-	}
-	return c.Row(r), nil
 }

@@ -1,6 +1,8 @@
 package entry
 
 import (
+	"maps"
+	"slices"
 	"strings"
 
 	"goodbin/screening"
@@ -151,10 +153,7 @@ func anyTarget(books screening.Kinds, header string) error {
 }
 
 func headerError(books screening.Kinds, i int, name string) error {
-	names := []string{seenName, treatedName}
-	for n := range columnNames {
-		names = append(names, n)
-	}
+	names := append([]string{seenName, treatedName}, slices.Sorted(maps.Keys(columnNames))...)
 	for _, b := range books {
 		names = append(append(names, benchNames(b)...), claimNames(b)...)
 	}

@@ -8,6 +8,7 @@
 //	TRAIT=TEXT                       what it claims in words
 //	seen=WORD,…                      what was found by eye; seen=nothing: everything was looked at and is sound
 //	treated=N                        how many times it was treated already
+//	nothing                          it claims nothing, whatever the rest of its lot claims
 //	anything else                    is offered to every claim of the kind, and exactly one may take it
 //
 // VALUE of a reading is x, ..x or <x (at most), x.. or >x (at least), OL (over-range), or repeats x,y,z. A value may have a decimal comma;

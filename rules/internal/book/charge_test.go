@@ -93,6 +93,10 @@ func TestTheDischargeResistorStandsItsWatts(t *testing.T) {
 	if ohms, _ := DischargeResistor(10000e-6, 63); ohms >= 22e3 {
 		t.Errorf("10000 µF at 63 V takes 6 minutes through 22 kΩ: got %v Ω, want less", ohms)
 	}
+	// 60 V is the touch limit of equipment safety standards (second-hand), for charges and supplies alike.
+	if TouchVoltage != 60 || noticeVolts != TouchVoltage {
+		t.Errorf("touch voltage %v, notice from %v V", TouchVoltage, noticeVolts)
+	}
 	if s := DischargeTime(22e3, 1, 5); s != 0 {
 		t.Errorf("from 5 V it takes %v s, want 0", s)
 	}

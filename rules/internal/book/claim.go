@@ -2,6 +2,7 @@ package book
 
 import (
 	"fmt"
+	"math"
 
 	"goodbin/screening"
 )
@@ -29,6 +30,19 @@ func SourceOf(r *screening.Rating) screening.Source {
 		return r.Source
 	}
 	return screening.Source{Document: "claimed for the part", Clause: string(r.Of), Status: screening.Published}
+}
+
+// CheckStands refuses a rating that must say what a part stands and does not: no lower bound, or none above zero.
+func CheckStands(c screening.Claim, ratings ...*screening.Definition) error {
+	for i := range c.Ratings {
+		r := &c.Ratings[i]
+		for _, d := range ratings {
+			if r.Of == d.Name && !(r.Low > 0 && !math.IsInf(r.Low, 1)) {
+				return fmt.Errorf("%s: %s does not say what it stands; a rating is above zero, such as rated:%s=5%s", d.Name, r, d.Name, d.Unit.ASCII())
+			}
+		}
+	}
+	return nil
 }
 
 // Note is a reason that a person should know and no script needs to tell from others.

@@ -300,3 +300,32 @@ func FuzzWords(f *testing.F) {
 		}
 	})
 }
+
+// The program's rule: half of the lowest to twice the highest serviceable value, whatever a tolerance that nobody printed; a printed one
+// needs no such floor.
+func TestFloorOfAToleranceThatNobodyPrinted(t *testing.T) {
+	at := screening.At(screening.Frequency, 1e3)
+	none := completed(t, claim(100e-9, 0))
+	all := Floor(ServiceableCapacitance(none, at, Allowance{Ratio: 0.03, Source: screening.Source{Document: "test", Status: screening.Published}}))
+	if len(all) != 1 || !near(all[0].Low, 77e-9/2) || !near(all[0].High, 123e-9*2) || all[0].Source.Status != screening.House || all[0].Soft {
+		t.Errorf("100 nF, no tolerance: %+v", all)
+	}
+	printed := completed(t, tolerance(claim(100e-9, 0), -0.1, 0.1, "K"))
+	if all := Floor(ServiceableCapacitance(printed, at, Allowance{Ratio: 0.03, Source: screening.Source{Document: "test", Status: screening.Published}})); all != nil {
+		t.Errorf("a printed tolerance: %+v", all)
+	}
+}
+
+// A dead short draws 1 mA at most, and the resistor is sold for at least twice what it then takes, and rated for the voltage.
+func TestTheSeriesResistorStandsADeadShort(t *testing.T) {
+	if c := chargingOf(Unit{Farad: 1e-6}, 1); c.ohms != 10e3 {
+		t.Errorf("at 1 V: %v Ω, want 10 kΩ", c.ohms)
+	}
+	for volts, want := range map[float64]string{10: "0.25 W or more", 100: "0.25 W or more (0.1 W", 500: "1 W or more (0.5 W", 1000: "2 W or more (1 W"} {
+		c := chargingOf(Unit{Farad: 1e-6}, volts)
+		if c.supply/c.ohms > 1e-3*(1+1e-9) || !near(c.watts, volts*volts/c.ohms) || !strings.Contains(c.resistor(), want) ||
+			!strings.Contains(c.resistor(), "rated for "+quantity.Format(volts, quantity.Volt, 0)) {
+			t.Errorf("%v V: %+v, %s", volts, c, c.resistor())
+		}
+	}
+}

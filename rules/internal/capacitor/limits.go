@@ -69,7 +69,7 @@ func Floor(serviceable screening.Limit) []screening.Limit {
 	l := serviceable
 	l.Criterion, l.Grade, l.Soft = criterionPlain, screening.AnyGrade, false
 	l.Low, l.High = l.Low/plainly, l.High*plainly
-	l.Source = screening.Source{Document: "no tolerance is so wide: it is open, shorted, or another value", Status: screening.House}
+	l.Source = screening.Source{Document: "the program's rule: no tolerance is so wide: it is open, shorted, or another value", Status: screening.House}
 	l.Formula = func() string {
 		return fmt.Sprintf("half of %s to twice %s, whatever the tolerance", Farads(serviceable.Low), Farads(serviceable.High))
 	}

@@ -104,3 +104,60 @@ func TestESRAboveItsFrequencyOnlyRefutes(t *testing.T) {
 		t.Errorf("without a frequency: %q", c.Why)
 	}
 }
+
+func oxideRules(t *testing.T) *Rules {
+	t.Helper()
+	tables, err := Read(leakageCSV, lossCSV, figuresCSV, "any")
+	if err != nil {
+		t.Fatal(err)
+	}
+	return &Rules{
+		Span: capacitor.Span{Kind: "a part", Least: 1e-9, Most: 1}, Tables: tables, Technology: func(screening.Claim) string { return "any" },
+		LossNeed: func(screening.Claim) screening.Need { return screening.Wanted },
+	}
+}
+
+// Ten times the leakage limit is a short (the program's rule), on an ohms range and at rated voltage: 10 µF 16 V may leak 1.6 µA, so 16 µA is
+// one, or 1 MΩ.
+func TestTenTimesTheLeakageIsAShort(t *testing.T) {
+	rules := oxideRules(t)
+	u := capacitor.Unit{Farad: 10e-6, Volts: 16, Low: -0.2, High: 0.2}
+	all := rules.short(nil, "any", u)
+	if len(all) != 2 || all[0].On != screening.Resistance.Name || math.Abs(all[0].Low/1e6-1) > 1e-9 || all[1].On != screening.Leakage.Name ||
+		math.Abs(all[1].High/16e-6-1) > 1e-9 || all[1].Criterion != CriterionShort || all[1].Need != screening.Required {
+		t.Errorf("%+v", all)
+	}
+	// 1000 µF 6.3 V: 63 µA, ten times that at 6.3 V is 10 kΩ.
+	if big := rules.short(nil, "any", capacitor.Unit{Farad: 1e-3, Volts: 6.3}); math.Abs(big[0].Low/10e3-1) > 1e-9 {
+		t.Errorf("1000 µF: %v Ω", big[0].Low)
+	}
+}
+
+// Twice what a dead short puts into it, rounded up to what is sold.
+func TestTheResistorIsSoldForTwiceItsWatts(t *testing.T) {
+	for watts, want := range map[float64]string{0.1: "0.25 W", 0.2: "0.5 W", 0.4: "1 W", 1.4: "3 W", 4: "10 W", 6: "15 W"} {
+		if got := (Charging{Ohms: 1e3, Watts: watts}).Resistor(); !strings.Contains(got, ", "+want+" or more") {
+			t.Errorf("%v W: %s, want %s", watts, got, want)
+		}
+	}
+}
+
+// Surely beyond: with probability 0.95 (1.645 standard uncertainties, one-sided) and by more than the meter may be off.
+func TestSurelyBeyond(t *testing.T) {
+	for _, tc := range []struct {
+		x, u, spec   float64
+		above, below bool
+	}{
+		{12, 1, 0, true, false},
+		{11.5, 1, 0, false, false},
+		{11.5, 0, 1.6, false, false},
+		{11.7, 0, 1.6, true, false},
+		{8, 1, 0, false, true},
+		{8.5, 1, 0, false, false},
+	} {
+		r := &screening.Reading{Value: tc.x, U: tc.u, Spec: tc.spec}
+		if surelyAbove(r, 10) != tc.above || surelyBelow(r, 10) != tc.below {
+			t.Errorf("%+v: above %v, below %v", tc, surelyAbove(r, 10), surelyBelow(r, 10))
+		}
+	}
+}

@@ -117,16 +117,20 @@ func (r *Rules) Recipes(part screening.Part, l screening.Limit) []screening.Reci
 	return capacitor.Recipes(part, l, r.Span)
 }
 
+// shortByOhms: whatever an ohmmeter shows on a capacitor climbs towards its leak's resistance and never past it, so a reading that has passed
+// the limit proves it. A part that does not leak passes it within R·C of the limit, on a constant current as on a divider; one that stays below
+// has all but settled after five times that.
 func shortByOhms(u capacitor.Unit, l screening.Limit) screening.Recipe {
-	const meterOhms = 1e6 // what a pocket meter's highest range charges through, about (from memory)
-	settle := 5 * meterOhms * u.Top()
+	passes := l.Low * u.Top()
+	settle := 5 * passes
 	return screening.Recipe{
 		Title: "ohms range of a pocket meter", Source: book.Practice,
 		Lines: []string{
 			"discharge the part and read the volts that remain: 0 V, or the meter is gone",
-			"highest ohms range, the meter's plus probe to the part's plus (on some analogue meters the black one is plus); hands off the leads",
-			fmt.Sprintf("it starts low and climbs while the part charges: allow about %s, longer where it still climbs", waiting(settle)),
-			fmt.Sprintf("%s or more, or over-range, is no short; type resistance=… or resistance=OL", book.About(l.Low, quantity.Ohm)),
+			"auto range, or else the highest ohms range; the meter's plus probe to the part's plus (on some analogue meters the black one is plus); hands off the leads",
+			fmt.Sprintf("it starts low and climbs while the part charges, a sound one past %s within about %s: then it is no short; type resistance=>… "+
+				"with what it has reached, or resistance=OL", book.About(l.Low, quantity.Ohm), waiting(2*passes)),
+			fmt.Sprintf("where it still stands below that after %s, type what it shows", waiting(settle)),
 			"it shows a short, not that the part stands its voltage",
 		},
 		Values: map[string]float64{"resistance-at-limit": l.Low, "charge-time": settle},

@@ -32,14 +32,6 @@ func ChannelField() screening.Field {
 // Channel returns N, P, or "" where neither is claimed.
 func Channel(c screening.Claim) string { return c.Trait(TraitChannel) }
 
-// Signs says which of two leads is plus of a channel: drain or source with a drain voltage, gate or source with a gate voltage.
-func Signs(c screening.Claim, ofN, ofP string) string {
-	if Channel(c) == P {
-		return ofP
-	}
-	return ofN
-}
-
 // Ends orders two leads by sign: plus then minus for an n-channel part, turned for a p-channel one.
 func Ends(c screening.Claim, plus, minus string) (string, string) {
 	if Channel(c) == P {
@@ -149,4 +141,43 @@ func GateLeakage(r screening.Reading, l screening.Limit, across screening.Variab
 	}
 	c.Reading.Rule = c.Rule
 	return c
+}
+
+var thresholdGrows = screening.Source{Document: "a threshold is a function of its test current: with more it is no less", Status: screening.Derived}
+
+// Threshold takes a threshold at another current for the bound that it is. from and to are the currents, A, for which a limit holds as it
+// stands; both 0 where it holds at its own alone.
+func Threshold(r screening.Reading, l screening.Limit, current screening.Variable, from, to float64) screening.Conversion {
+	got, stated := r.At.Get(current)
+	want, _ := l.At.Get(current)
+	c := screening.Conversion{OK: true, Reading: r, Source: thresholdGrows}
+	c.Reading.At = l.At
+	switch {
+	case !stated:
+		return screening.Conversion{Why: "the current of the reading is not stated: " + string(l.On) + "@" + Typed(want, quantity.Ampere) + "=…"}
+	case to > 0 && got >= from && got <= to:
+		c.Rule = "the limit holds from " + Amps(from) + " to " + Amps(to)
+	case got < want && r.Sense != quantity.AtMost:
+		c.Reading.Sense, c.Rule = quantity.AtLeast, "at "+Amps(want)+" it is no less than at "+Amps(got)
+	case got > want && r.Sense != quantity.AtLeast:
+		c.Reading.Sense, c.Rule = quantity.AtMost, "at "+Amps(want)+" it is no more than at "+Amps(got)
+	default:
+		return screening.Conversion{Why: "taken at " + Amps(got) + ", which says nothing of " + Amps(want)}
+	}
+	c.Reading.Rule = c.Rule
+	return c
+}
+
+// The currents for which the threshold of any type holds, A (house): a battery and a resistor set them.
+const ThresholdFrom, ThresholdTo = 0.2e-3, 1.25e-3
+
+// Middle is the middle of a limit, or the bound that it has.
+func Middle(l screening.Limit) float64 {
+	switch {
+	case math.IsInf(l.Low, -1):
+		return l.High
+	case math.IsInf(l.High, 1):
+		return l.Low
+	}
+	return (l.Low + l.High) / 2
 }

@@ -227,18 +227,6 @@ func StandsIn(unit quantity.Unit) func(string) (low, high float64, ok bool) {
 	}
 }
 
-// TypeField is the claim of a type number that the table holds.
-func TypeField(t *types.Table, kind screening.Kind, example string) screening.Field {
-	return screening.Field{
-		Definition: book.Trait(screening.TraitType, "type"), Trait: true, Example: example,
-		Help: "the type number as printed; a known one says all the rest",
-		AcceptText: func(word string) (string, bool) {
-			row, ok := t.Lookup(kind, word)
-			return row.Type, ok
-		},
-	}
-}
-
 // PinoutField is the order of the leads, which makers of one type do not agree on.
 func PinoutField(example string) screening.Field {
 	return screening.Field{
@@ -253,11 +241,6 @@ func TemperatureField() screening.Field {
 		Definition: screening.Temperature, PerPart: true, Example: "temperature=22C", Effort: 10 * time.Second,
 		Help: "of the part, lying in the room",
 	}
-}
-
-// UnknownType notes that a claim's type is in no table, what to claim of it, and what there is to ask.
-func UnknownType(t *types.Table, kind screening.Kind, c screening.Claim, say string) screening.Reason {
-	return t.UnknownNote("", kind, c, "type "+c.Trait(screening.TraitType)+" is not in the table: claim what its sheet says, such as "+say)
 }
 
 // Say adds notes, each once.

@@ -31,9 +31,14 @@ func Complete(t *types.Table, kind screening.Kind, c screening.Claim, hint strin
 	}
 	row, ok := t.Lookup(kind, name)
 	if !ok {
-		return c, []screening.Reason{t.UnknownNote("", kind, c, "type "+name+" is not in the table: claim what its sheet says, such as "+hint)}
+		return c, []screening.Reason{Unknown(t, kind, c, hint)}
 	}
 	return fill(c, row), nil
+}
+
+// Unknown notes that a claim's type is in no table, what to claim of it instead, and what there is to ask.
+func Unknown(t *types.Table, kind screening.Kind, c screening.Claim, hint string) screening.Reason {
+	return t.UnknownNote("", kind, c, "type "+c.Trait(screening.TraitType)+" is not in the table: claim what its sheet says, such as "+hint)
 }
 
 func fill(c screening.Claim, row types.Row) screening.Claim {
