@@ -196,7 +196,7 @@ func partsOf(tx *bolt.Tx, lot uint32) ([]Part, error) {
 // Claimed returns the part with the claim and kind that it is to be judged by: its own, or its lot's where it has none.
 func Claimed(p Part, l Lot) screening.Part {
 	held := p.Part
-	if held.Claim.IsZero() && !l.Mixed {
+	if held.Claim.IsZero() && !l.Mixed && p.Header == "" { // the header "nothing" is a claim of its own, of nothing
 		held.Claim = l.Claim
 	}
 	if held.Kind == "" {

@@ -124,8 +124,12 @@ func (s *snapshot) apply(changes []rowChange) error {
 // row makes a line of the list.
 func (s *snapshot) row(i int) Row {
 	r := &s.rows[i]
+	title := s.texts[r.title].shown
+	if title == "" || title == "nothing" {
+		title = "nothing claimed"
+	}
 	return Row{
-		ID: idPacked(r.id), Kind: screening.Kind(s.texts[r.kind].shown), Title: s.texts[r.title].shown, Verdict: r.verdict, Grade: r.grade,
+		ID: idPacked(r.id), Kind: screening.Kind(s.texts[r.kind].shown), Title: title, Verdict: r.verdict, Grade: r.grade,
 		As: s.texts[r.as].shown, Place: s.texts[r.place].shown, Why: s.texts[r.why].shown, NotTested: s.texts[r.notTest].shown,
 		Count: Count{N: int(r.count), Level: r.level}, Left: int(r.left), Stale: r.stale,
 	}

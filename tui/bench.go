@@ -90,14 +90,14 @@ func (b *bench) about() []string {
 				"the field; 2010u, 2,01m and 4k7 work as well, as do <0.1uA, >400V and OL. Several values separated by spaces are a series. " +
 				"A condition follows an at sign: 61m@120Hz. NAME=VALUE gives a reading that was not asked for; temperature=24C holds for " +
 				"the parts that follow as well, until another one is typed. treated=1 says that a part was re-formed or dried, once.",
-			"Looks are answered with 0 (no) and 1 (yes); 00 says no to every look that is left.",
+			"A look is answered with the digits of what you see, 24 for the second and the fourth, or 0 for nothing; F5 says what each means.",
 			"A sign alone and then Enter is a command, so that the numeric pad does everything. Every answer is on the disk before the next " +
 				"question appears.",
 		}
 		if b.d.ring != nil {
 			about = append(about, "The bell rings once for accept, twice for regrade, then three times for treat, four for undecided, five for barred, six for reject.")
 		}
-		return append(about, "Judged by the tables: "+b.d.tables+".")
+		return append(about, "Judged by the tables "+b.grid.book.Tables+".")
 	}
 	return []string{"Every lot of the workbook, the last one first."}
 }

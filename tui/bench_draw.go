@@ -61,7 +61,7 @@ func (g *grid) addColumn(of screening.Characteristic, section string) {
 
 // The widths of the grid's columns.
 const (
-	lookW    = 5
+	lookW    = 7
 	claimsW  = 16
 	cellW    = 9
 	cellsW   = 13 // of a reading of several sections
@@ -177,15 +177,21 @@ func (r gridRows) verdict(i int, p inventory.Part) string {
 	return t.verdictWord(p.Outcome.Verdict)
 }
 
+// look is what was seen, by the digit keys of the look.
 func (r gridRows) look(p inventory.Part) string {
-	text := ""
-	for _, o := range p.Part.Look {
-		if o.Fault {
-			return "seen"
-		}
-		text = "ok"
+	if len(p.Part.Look) == 0 {
+		return ""
 	}
-	return text
+	digits := ""
+	for i, c := range r.g.book.Look {
+		if fault, _ := p.Part.Seen(c.Name); fault {
+			digits += strconv.Itoa(i + 1)
+		}
+	}
+	if digits == "" {
+		return "ok"
+	}
+	return "saw " + digits
 }
 
 // value is a reading in its cell: of one section where that is in hand, else of all: "8.4+9.1 µF".

@@ -84,7 +84,7 @@ func (b *bench) headerHint() string {
 	if book, err := kindFor(b.d.kinds, b.form.text(fieldKind)); err == nil {
 		example = book.ExampleClaim()
 	}
-	return "as printed, such as " + example + "; empty: a tin of mixed parts, each with a claim of its own"
+	return "as printed, such as " + example + "; empty: a tin of mixed parts"
 }
 
 // kindFor finds the kind of a word or of its first letters.

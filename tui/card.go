@@ -72,6 +72,13 @@ func (t *theme) openLines(c cardData, w int) []string {
 			lines = append(lines, t.error.paint(fit(t.clean(r.Text), w, t.g.more)))
 		}
 	}
+	for _, s := range c.judged.Stops { // what holds the verdict is best seen to before the readings
+		if s.Verdict == screening.Undecided && s.Do != "" {
+			for _, l := range wrapHang(t.g.marker+" ", t.clean(s.Do), w, 2, t.g.more) {
+				lines = append(lines, t.strong.paint(l))
+			}
+		}
+	}
 	return lines
 }
 
@@ -207,7 +214,7 @@ func urgency(f screening.Finding) int {
 // many lines as are left for each.
 func (t *theme) findingLines(c cardData, w, h int) []string {
 	heads := headlines(c.judged, c.asked)
-	if len(c.judged.Stops) > 0 { // what was not measured does not matter any more
+	if settled(c.judged.Stops) { // what was not measured does not matter any more
 		heads = slices.DeleteFunc(heads, func(f screening.Finding) bool { return f.Evidence() == nil })
 	}
 	if len(heads) == 0 || h <= 0 {
@@ -234,6 +241,11 @@ func (t *theme) findingLines(c cardData, w, h int) []string {
 		}
 	}
 	return lines[:min(len(lines), h)]
+}
+
+// settled reports whether a stop decides for good; one that only holds the verdict, as in circuit, leaves the readings to be taken.
+func settled(stops []screening.Stop) bool {
+	return slices.ContainsFunc(stops, func(s screening.Stop) bool { return s.Verdict != screening.Undecided })
 }
 
 // finding shows one limit in full: what was read, the scale, the rule with its numbers, the source.

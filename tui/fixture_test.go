@@ -128,7 +128,7 @@ func newTestModel(t testing.TB, wb *inventory.Workbook, ascii bool) *model {
 	ctx, cancel := context.WithCancel(context.Background())
 	t.Cleanup(cancel)
 	d := &desk{
-		wb: wb, kinds: screening.Kinds{can()}, policy: screening.DefaultPolicy(), now: newClock().now, t: testTheme(ascii), ctx: ctx, tables: "tests 1",
+		wb: wb, kinds: screening.Kinds{can()}, policy: screening.DefaultPolicy(), now: newClock().now, t: testTheme(ascii), ctx: ctx,
 	}
 	m := newModel(d, "test workbook", false)
 	m.messages.keep = 0

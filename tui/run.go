@@ -17,7 +17,6 @@ type Options struct {
 	Workbook     *inventory.Workbook // opened, and closed by the caller after Run has returned
 	WorkbookName string              // shown in the header
 	Kinds        screening.Kinds     // the table of all rulebooks
-	Tables       string              // version of their tables, shown in the help
 	Policy       screening.Policy
 	Now          func() time.Time // the clock; nil is time.Now
 
@@ -53,7 +52,7 @@ func Run(ctx context.Context, o Options) error {
 	defer cancel()
 	out := withCursor(o.Out)
 	d := &desk{
-		wb: o.Workbook, kinds: o.Kinds, policy: o.Policy, now: o.Now, ctx: ctx, t: newTheme(o.Out, o.ASCII, o.NoColor), tables: o.Tables, meanings: o.Meanings,
+		wb: o.Workbook, kinds: o.Kinds, policy: o.Policy, now: o.Now, ctx: ctx, t: newTheme(o.Out, o.ASCII, o.NoColor), meanings: o.Meanings,
 	}
 	if d.now == nil {
 		d.now = time.Now

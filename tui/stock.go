@@ -77,7 +77,7 @@ func (s *stock) query() tea.Cmd {
 	}
 	s.busy, s.dirty = true, false
 	return s.d.find(inventory.Query{
-		Words: strings.Fields(s.in.String()), Usable: s.usable,
+		Words: strings.Fields(strings.TrimPrefix(s.in.String(), "/")), Usable: s.usable,
 		Offset: max(0, s.table.at-listStretch/2), Limit: listStretch,
 	}, s.generation)
 }

@@ -47,11 +47,12 @@ func (r stockRows) cells(i int, dst []string) {
 	default:
 		what += " (" + row.As + ")"
 	}
+	what = string(row.Kind) + " " + what // "red" or "12 V" says little by itself
 	note := row.Why
 	if row.NotTested != "" {
 		note = "not tested: " + row.NotTested
 	}
-	texts := [...]string{row.ID.String(), verdict, what, left, row.Place, string(row.Kind), note}
+	texts := [...]string{row.ID.String(), verdict, what, left, row.Place, note}
 	for c := range dst {
 		dst[c] = t.clean(texts[c])
 	}
@@ -66,15 +67,11 @@ func stockColumns(w int) []column {
 		cols[2].w = rest
 		return cols
 	}
-	place := min(18, rest/3)
-	what := min(40, rest-place-1)
+	place := min(16, rest/4)
+	what := min(54, rest-place-1)
 	cols[2].w = what
 	cols = append(cols, column{title: "place", w: place})
 	rest -= what + place + 1
-	if rest >= 15 {
-		cols = append(cols, column{title: "kind", w: 13})
-		rest -= 14
-	}
 	if rest >= 20 {
 		cols = append(cols, column{title: "note", w: rest - 1})
 	}

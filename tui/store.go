@@ -25,7 +25,6 @@ type desk struct {
 	t        *theme
 	messages *messages
 	ring     func(times int) tea.Cmd // nil: no bell
-	tables   string                  // version of the tables
 	meanings func(string) []Meaning  // what a marking may mean; nil: markings are not read
 
 	ctx     context.Context

@@ -93,20 +93,11 @@ func (a *app) showPages(ctx context.Context, bell bool) error {
 			name = "demo"
 		}
 		return tui.Run(ctx, tui.Options{
-			Workbook: w, WorkbookName: name, Kinds: a.books, Tables: a.tablesText(), Policy: screening.DefaultPolicy(), Now: a.env.Now, Meanings: a.meanings,
+			Workbook: w, WorkbookName: name, Kinds: a.books, Policy: screening.DefaultPolicy(), Now: a.env.Now, Meanings: a.meanings,
 			ASCII: a.env.ascii, NoColor: a.env.plain, Bell: bell, Demo: a.demo, In: a.env.In, Out: a.env.Out,
 			Width: a.env.Width, Height: a.env.Height,
 		})
 	})
-}
-
-// tablesText lists the versions of the tables.
-func (a *app) tablesText() string {
-	var versions []string
-	for _, b := range a.books {
-		versions = append(versions, b.Tables)
-	}
-	return strings.Join(versions, ", ")
 }
 
 // maxAnswer bounds one line that is typed.

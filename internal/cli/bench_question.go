@@ -95,10 +95,25 @@ func (l *lines) skip(q screening.Question) error {
 
 func (l *lines) look(faults []string) error {
 	l.walk.SeeAll(faults)
-	if len(faults) > 0 {
-		return l.save("seen: " + strings.Join(faults, ", "))
+	if len(faults) == 0 {
+		return l.save("looked: nothing seen")
 	}
-	return l.save("looked: nothing seen")
+	if err := l.save("seen: " + strings.Join(faults, ", ")); err != nil || l.walk.Stopped() {
+		return err
+	}
+	j, err := l.walk.Judgement()
+	if err != nil {
+		return nil // what cannot be judged yet is said where the verdict is
+	}
+	for _, s := range j.Stops { // what holds the verdict is best seen to before the readings
+		if s.Verdict != screening.Undecided || s.Do == "" {
+			continue
+		}
+		if err := l.say("%s", s.Do); err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 // claim adds one rating or trait that was missing; the part then has a claim of its own.

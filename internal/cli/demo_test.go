@@ -15,6 +15,7 @@ import (
 	"github.com/google/go-cmp/cmp"
 
 	"goodbin/inventory"
+	"goodbin/rules"
 	"goodbin/screening"
 )
 
@@ -92,30 +93,72 @@ func screenDemo(t *testing.T) (parts map[string]*screenedPart, last *screenedPar
 	return parts, last
 }
 
+// demoCounts is what the parts of each kind end in. A kind whose verdicts change needs another look at its parts in the box.
+var demoCounts = map[string]string{
+	"electrolytic":       "21 parts: 9 accept, 1 regrade, 2 treat, 4 undecided, 1 barred, 4 reject",
+	"tantalum":           "8 parts: 3 accept, 2 undecided, 1 barred, 2 reject",
+	"polymer":            "5 parts: 2 accept, 1 undecided, 1 barred, 1 reject",
+	"film":               "8 parts: 3 accept, 1 regrade, 1 undecided, 1 barred, 2 reject",
+	"paper":              "5 parts: 1 accept, 1 undecided, 2 barred, 1 reject",
+	"mica":               "5 parts: 1 accept, 1 regrade, 1 undecided, 1 barred, 1 reject",
+	"ceramic":            "8 parts: 3 accept, 1 regrade, 1 undecided, 1 barred, 2 reject",
+	"mains-capacitor":    "5 parts: 5 barred",
+	"variable-capacitor": "8 parts: 3 accept, 1 regrade, 2 undecided, 1 barred, 1 reject",
+	"diode":              "12 parts: 6 accept, 1 undecided, 1 barred, 4 reject",
+	"zener":              "9 parts: 3 accept, 3 regrade, 1 undecided, 1 barred, 1 reject",
+	"bridge":             "5 parts: 1 accept, 1 undecided, 1 barred, 2 reject",
+	"led":                "8 parts: 4 accept, 1 regrade, 1 undecided, 1 barred, 1 reject",
+	"selenium":           "2 parts: 2 barred",
+	"bipolar":            "18 parts: 6 accept, 1 regrade, 6 undecided, 2 barred, 3 reject",
+	"jfet":               "6 parts: 2 accept, 1 regrade, 1 undecided, 1 barred, 1 reject",
+	"mosfet":             "6 parts: 2 accept, 1 undecided, 1 barred, 2 reject",
+	"igbt":               "4 parts: 1 accept, 1 undecided, 1 barred, 1 reject",
+	"thyristor":          "5 parts: 1 accept, 1 undecided, 1 barred, 2 reject",
+	"triac":              "4 parts: 1 accept, 1 undecided, 1 barred, 1 reject",
+	"resistor":           "14 parts: 4 accept, 3 regrade, 1 treat, 2 undecided, 2 barred, 2 reject",
+	"potentiometer":      "7 parts: 3 accept, 1 regrade, 1 undecided, 1 barred, 1 reject",
+	"thermistor":         "5 parts: 1 accept, 1 regrade, 1 undecided, 1 barred, 1 reject",
+	"varistor":           "4 parts: 1 accept, 1 undecided, 1 barred, 1 reject",
+	"inductor":           "7 parts: 2 accept, 1 regrade, 1 undecided, 1 barred, 2 reject",
+	"transformer":        "4 parts: 1 accept, 1 undecided, 1 barred, 1 reject",
+	"relay":              "4 parts: 1 accept, 1 undecided, 1 barred, 1 reject",
+	"optocoupler":        "6 parts: 2 accept, 1 regrade, 1 undecided, 1 barred, 1 reject",
+	"regulator":          "5 parts: 2 accept, 1 undecided, 1 barred, 1 reject",
+	"unknown":            "5 parts: 3 undecided, 1 barred, 1 reject",
+}
+
 func TestDemoBoxHoldsEveryKindAndEveryVerdict(t *testing.T) {
 	parts, last := screenDemo(t)
-	got := map[string]map[string]int{}
+	got := map[string]map[screening.Verdict]int{}
+	total := map[string]int{}
 	for _, p := range parts {
-		if got[p.Kind] == nil {
-			got[p.Kind] = map[string]int{}
+		v, ok := screening.VerdictNamed(p.Verdict)
+		if !ok {
+			t.Fatalf("part %s ends in %q", p.id(), p.Verdict)
 		}
-		got[p.Kind][p.Verdict]++
+		if got[p.Kind] == nil {
+			got[p.Kind] = map[screening.Verdict]int{}
+		}
+		got[p.Kind][v]++
+		total[p.Verdict]++
 	}
-	want := map[string]map[string]int{
-		"electrolytic": {"accept": 8, "regrade": 1, "treat": 2, "undecided": 2, "barred": 1, "reject": 4},
-		"diode":        {"accept": 6, "undecided": 1, "barred": 1, "reject": 4},
-		"zener":        {"accept": 3, "regrade": 3, "undecided": 1, "reject": 1},
-		"bipolar":      {"accept": 5, "regrade": 1, "undecided": 5, "reject": 3},
-		"resistor":     {"accept": 3, "regrade": 3, "treat": 1, "barred": 2, "reject": 2},
+	counts := map[string]string{}
+	for kind, verdicts := range got {
+		n := 0
+		for _, of := range verdicts {
+			n += of
+		}
+		counts[kind] = countsText(n, 0, func(v screening.Verdict) int { return verdicts[v] })
 	}
-	if diff := cmp.Diff(want, got); diff != "" {
+	if diff := cmp.Diff(demoCounts, counts); diff != "" {
 		t.Errorf("parts by kind and verdict (-want +got):\n%s", diff)
 	}
-	total := map[string]int{}
-	for _, v := range screening.Verdicts() {
-		for _, verdicts := range want {
-			total[v.String()] += verdicts[v.String()]
+	for _, b := range rules.All() {
+		if got[string(b.Kind)] == nil {
+			t.Errorf("no part of the box is of kind %s", b.Kind)
 		}
+	}
+	for _, v := range screening.Verdicts() {
 		if total[v.String()] == 0 {
 			t.Errorf("no part of the box ends in %s", v)
 		}
@@ -128,46 +171,36 @@ func TestDemoBoxHoldsEveryKindAndEveryVerdict(t *testing.T) {
 	}
 }
 
-// demoVerdicts is what a practitioner would say of these parts, and the code under which the program must say why.
-var demoVerdicts = []struct {
-	name, id, verdict, grade string
-	code                     string // of a reason or of a next step
-	of                       string // of the next step's reading, where one is asked for
-	as                       string // begins what it is held as
-}{
-	{name: "2200 µF that reads as new", id: "1-01", verdict: "accept", grade: "within-spec", code: screening.CodePasses},
-	{name: "worn, inside twice the new ESR", id: "1-03", verdict: "accept", grade: "serviceable", code: screening.CodePasses},
-	{name: "only an ESR at 100 kHz, well below half the limit", id: "1-04", verdict: "accept", grade: "serviceable", code: screening.CodePasses},
-	{name: "dried out at 35 V: no lower voltage helps", id: "1-05", verdict: "reject", code: screening.CodeFails},
-	{name: "vented", id: "1-06", verdict: "reject", code: screening.CodeStop},
-	{name: "no loss measured", id: "1-07", verdict: "undecided", code: screening.CodeMeasure, of: "esr"},
-	{name: "high and leaky, of 2003", id: "2-02", verdict: "undecided", code: "electrolyte-fault-era"},
-	{name: "the same: no reading settles it, its series does", id: "2-02", verdict: "undecided", code: screening.CodeMeasure, of: "series"},
-	{name: "one leaky section of a two-section can of 1962", id: "3-02", verdict: "treat", code: screening.CodeTreatFirst},
-	{name: "one open section of a two-section can", id: "3-03", verdict: "reject", code: screening.CodeFails},
-	{name: "450 V can that holds at 350 V after two re-formings", id: "4-02", verdict: "regrade", code: screening.CodeLesserClaim, as: "for use up to 350 V"},
-	{name: "450 V can that leaks at both after two re-formings", id: "4-03", verdict: "reject", code: screening.CodeTreatedBefore},
-	{name: "carbon film 9 % high", id: "5-02", verdict: "regrade", code: screening.CodeLesserClaim, as: "as measured, 5.14 kΩ ±5 %"},
-	{name: "open resistor", id: "5-04", verdict: "reject", code: screening.CodeFails},
-	{name: "carbon composition 20 % high, never dried", id: "6-02", verdict: "treat", code: screening.CodeTreatFirst},
-	{name: "carbon composition dried and still 15 % high", id: "6-03", verdict: "regrade", code: screening.CodeTreatedBefore, as: "±20 %"},
-	{name: "1 % part on a 1 % meter", id: "7-01", verdict: "accept", grade: "within-spec", code: screening.CodeToleranceProven, as: "±2 % proven"},
-	{name: "transistor without its leakage", id: "8-02", verdict: "undecided", code: screening.CodeMeasure, of: "iceo"},
-	{name: "group B that is a group A", id: "9-02", verdict: "regrade", code: screening.CodeLesserClaim, as: "BC547 group A"},
-	{name: "germanium without its temperature", id: "10-02", verdict: "undecided", code: screening.CodeMeasure, of: "iceo"},
-	{name: "germanium that leaks 1.9 mA at 20 °C", id: "10-03", verdict: "reject", code: screening.CodeFails},
-	{name: "germanium still warm from the fingers", id: "10-04", verdict: "undecided", code: screening.CodeMeasure, of: "iceo"},
-	{name: "power Darlington on a pocket tester", id: "11-02", verdict: "undecided", code: screening.CodeMeasure, of: "hfe"},
-	{name: "1000 V diode that blocks 30 V, all there was", id: "12-01", verdict: "accept", grade: "within-spec", code: screening.CodePasses},
-	{name: "1000 V diode that breaks down at 250 V", id: "12-03", verdict: "reject", code: screening.CodeFails},
-	{name: "cracked diode that reads well", id: "12-04", verdict: "barred", code: screening.CodeStop},
-	{name: "diode never turned round", id: "13-02", verdict: "undecided", code: screening.CodeMeasure, of: "vbr"},
-	{name: "dual diode with one half shorted", id: "14-02", verdict: "reject", code: screening.CodeFails},
-	{name: "C5V1 that reads 4.79 V, 10 mV out, on a 1 % meter", id: "16-02", verdict: "accept", code: screening.CodeToleranceProven, as: "reads outside 4.8 V to 5.4 V; accepted at ±10 %"},
-	{name: "C5V1 that reads 6.21 V", id: "16-03", verdict: "reject", code: screening.CodeFails},
-	{name: "unmarked Zener", id: "19-01", verdict: "regrade", code: screening.CodeLesserClaim, as: "unmarked, as measured, 8.24 V"},
-	{name: "unmarked Zener, current not written down", id: "19-02", verdict: "undecided", code: screening.CodeMeasure, of: "vz"},
-	{name: "resistor from across the mains", id: "20-01", verdict: "barred", code: screening.CodeStop},
+// The central tests of the rulebooks hold a part for every verdict that a kind can give; a newcomer should meet each in the box.
+func TestDemoBoxShowsEveryVerdictThatAKindCanGive(t *testing.T) {
+	parts, _ := screenDemo(t)
+	shown := map[string]bool{}
+	for _, p := range parts {
+		shown[p.Kind+" "+p.Verdict] = true
+	}
+	for _, b := range rules.All() {
+		text, err := os.ReadFile(filepath.Join("../../rules/testdata/kinds", string(b.Kind)+".csv"))
+		if err != nil {
+			t.Fatal(err)
+		}
+		rows, err := csv.NewReader(bytes.NewReader(text)).ReadAll()
+		if err != nil {
+			t.Fatalf("%s: %v", b.Kind, err)
+		}
+		verdicts := 0
+		for _, row := range rows {
+			if _, ok := screening.VerdictNamed(row[0]); !ok || row[1] == "" {
+				continue
+			}
+			verdicts++
+			if !shown[string(b.Kind)+" "+row[0]] {
+				t.Errorf("a %s can end in %s, such as %q, and none of the box does", b.Kind, row[0], row[1])
+			}
+		}
+		if verdicts == 0 {
+			t.Errorf("%s.csv holds no part with a verdict", b.Kind)
+		}
+	}
 }
 
 func TestDemoPartsGetTheVerdictThatTheirReadingsDeserve(t *testing.T) {
@@ -218,8 +251,9 @@ func TestDemoBoxShowsWhatAMeterShows(t *testing.T) {
 		for _, r := range p.Readings {
 			seen["over-range"] = seen["over-range"] || r.Over
 			seen["repeats"] = seen["repeats"] || len(r.Repeats) > 1
-			seen["a section of a can"] = seen["a section of a can"] || p.Kind == "electrolytic" && r.Section == "2"
-			seen["the second diode"] = seen["the second diode"] || p.Kind == "diode" && r.Section == "2"
+			if r.Section != "" {
+				seen["sections: "+p.Kind] = true
+			}
 			if !r.Over {
 				seen[r.Sense] = true
 			}
@@ -232,10 +266,34 @@ func TestDemoBoxShowsWhatAMeterShows(t *testing.T) {
 		}
 	}
 	want := []string{
-		"ESR at 100 kHz", "a section of a can", "a temperature", "at least", "at most", "exactly", "over-range", "repeats", "the second diode",
+		"ESR at 100 kHz", "a temperature", "at least", "at most", "exactly", "over-range", "repeats", "sections: bridge",
+		"sections: diode", "sections: electrolytic", "sections: potentiometer", "sections: relay", "sections: transformer",
+		"sections: triac", "sections: unknown", "sections: variable-capacitor",
 	}
 	if diff := cmp.Diff(want, slices.Sorted(maps.Keys(seen))); diff != "" {
 		t.Errorf("readings in the box (-want +got):\n%s", diff)
+	}
+}
+
+// What holds for every kind can be seen on some part of the box.
+func TestDemoBoxShowsWhatEyesFind(t *testing.T) {
+	box, err := os.ReadFile(demoBoxFile)
+	if err != nil {
+		t.Fatal(err)
+	}
+	rows, err := csv.NewReader(bytes.NewReader(box)).ReadAll()
+	if err != nil {
+		t.Fatal(err)
+	}
+	column := slices.Index(rows[0], "seen")
+	found := map[string]bool{}
+	for _, row := range rows[1:] {
+		found[row[column]] = true
+	}
+	for _, word := range []string{"", "nothing", "mains", "cracked", "in-circuit", "intermittent", "poor-leads"} {
+		if !found[word] {
+			t.Errorf("no part of the box has seen=%s", word)
+		}
 	}
 }
 

@@ -123,6 +123,9 @@ func (x *exporter) row(p inventory.Part) []string {
 	if claim == "" {
 		claim = lot.Header
 	}
+	if claim == "" { // or it would take over what the part above it claims when it is screened again
+		claim = "nothing"
+	}
 	place := p.Place
 	if place == "" {
 		place = lot.Place
@@ -162,8 +165,9 @@ func (x *exporter) row(p inventory.Part) []string {
 // seenText writes looks as the seen column takes them.
 func seenText(book *screening.Rulebook, look []screening.Observation) string {
 	var words []string
+	part := screening.Part{Look: look} // the last look counts
 	for _, o := range look {
-		if o.Fault {
+		if fault, _ := part.Seen(o.Check); fault && !slices.Contains(words, o.Check) {
 			words = append(words, o.Check)
 		}
 	}

@@ -35,13 +35,13 @@ func (a *app) listFamilies(words []string) error {
 	return nil
 }
 
-// matchesFamily reports whether every word is a kind of the family or stands in what is said of it.
+// matchesFamily reports whether every word is a kind or a type number of the family or stands in what is said of it.
 func matchesFamily(f *family.Family, words []string) bool {
 	said := strings.ToLower(strings.Join([]string{
 		f.ID, f.Label, f.List.String(), kindsOf(f), strings.Join(f.Types, " "), f.Scope(), string(f.Dispose), f.Reason, f.Source.String(),
 	}, " "))
 	for _, w := range words {
-		if !strings.Contains(said, strings.ToLower(w)) {
+		if !strings.Contains(said, strings.ToLower(w)) && !f.NamesType(w) {
 			return false
 		}
 	}

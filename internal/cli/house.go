@@ -28,7 +28,7 @@ func (a *app) loadHouse(command string) {
 	}
 	h, err := inventory.ReadHouse(path)
 	switch {
-	case errors.Is(err, inventory.ErrNotFound):
+	case errors.Is(err, inventory.ErrNotFound) || err == nil && h.IsZero():
 	case err == nil:
 		a.useHouse(h)
 	case errors.Is(err, inventory.ErrCorrupt) || errors.Is(err, inventory.ErrBusy) || slices.Contains(leaveWorkbook, command):

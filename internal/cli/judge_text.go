@@ -21,7 +21,11 @@ func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, pa
 	if err := e.strong(verdictLine(j)); err != nil {
 		return err
 	}
-	if err := e.line("%s: %s", book.Label, parsed.Claim); err != nil {
+	title := book.Label
+	if claim := parsed.Claim.String(); claim != "" {
+		title += ": " + claim
+	}
+	if err := e.line("%s", title); err != nil {
 		return err
 	}
 	if err := a.printOfType(book, &j, parsed.Claim); err != nil {

@@ -69,7 +69,13 @@ func (a *app) marking(printed, kind string) error {
 	case a.json:
 		return nil
 	}
-	return a.printMeanings(printed, meanings)
+	if err := a.printMeanings(printed, meanings); err != nil {
+		return err
+	}
+	if hint := a.typeNumberHint(printed); hint != "" {
+		a.env.note("goodbin: hint: %s", hint)
+	}
+	return nil
 }
 
 // unknownMarking reports that a text was readable and has no meaning.

@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"slices"
 	"strings"
 
 	"goodbin/rules/marking"
@@ -61,6 +62,33 @@ func (a *app) typesNamed(text string) []tui.Meaning {
 		all = append(all, tui.Meaning{
 			Kind: book.Kind, Header: word, Text: strings.Join(says, " "), Source: "type number, " + row.Source.Status.String(),
 		})
+	}
+	if all == nil {
+		return a.typesGuessed(word)
+	}
+	return all
+}
+
+// typesGuessed lists the kinds that a type number of no table may be, by its shape: the number is claimed and nothing that is guessed of it,
+// so that a family that bars it is told before anything is measured.
+func (a *app) typesGuessed(word string) []tui.Meaning {
+	var all []tui.Meaning
+	for _, g := range a.types.Guess(word) {
+		kinds := g.Kinds
+		if g.Material == "ge" && len(kinds) > 1 {
+			kinds = kinds[:1] // germanium field-effect transistors were not sold
+		}
+		for _, kind := range kinds {
+			book, ok := a.books.Find(kind)
+			if !ok || slices.ContainsFunc(all, func(m tui.Meaning) bool { return m.Kind == kind }) {
+				continue
+			}
+			header := screening.TraitType + "=" + word
+			if _, err := entry.Words(book, []string{header}); err != nil {
+				continue
+			}
+			all = append(all, tui.Meaning{Kind: kind, Header: header, Text: g.Is, Source: g.Scheme + ", in no table"})
+		}
 	}
 	return all
 }

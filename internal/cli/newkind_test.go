@@ -27,8 +27,10 @@ func sundial() *screening.Rulebook {
 		Kind: "sundial", Label: "sundial of an invented make", Tables: "sundial-1",
 		Claims: []screening.Field{
 			{Definition: angle, Required: true, Example: "150Hz", Help: "as engraved"},
-			{Definition: screening.Definition{Name: "stone", Label: "stone"}, Trait: true, Example: "slate", Help: "what it is made of",
-				Words: []screening.Word{{Word: "slate", Text: "slate"}, {Word: "chalk", Text: "chalk"}}},
+			{
+				Definition: screening.Definition{Name: "stone", Label: "stone"}, Trait: true, Example: "slate", Help: "what it is made of",
+				Words: []screening.Word{{Word: "slate", Text: "slate"}, {Word: "chalk", Text: "chalk"}},
+			},
 		},
 		Bench: []screening.Field{{Definition: shadow, Example: "shadow/am=1.000", Help: "at noon", FollowsNominal: true}},
 		Look: []screening.Check{

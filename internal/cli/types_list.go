@@ -7,6 +7,7 @@ import (
 
 	"github.com/spf13/cobra"
 
+	"goodbin/rules/family"
 	"goodbin/rules/types"
 	"goodbin/screening"
 )
@@ -260,6 +261,17 @@ func (a *app) showGuess(word string) error {
 	for _, trap := range types.Traps(word) {
 		if err := a.env.wrapped("  trap    ", trap.Text+"; "+trap.Source.String()); err != nil {
 			return err
+		}
+	}
+	families, err := a.families()
+	if err != nil {
+		return err
+	}
+	for i := range families {
+		if f := &families[i]; f.List == family.NeverKeep && f.NamesType(word) {
+			if err := a.env.wrapped("  refused ", f.Label+": "+f.Reason+"; "+f.Source.String()); err != nil {
+				return err
+			}
 		}
 	}
 	return silent(ExitNotAccepted)
