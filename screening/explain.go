@@ -272,5 +272,6 @@ func (j *judging) effortOf(of Characteristic) int64 {
 	if f := j.book.bench(of); f != nil {
 		return int64(f.Effort)
 	}
-	return 0
+	f, _ := j.book.ClaimField(of)
+	return int64(f.Effort)
 }

@@ -10,7 +10,7 @@ func TestAPinoutSaysWhoSaysItAndToCheckIt(t *testing.T) {
 		want           string
 	}{
 		{"nobody says", Claim{}, Claim{}, ""},
-		{"the sheet says", with, Claim{}, "C-B-E from the sheet; same case is not same pinout: check with a meter"},
+		{"the sheet says", with, Claim{}, "C-B-E from the type table; same case is not same pinout: check with a meter"},
 		{"the part claims it", with, with, "C-B-E; same case is not same pinout: check with a meter"},
 	} {
 		j := Judgement{Claim: tt.completed}

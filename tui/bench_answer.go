@@ -35,6 +35,8 @@ func (g *grid) submit() tea.Cmd {
 		return g.d.goBack(false)
 	case "":
 		switch {
+		case !open && g.barredByClaim():
+			return g.save(g.finish(g.part, g.walk), "barred by what it claims", "")
 		case !open:
 			g.goOpen(g.cur)
 		case g.pin != "" && !g.again:

@@ -148,3 +148,18 @@ func TestBenchTinPartTakesTheWholeClaimWhereSomethingLacked(t *testing.T) {
 		t.Fatalf("claims %q\n%s", p.Header, d.screen())
 	}
 }
+
+// A lot whose claim bars its parts keeps one with each Enter: they are there, and somebody has to hand them in.
+func TestPartsBarredByTheirClaimAreKept(t *testing.T) {
+	d := newTestDesk(t, 80, 24)
+	d.m.bench.d.kinds[0].Bars = func(screening.Claim) []screening.Stop {
+		return []screening.Stop{{Check: "family", Verdict: screening.Barred, Reason: "it grows whiskers", Do: "KEEP it apart"}}
+	}
+	d.press("ca", "enter", "100uF 35V", "f8")
+	d.mustShow("1-01  is barred by what it claims. Enter keeps it so", "KEEP it apart")
+	d.press("enter", "enter")
+	d.mustShow("2 parts", "1-03  is barred")
+	if v := d.part(2).Outcome.Verdict; v != screening.Barred {
+		t.Errorf("1-02 is kept as %s", v)
+	}
+}

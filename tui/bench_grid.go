@@ -190,6 +190,12 @@ func (g *grid) goOpen(after int) {
 	g.take(len(g.parts))
 }
 
+// barredByClaim reports whether the part in hand is not kept yet and nothing will be asked of it: what it claims bars it.
+func (g *grid) barredByClaim() bool {
+	j, err := g.walk.Judgement()
+	return g.cur == len(g.parts) && err == nil && j.Verdict == screening.Barred
+}
+
 // leave ends a special state of the field; false where there is none.
 func (g *grid) leave() bool {
 	switch {

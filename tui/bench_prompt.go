@@ -80,6 +80,9 @@ func (g *grid) questionText(q screening.Question, open bool) (text, right string
 		if v.Verdict == screening.Treat {
 			return "waits: treat it, type treated=1 (2 after the second time), then measure again: Left and Right go to the readings", ""
 		}
+		if g.barredByClaim() {
+			return "is barred by what it claims. Enter keeps it so and goes on", ""
+		}
 		return "is done: " + v.Verdict.String() + ". Enter goes on, Left and Right correct, / asks for more", ""
 	}
 	switch {

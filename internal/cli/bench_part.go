@@ -181,10 +181,22 @@ func (l *lines) afterVerdict(ctx context.Context) error {
 	}
 	return l.answer(ctx, prompt, func(text string) error {
 		if text == "" {
+			if err := l.keepBarred(); err != nil {
+				return err
+			}
 			return errNext
 		}
 		return l.command(ctx, screening.Question{}, text)
 	})
+}
+
+// keepBarred keeps a part that its claim bars, of which nothing was asked.
+func (l *lines) keepBarred() error {
+	j, err := l.walk.Judgement()
+	if !l.part.ID.IsLot() || err != nil || j.Verdict != screening.Barred {
+		return nil
+	}
+	return l.save("barred by what it claims")
 }
 
 // command takes a command or, where it is none, words that were not asked for.

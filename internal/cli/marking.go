@@ -91,6 +91,9 @@ func (a *app) typeNumberHint(text string) string {
 			return row.Type + " is a type number: goodbin judge " + kind + " " + strings.TrimSpace(text)
 		}
 	}
+	if ohms, letter, ok := trackOhms(text); ok {
+		return "a potentiometer of " + ohms + " with the taper letter " + letter + ", which differs by country: goodbin judge potentiometer " + ohms
+	}
 	return ""
 }
 

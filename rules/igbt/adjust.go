@@ -1,6 +1,8 @@
 package igbt
 
 import (
+	"math"
+
 	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/semi"
 	"goodbin/screening"
@@ -77,13 +79,16 @@ func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 
 // lampRecipe turns it on with the supply itself and a lamp as load.
 func lampRecipe(l screening.Limit) screening.Recipe {
-	amps := lampWatts / supply
+	amps, limit := lampWatts/supply, ""
+	if !math.IsInf(l.High, 1) {
+		limit = ": the limit is " + quantity.Format(l.High, quantity.Volt, 2)
+	}
 	return screening.Recipe{
 		Title: "on with a lamp",
 		Lines: []string{
 			"emitter to minus of " + semi.Volts(supply) + " with a 1 A fuse, collector through a " + semi.Volts(supply) + " " + semi.Watts(lampWatts) + " lamp to plus",
 			"100 kΩ from gate to emitter: the lamp is dark. 10 kΩ from gate to plus instead: it lights",
-			"volts from collector to emitter, 0.7 to 1.5 V is usual: the limit is " + quantity.Format(l.High, quantity.Volt, 2) + ". Type vce-on@ic=" +
+			"volts from collector to emitter, 0.7 to 1.5 V is usual" + limit + ". Type vce-on@ic=" +
 				semi.Typed(semi.Honest2(amps), quantity.Ampere) + ",vge=" + semi.Typed(supply, quantity.Volt) + "=…",
 			"half on it takes up to " + semi.Watts(lampWatts/4) + ": a second or two; the lamp gets hot",
 		},

@@ -158,8 +158,20 @@ func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
 // testVolts is the voltage at which paper is judged: its rated one, not a step below it.
 func testVolts(u capacitor.Unit) float64 { return u.Volts }
 
+// unreadable is the voltage that a part is taken to hold where nobody can read its own, V: the highest that is usual on oil (house).
+const unreadable = 600
+
 func cautions(part screening.Part, at screening.Moment) []screening.Caution {
-	return capacitor.Cautions(part, at, span, testVolts)
+	if _, ok := part.Claim.Rating(screening.RatedVoltage.Name, part.Claim.Sections()[0]); ok {
+		return capacitor.Cautions(part, at, span, testVolts)
+	}
+	// Only what is barred comes here without a voltage: it is bagged and not measured, and may be charged all the same.
+	part.Claim = part.Claim.WithRating(screening.NominalRating(screening.RatedVoltage, unreadable))
+	all := capacitor.Cautions(part, at, span, nil)
+	for i := range all {
+		all[i].Text = "its voltage is not known, and is taken as " + quantity.Format(unreadable, quantity.Volt, 0) + ": " + all[i].Text
+	}
+	return all
 }
 
 func recipes(part screening.Part, l screening.Limit) []screening.Recipe {

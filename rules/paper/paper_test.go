@@ -122,3 +122,16 @@ func TestTheTableIsChecked(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, Book(), "0.1uF 400V M waxed capacitance=103nF leakage@400V=0.50uA")
 }
+
+// What bars a can needs no voltage that nobody can read any more; that it may be charged is said all the same.
+func TestOilWithoutAVoltageIsBarred(t *testing.T) {
+	book := Book()
+	family.Attach(book, family.Builtin())
+	j := booktest.Judge(t, book, "4uF oil", screening.DefaultPolicy())
+	if text := booktest.Texts(j); j.Verdict != screening.Barred || !strings.Contains(text, "HAZARDOUS") {
+		t.Errorf("%s\n%s", j.Verdict, text)
+	}
+	if len(j.Cautions) != 1 || !j.Cautions[0].Gate || !strings.Contains(j.Cautions[0].Text, "taken as 600 V") {
+		t.Errorf("cautions: %v", j.Cautions)
+	}
+}

@@ -79,6 +79,9 @@ func look() []screening.Check {
 
 // complete adds the default tolerance and says where the value is an unlikely one.
 func complete(c screening.Claim) (screening.Claim, []screening.Reason, error) {
+	if err := book.CheckStands(c, &screening.Power); err != nil {
+		return c, nil, err
+	}
 	nominal, ok := c.Nominal(screening.Resistance.Name, "")
 	if ok && nominal <= 0 {
 		return c, nil, fmt.Errorf("resistance: %s has no tolerance band; a link of 0 Ω is judged as a piece of wire",

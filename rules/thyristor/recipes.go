@@ -18,9 +18,9 @@ const (
 	below     = 0.9  // of the limit: what is driven into the gate, so that latching clears the limit
 )
 
-// DropOutSupply returns the voltage, V, at which a thyristor that drops vt, V, behind a resistance, Ω, falls to its holding current, A:
-// IH·R + VT.
-func DropOutSupply(ih, ohms, vt float64) float64 { return ih*ohms + vt }
+// Supply returns the voltage, V, of a supply that drives a current, A, through a resistance, Ω, and a drop, V, behind it: that which triggers a
+// gate, and that at which a part that latches falls to its holding current. V = I·R + VT.
+func Supply(amperes, ohms, drop float64) float64 { return amperes*ohms + drop }
 
 func (b rulebook) cautions(part screening.Part, at screening.Moment) []screening.Caution {
 	if at != screening.AtMeasure {
@@ -161,7 +161,7 @@ func dropRecipe(l screening.Limit) screening.Recipe {
 // holdingRecipe turns the supply down until it lets go: it must not do so above IH·R + VT.
 func (b rulebook) holdingRecipe(l screening.Limit) screening.Recipe {
 	const ohms, vt = 100.0, 0.7
-	volts := DropOutSupply(l.High, ohms, vt)
+	volts := Supply(l.High, ohms, vt)
 	anode, cathode := b.leads()
 	return screening.Recipe{
 		Title: "holding current",

@@ -11,9 +11,17 @@ import (
 )
 
 // Malvino and Bates 15-4, as their published companion prints it.
-func TestDropOutSupply(t *testing.T) {
-	if v := DropOutSupply(6e-3, 100, 0.7); math.Abs(v-1.3) > 1e-12 {
-		t.Errorf("6 mA through 100 Ω and 0.7 V is %g V, want 1.3 V", v)
+func TestTheSupplyThatTriggersAndThatAtWhichItDropsOut(t *testing.T) {
+	for _, tt := range []struct {
+		name                      string
+		amperes, ohms, drop, want float64
+	}{
+		{"triggers: 7 mA into the gate through 1 kΩ and 0.75 V", 7e-3, 1e3, 0.75, 7.75},
+		{"drops out: 6 mA through 100 Ω and 0.7 V", 6e-3, 100, 0.7, 1.3},
+	} {
+		if v := Supply(tt.amperes, tt.ohms, tt.drop); math.Abs(v-tt.want) > 1e-12 {
+			t.Errorf("%s is %g V, want %g V", tt.name, v, tt.want)
+		}
 	}
 }
 

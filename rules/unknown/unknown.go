@@ -15,7 +15,7 @@ import (
 // Kind is the kind's name.
 const Kind screening.Kind = "unknown"
 
-const edition = "1"
+const edition = "2"
 
 // Identity is what the part is not known to have: no reading answers it, so a part of this kind stays undecided until it is named.
 var Identity = book.Trait("identity", "what it is")
@@ -48,7 +48,7 @@ func claims() []screening.Field {
 		{Definition: book.Trait(traitMarking, "marking"), Trait: true, Example: "marking=104", Help: "whatever can be read on it; goodbin marking says what it can mean"},
 		{Definition: book.Trait(traitColours, "colours"), Trait: true, Example: "colours=brown-black-red", Help: "bands or dots in their order"},
 		{
-			Definition: Identity, Trait: true, Example: "identity=trimmer?", Help: "what you take it for; it is kept and decides nothing",
+			Definition: Identity, Trait: true, Effort: time.Hour, Example: "identity=trimmer?", Help: "what you take it for; it is kept and decides nothing",
 			Ask: "NAME it, and judge it as one of the kinds above",
 		},
 		book.DatedField(),
@@ -57,7 +57,12 @@ func claims() []screening.Field {
 
 func leadWords() []screening.Word {
 	return []screening.Word{
-		{Word: "two-leads", Text: "2"}, {Word: "three-leads", Text: "3"}, {Word: "four-leads", Text: "4"},
+		{Word: "2", Text: "2"},
+		{Word: "3", Text: "3"},
+		{Word: "4", Text: "4"},
+		{Word: "two-leads", Text: "2"},
+		{Word: "three-leads", Text: "3"},
+		{Word: "four-leads", Text: "4"},
 	}
 }
 

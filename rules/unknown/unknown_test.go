@@ -56,6 +56,11 @@ func TestWhatRemainsPossible(t *testing.T) {
 		{"and is one with 12 kΩ of channel", "leads=3 vf/3-1=0.70 vf/3-2=0.70 vf/1-3=OL vf/2-3=OL vf/1-2=OL vf/2-1=OL resistance/1-2=12k", []string{"a silicon NPN transistor that leaks", "an n-channel JFET (gate is lead 3)"}},
 		{"a transistor that leaks between its outer leads", "leads=3 vf/2-1=0.68 vf/2-3=0.67 vf/1-2=OL vf/3-2=OL vf/1-3=1.20 vf/3-1=OL", []string{"a silicon NPN transistor that leaks", "a PNP Darlington", "a three-legged regulator"}},
 		{"a transistor whose outer leads are shorted", "leads=3 vf/2-1=0.65 vf/2-3=0.65 vf/1-2=OL vf/3-2=OL vf/1-3=0.001 vf/3-1=0.001 resistance/1-3=0.3", []string{"a silicon NPN transistor that failed short (base is lead 2)"}},
+		{
+			"a bridge, its two drops in series too", "leads=4 vf/1-2=0.55 vf/3-2=0.55 vf/4-1=0.55 vf/4-3=0.55 vf/4-2=1.05 vf/2-4=OL vf/2-1=OL",
+			[]string{"a bridge rectifier (plus is lead 2, minus is lead 4)"},
+		},
+		{"an optocoupler is no bridge", "leads=4 vf/1-2=1.08 vf/2-1=OL vf/1-3=OL vf/1-4=OL", []string{"an optocoupler"}},
 		{"a leaky germanium PNP", "leads=3 vf/1-2=0.180 vf/3-2=0.170 vf/2-1=1.20 vf/2-3=1.30 vf/1-3=0.65 vf/3-1=0.90", []string{"a germanium PNP transistor (base is lead 2)"}},
 		{"a line-output transistor: 50 Ω at its base and a damper diode", "leads=3 vf/1-3=0.050 vf/3-1=0.050 vf/1-2=0.50 vf/3-2=0.50 vf/2-1=OL vf/2-3=OL", []string{"a silicon PNP transistor that failed short", "an NPN transistor with a damper diode", "a p-channel JFET"}},
 		{"a MOSFET that a charged gate holds on", "leads=3 vf/3-2=0.002 vf/2-3=0.002 vf/1-2=OL vf/2-1=OL vf/1-3=OL vf/3-1=OL resistance/2-3=0.3", []string{"a MOSFET with a charged gate", "a potentiometer"}},

@@ -57,6 +57,8 @@ var verdictCases = []struct {
 	{"shorted", "rated:vv=470V resistance=300", screening.Reject, "shorted, as a varistor mostly ends"},
 	{"fallen by a quarter", "rated:vv=470V 10% vv@1mA=360V leakage@235V=2uA", screening.Reject, "worn by surges"},
 	{"too high", "rated:vv=470V 10% vv@1mA=620V leakage@235V=2uA", screening.Reject, "read the print again"},
+	{"its AC voltage as printed", "275VAC resistance=OL vv@1mA=440V leakage@220V=2uA", screening.Accept, "1.6 times the AC voltage"},
+	{"its AC voltage as printed on the disc", "275V~ resistance=300", screening.Reject, ""},
 	{"leaks", "rated:vv=470V 10% resistance=OL leakage@235V=30uA", screening.Reject, "until it burns"},
 	{"burnt", "rated:vv=470V 10% vv@1mA=468V leakage@235V=2uA seen=burnt", screening.Reject, "more than it stands"},
 }

@@ -70,6 +70,9 @@ func voltageLimit(c screening.Claim) screening.Limit {
 
 func bandFormula(c screening.Claim, low, high float64) string {
 	vz, _ := c.Rating(VZ.Name, "")
+	if math.IsInf(low, 0) || math.IsInf(high, 0) {
+		return vz.String() + " as claimed"
+	}
 	text := quantity.Format(low, quantity.Volt, 0) + " to " + quantity.Format(high, quantity.Volt, 0)
 	if pointlike(vz) {
 		t, _ := c.Rating(screening.Tolerance.Name, "")

@@ -129,6 +129,17 @@ func TestPromptUnit(t *testing.T) {
 	}
 }
 
+// A coil of 320 Ω whose only limit is "at most 100 kΩ" was asked for in kΩ, and the 320 that a meter shows rejected it.
+func TestPromptUnitOfOhms(t *testing.T) {
+	field := screening.Field{Definition: screening.Resistance, FollowsNominal: true}
+	for want, span := range map[string]screening.Span{"Ω": {Low: math.Inf(-1), High: 100e3}, "kΩ": {Low: 9e3, High: 11e3}} {
+		q := screening.Question{Ask: screening.AskReading, Field: field, Limit: &screening.Limit{Unit: field.Unit, Low: span.Low, High: span.High}}
+		if got := PromptUnit(q); got != want {
+			t.Errorf("%g to %g: %q, want %q", span.Low, span.High, got, want)
+		}
+	}
+}
+
 func TestAnswerClaim(t *testing.T) {
 	book := bookOf(t, "can")
 	f, _ := book.ClaimField("capacitance")

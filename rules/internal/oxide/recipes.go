@@ -27,12 +27,22 @@ type Charging struct {
 // The resistor of a leakage test, Ω: more than the most and a 10 MΩ voltmeter across it would falsify the reading (house).
 const mostOhms, leastOhms = 100e3, 100.0
 
+// What the resistor may have to stand when the part is a dead short, W: half of a wirewound one of 10 W, which a bench has (house).
+const mostWatts = 5.0
+
+// leastDrop is the share of the rated voltage from which what the resistor takes is made good by the supply.
+const leastDrop = 0.03
+
 // ChargingOf computes it: as large a resistor as leaves a part at its leakage limit within 3 % of the rated voltage, and 100 kΩ at most.
-// The slower the part charges, the less a weak spot in its oxide can burn.
+// The slower the part charges, the less a weak spot in its oxide can burn. A dead short never puts more than 5 W into it: where that asks for more
+// ohms, the supply makes good what the resistor takes.
 func (r *Rules) ChargingOf(claim screening.Claim, u capacitor.Unit) Charging {
 	technology := r.Technology(claim)
 	ohms := r.Tables.Named(figureDrop, technology).Value * u.Volts / r.Tables.LeakageLimit(technology, u)
 	ohms = roundDown(math.Min(math.Max(ohms, leastOhms), mostOhms))
+	if least := u.Volts * u.Volts / mostWatts; ohms < least {
+		ohms = roundUp(least)
+	}
 	return Charging{
 		Supply: u.Volts, Ohms: ohms, Watts: u.Volts * u.Volts / ohms, Fault: u.Volts * u.Volts / ohms / 4, Current: u.Volts / ohms,
 		Seconds: 5 * ohms * u.Top(),
@@ -49,6 +59,16 @@ func roundDown(x float64) float64 {
 		return 2 * scale
 	}
 	return scale
+}
+
+// roundUp rounds up to one significant digit of 1, 2 or 5.
+func roundUp(x float64) float64 {
+	for _, step := range []float64{1, 2, 2.5} {
+		if up := roundDown(x * step); up >= x*(1-1e-9) {
+			return up
+		}
+	}
+	return roundDown(x * 10)
 }
 
 // Values are the computed numbers by name.
@@ -144,10 +164,15 @@ func (r *Rules) leakageRecipe(claim screening.Claim, u capacitor.Unit, l screeni
 		after = 300
 	}
 	volts := l.High * c.Ohms
+	rated := quantity.Format(c.Supply, quantity.Volt, 0)
+	upTo := fmt.Sprintf("to %s, never above; it charges in about %s", rated, waiting(c.Seconds))
+	if volts > leastDrop*c.Supply {
+		upTo = fmt.Sprintf("until a second voltmeter shows %s on the part itself, never above: the resistor takes up to %s besides, less as the part recovers, so turn "+
+			"the supply down with it; it charges in about %s", rated, quantity.Format(volts, quantity.Volt, 2), waiting(c.Seconds))
+	}
 	lines := []string{
 		"discharge the part and read the volts that remain; leads clean and dry",
-		fmt.Sprintf("supply at 0 V, plus to plus, through %s; turn it up over 10 s or more to %s, never above; it charges in about %s", c.Resistor(),
-			quantity.Format(c.Supply, quantity.Volt, 0), waiting(c.Seconds)),
+		fmt.Sprintf("supply at 0 V, plus to plus, through %s; turn it up over 10 s or more %s", c.Resistor(), upTo),
 		fmt.Sprintf("%s after the part reached it read the volts across the resistor: leakage = volts / %s; the limit of %s is %s there", waiting(after),
 			quantity.Format(c.Ohms, quantity.Ohm, 0), quantity.Format(l.High, quantity.Ampere, 3), quantity.Format(volts, quantity.Volt, 2)),
 		"volts that rise or jump are a weak oxide: turn the supply down at once",

@@ -46,7 +46,7 @@ const StaticGuard = "a touch can destroy a gate: wear an earthed wrist strap (1 
 	"about 100 kΩ from gate to source"
 
 // StaticSource is where that comes from.
-var StaticSource = screening.Source{Document: "handling guides for static-sensitive parts (interfacebus, Toshiba)", Status: screening.Published}
+var StaticSource = screening.Source{Document: "handling guides for static-sensitive parts (interfacebus, Toshiba); the 1 MΩ is from memory", Status: screening.Published}
 
 // Static warns of static discharge before a field-effect part is touched or measured.
 func Static() screening.Caution {

@@ -1,6 +1,7 @@
 package sheet
 
 import (
+	"math"
 	"strings"
 	"testing"
 
@@ -46,5 +47,28 @@ func TestAnUnknownTypeIsSaid(t *testing.T) {
 	}
 	if _, _, ok := Least(c, "vrrm"); ok {
 		t.Error("nothing is claimed")
+	}
+}
+
+// A rating counts at a condition only where it states it.
+func TestARatingWithoutItsConditionIsNotAtOne(t *testing.T) {
+	bare := screening.RangeRating(screening.VF, 0, 1.1)
+	if r, x, ok := At(screening.Claim{}.WithRating(bare), "vf", screening.Current); ok {
+		t.Errorf("%v at %v", r, x)
+	}
+	stated := bare
+	stated.At = screening.At(screening.Current, 1)
+	if _, x, ok := At(screening.Claim{Ratings: []screening.Rating{bare, stated}}, "vf", screening.Current); !ok || x != 1 {
+		t.Errorf("at %v, %v", x, ok)
+	}
+	none := bare
+	none.At = screening.At(screening.Current, 0)
+	if _, x, ok := At(screening.Claim{}.WithRating(none), "vf", screening.Current); ok {
+		t.Errorf("at %v: no current to measure at", x)
+	}
+	open := screening.RangeRating(screening.VF, 1, math.Inf(1))
+	open.At = stated.At
+	if _, _, ok := At(screening.Claim{}.WithRating(open), "vf", screening.Current); ok {
+		t.Error("a rating without an upper bound was taken")
 	}
 }
