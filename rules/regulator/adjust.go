@@ -23,7 +23,7 @@ func adjust(part screening.Part, findings []screening.Finding) ([]screening.Find
 	}
 	for i := range findings {
 		f := &findings[i]
-		if f.Limit.Criterion != voltageCriterion || f.Reading == nil {
+		if f.Limit.Criterion != voltageCriterion && f.Limit.Criterion != grossCriterion || f.Reading == nil {
 			continue
 		}
 		if why, unstated := starved(part.Claim, f); why != "" {

@@ -18,6 +18,7 @@ nominal 0.04 house
 quiescent 1.5 house
 dropout 2.5 house
 headroom 2.5 house
+gross 0.1 house
 `, "of", "value", "status")
 }
 

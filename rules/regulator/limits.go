@@ -53,12 +53,31 @@ func voltageLimits(c screening.Claim, d screening.Definition, r screening.Rating
 	}
 	mid, half := (r.Low+r.High)/2, (r.High-r.Low)/2
 	lax := within
-	lax.Grade, lax.Source = screening.Serviceable, wider.source
+	lax.Grade, lax.Source = screening.Serviceable, noBetterThan(within.Source, wider.source)
 	lax.Low, lax.High = round(mid-wider.value*half), round(mid+wider.value*half)
 	lax.Formula = func() string {
 		return fmt.Sprintf("%s to %s, ×%.2f about its middle = %s to %s", volts(r.Low), volts(r.High), wider.value, volts(lax.Low), volts(lax.High))
 	}
-	return []screening.Limit{within, lax}
+	if lax.Source.Status.MayReject() {
+		return []screening.Limit{within, lax}
+	}
+	// What is only remembered rejects nothing; a voltage far off is still a fault.
+	f := load()["gross"]
+	gross := lax
+	gross.Criterion, gross.Source = grossCriterion, f.source
+	gross.Low, gross.High = round(mid-f.value*math.Abs(mid)), round(mid+f.value*math.Abs(mid))
+	gross.Formula = func() string {
+		return fmt.Sprintf("%s ±%s = %s to %s", volts(mid), quantity.Format(f.value, quantity.Ratio, 0), volts(gross.Low), volts(gross.High))
+	}
+	return []screening.Limit{within, lax, gross}
+}
+
+// noBetterThan is the source of a figure widened by a rule: what rests on a figure that may not reject may not either.
+func noBetterThan(figure, rule screening.Source) screening.Source {
+	if !figure.Status.MayReject() {
+		rule.Status = figure.Status
+	}
+	return rule
 }
 
 // round keeps a bound that was computed free of the last bits of floating point.
@@ -71,7 +90,7 @@ func quiescentLimits(r screening.Rating) []screening.Limit {
 	within.High, within.Grade, within.Source = r.High, screening.WithinSpec, book.SourceOf(&r)
 	f := load()["quiescent"]
 	lax := within
-	lax.Grade, lax.High, lax.Source = screening.Serviceable, f.value*r.High, f.source
+	lax.Grade, lax.High, lax.Source = screening.Serviceable, f.value*r.High, noBetterThan(within.Source, f.source)
 	return []screening.Limit{within, lax}
 }
 

@@ -88,6 +88,9 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 
 func recipes(part screening.Part, l screening.Limit) []screening.Recipe {
 	c := part.Claim
+	if l.Criterion == grossCriterion {
+		l.Criterion = voltageCriterion
+	}
 	switch {
 	case middle(c) == 0:
 		return nil

@@ -57,6 +57,7 @@ const (
 const (
 	typeCriterion      screening.Criterion = "type"
 	voltageCriterion   screening.Criterion = "voltage"
+	grossCriterion     screening.Criterion = "voltage-far-off"
 	quiescentCriterion screening.Criterion = "quiescent"
 	dropoutCriterion   screening.Criterion = "dropout"
 )
@@ -86,7 +87,7 @@ func readFigures(text string) (map[string]figure, error) {
 		all[r.Required("of")] = figure{r.Number("value"), r.Source()}
 	}
 	var missing error
-	for _, name := range []string{"wider", "nominal", "quiescent", "dropout", "headroom"} {
+	for _, name := range []string{"wider", "nominal", "quiescent", "dropout", "headroom", "gross"} {
 		if all[name].value <= 0 {
 			missing = errors.Join(missing, errors.New("figures.csv: no row "+name))
 		}
