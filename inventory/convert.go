@@ -72,10 +72,15 @@ func sourceFrom(record *sourceRecord) (screening.Source, error) {
 }
 
 func readingTo(r screening.Reading) readingRecord {
+	var from []inputRecord
+	for _, in := range r.From {
+		from = append(from, inputRecord{string(in.Of), in.Name, in.U, in.Sensitivity})
+	}
 	return readingRecord{
 		Of: string(r.Of), Section: r.Section, Value: r.Value, Sense: senseNames[r.Sense], Unit: unitNames[r.Unit], At: conditionTo(r.At),
 		Step: r.Step, Over: r.Over, Repeats: r.Repeats, Meter: r.Meter, Typed: r.Typed, U: r.U, Assumed: r.Assumed,
 		AssumedAt: conditionTo(r.AssumedAt), Rule: r.Rule, Spec: r.Spec,
+		MeterAt: conditionTo(r.MeterAt), Correction: r.Correction, From: from,
 	}
 }
 
@@ -83,7 +88,10 @@ func readingFrom(record readingRecord) (screening.Reading, error) {
 	r := screening.Reading{
 		Of: screening.Characteristic(record.Of), Section: record.Section, Value: record.Value, Step: record.Step, Over: record.Over,
 		Repeats: record.Repeats, Meter: record.Meter, Typed: record.Typed, U: record.U, Assumed: record.Assumed, Rule: record.Rule,
-		Spec: record.Spec,
+		Spec: record.Spec, Correction: record.Correction,
+	}
+	for _, in := range record.From {
+		r.From = append(r.From, screening.Input{Of: screening.Characteristic(in.Of), Name: in.Name, U: in.U, Sensitivity: in.Sensitivity})
 	}
 	var err error
 	if r.Sense, err = named(sensesByName, "sense", record.Sense); err != nil {
@@ -95,7 +103,10 @@ func readingFrom(record readingRecord) (screening.Reading, error) {
 	if r.At, err = conditionFrom(record.At); err != nil {
 		return r, err
 	}
-	r.AssumedAt, err = conditionFrom(record.AssumedAt)
+	if r.AssumedAt, err = conditionFrom(record.AssumedAt); err != nil {
+		return r, err
+	}
+	r.MeterAt, err = conditionFrom(record.MeterAt)
 	return r, err
 }
 

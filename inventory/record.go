@@ -57,6 +57,17 @@ type readingRecord struct {
 	AssumedAt conditionRecord `cbor:"14,keyasint,omitempty"`
 	Rule      string          `cbor:"15,keyasint,omitempty"`
 	Spec      float64         `cbor:"16,keyasint,omitempty"`
+
+	MeterAt    conditionRecord `cbor:"17,keyasint,omitempty"`
+	Correction float64         `cbor:"18,keyasint,omitempty"`
+	From       []inputRecord   `cbor:"19,keyasint,omitempty"`
+}
+
+type inputRecord struct {
+	Of          string  `cbor:"1,keyasint,omitempty"`
+	Name        string  `cbor:"2,keyasint,omitempty"`
+	U           float64 `cbor:"3,keyasint,omitempty"`
+	Sensitivity float64 `cbor:"4,keyasint,omitempty"`
 }
 
 type lookRecord struct {

@@ -172,6 +172,25 @@ func (c Condition) Fill(d Condition) Condition {
 	return c
 }
 
+// filling is Fill that also returns the part that was taken from d.
+func (c Condition) filling(d *Condition) (filled, added Condition) {
+	for i, v := range d.which[:d.n] {
+		if _, has := c.get(v); !has {
+			c = c.With(v, d.values[i])
+			added = added.With(v, d.values[i])
+		}
+	}
+	return c, added
+}
+
+// dropping returns c without the variables of d.
+func (c Condition) dropping(d *Condition) Condition {
+	for _, v := range d.which[:d.n] {
+		c = c.Without(v)
+	}
+	return c
+}
+
 // String prints the condition as people write it: "120 Hz, 35 V, after 2 min". Variables with a name of their own carry it: "IC 10 mA".
 func (c Condition) String() string {
 	if c.n == 0 {

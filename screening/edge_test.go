@@ -100,12 +100,13 @@ func TestOfTwoReadingsThatFitTheLaterCounts(t *testing.T) {
 	}
 }
 
-// Outside a soft limit a repeat is asked for that could fail the part: to fail still needs 0.95.
+// Outside a soft limit a repeat is asked for that could fail the part. To fail needs 0.95, distance 1.645·u, and the bound beyond the meter's
+// specification, distance a = 1.73·u: the latter decides what is asked for.
 func TestTheAccuracyAskedForOutsideASoftLimit(t *testing.T) {
 	l := quickLimit(0.5, 0.8)
 	l.Grade, l.Soft = screening.Serviceable, true
 	j := judged(t, withLimits(l), relative(0.02), exactly("quick", quantity.Volt, 0.81))
-	want := math.Sqrt(3) * 0.01 / 1.644854 / 0.81
+	want := 0.01 / 0.81
 	if j.Verdict != screening.Undecided || math.Abs(j.Findings[0].Wants.Accuracy-want) > 1e-6 {
 		t.Errorf("%s, needs ±%v; want ±%v", j.Verdict, j.Findings[0].Wants.Accuracy, want)
 	}

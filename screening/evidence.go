@@ -3,8 +3,7 @@ package screening
 import (
 	"math"
 
-	"gonum.org/v1/gonum/stat/distuv"
-
+	"goodbin/screening/conformity"
 	"goodbin/screening/quantity"
 )
 
@@ -14,22 +13,7 @@ func finite(x float64) bool { return !math.IsNaN(x) && !math.IsInf(x, 0) }
 // uncertainty u and a normal distribution: below = Φ((low−x)/u), above = Φ((x−high)/u); the conformance probability is what is left
 // (JCGM 106:2012, clause 7). With u = 0 they are 0 or 1, the bounds being included in the interval. Open bounds are ±Inf.
 func ConformanceProbability(x, u, low, high float64) (below, above float64) {
-	if u == 0 {
-		if x < low {
-			return 1, 0
-		}
-		if x > high {
-			return 0, 1
-		}
-		return 0, 0
-	}
-	if !math.IsInf(low, -1) {
-		below = distuv.UnitNormal.CDF((low - x) / u)
-	}
-	if !math.IsInf(high, 1) {
-		above = distuv.UnitNormal.CDF((x - high) / u)
-	}
-	return below, above
+	return conformity.Outside(x, u, conformity.Interval{Low: low, High: high})
 }
 
 // find holds one limit, for one section, against the best evidence the part has for it: a reading whose condition fits, the latest first;
@@ -106,116 +90,6 @@ func misfitText(v Variable, absent bool, r *Reading, l *Limit) string {
 		return "the " + v.Label() + " of the reading is not stated; the limit holds at " + quantity.Format(want, v.Unit(), 0)
 	}
 	return "taken at " + r.At.String() + ", the limit holds at " + l.At.String()
-}
-
-// hold decides one limit by one reading that fits it.
-func (j *judging) hold(f *Finding, r *Reading) {
-	l := &f.Limit
-	f.By = ByReading
-	f.Outcome, f.Why = Missing, ""
-	below, above := ConformanceProbability(r.Value, r.U, l.Low, l.High)
-	f.Margin = margin(r.Value, l.Low, l.High)
-	f.Side = Inside
-	switch r.Sense {
-	case quantity.Exactly:
-		f.Probability = math.Max(0, 1-below-above)
-		if j.policy.Rule == SimpleAcceptance {
-			j.holdSimply(f, r.Value)
-			break
-		}
-		j.decide(f, r, below, above)
-	case quantity.AtMost:
-		// The true value is no more than x: it can clear the upper bound and refute the lower one.
-		j.holdOneSided(f, 1-above, below, Below, math.IsInf(l.Low, -1) || l.Low <= 0 && j.nonNegative(l))
-	case quantity.AtLeast:
-		j.holdOneSided(f, 1-below, above, Above, math.IsInf(l.High, 1))
-	}
-	if f.Outcome == Fail && !l.Source.Status.MayReject() {
-		f.Outcome, f.Unconfirmed = Close, true
-		f.Why = "out of limits, but the figure is " + l.Source.Status.String()
-	}
-	if f.Outcome == Close && !f.Unconfirmed {
-		f.Wants.Accuracy = j.accuracyNeeded(f, r)
-		f.Why = "too near the limit for this meter"
-		// Where the digits make up half of what the meter may be off, more digits settle more than a better meter.
-		if r.Step > 0 && 2*r.Step >= r.Spec/2 {
-			f.TooCoarse, f.Why = true, "read to too few digits: the last one is worth "+quantity.Format(r.Step, r.Unit, 0)
-		}
-	}
-}
-
-func (j *judging) holdSimply(f *Finding, x float64) {
-	switch {
-	case x < f.Limit.Low:
-		f.Outcome, f.Side = Fail, Below
-	case x > f.Limit.High:
-		f.Outcome, f.Side = Fail, Above
-	default:
-		f.Outcome = Pass
-	}
-}
-
-// holdOneSided settles a limit by a reading that only bounds: clear is the probability that the bound itself clears the side it speaks
-// for, refuted that it lies beyond the other one, and open whether there is nothing on the side it cannot speak for.
-func (j *judging) holdOneSided(f *Finding, clear, refuted float64, side Side, open bool) {
-	switch {
-	case refuted >= j.policy.Reject:
-		f.Outcome, f.Side, f.Probability = Fail, side, 1-refuted
-	case open && clear >= j.policy.threshold(&f.Limit):
-		f.Outcome, f.Probability = Pass, clear
-		f.NearLimit = clear < j.policy.Accept
-	default:
-		f.Why = "the reading only bounds the value and does not settle this limit"
-	}
-}
-
-// nonNegative reports whether the limit's characteristic cannot be negative, so that a lower bound at or below zero is no bound.
-func (j *judging) nonNegative(l *Limit) bool { return l.Unit != quantity.Celsius }
-
-// decide passes or fails a limit by probability. A meter that keeps its specification is never further off than that, so a reading fails a
-// part only where the bound lies beyond the specification too: a poor meter never rejects a perfect part.
-func (j *judging) decide(f *Finding, r *Reading, below, above float64) {
-	p, spec := f.Probability, r.Spec
-	if f.Converted != nil {
-		spec = 0
-	}
-	if below > above {
-		f.Side = Below
-	} else if above > 0 {
-		f.Side = Above
-	}
-	switch {
-	case p >= j.policy.threshold(&f.Limit):
-		f.Outcome, f.NearLimit = Pass, p < j.policy.Accept
-	case below >= j.policy.Reject && f.Limit.Low-r.Value > spec:
-		f.Outcome, f.Side = Fail, Below
-	case above >= j.policy.Reject && r.Value-f.Limit.High > spec:
-		f.Outcome, f.Side = Fail, Above
-	default:
-		f.Outcome = Close
-	}
-}
-
-// accuracyNeeded returns the relative half-width of a rectangular meter specification with which a repeat of the same reading would be
-// decided: u = distance to the nearest bound over the normal quantile of the policy's threshold, times √3.
-func (j *judging) accuracyNeeded(f *Finding, r *Reading) float64 {
-	if r.Value == 0 {
-		return 0
-	}
-	distance, needed := math.Inf(1), j.policy.threshold(&f.Limit)
-	for _, bound := range []float64{f.Limit.Low, f.Limit.High} {
-		if !math.IsInf(bound, 0) {
-			distance = math.Min(distance, math.Abs(r.Value-bound))
-		}
-	}
-	if r.Value < f.Limit.Low || r.Value > f.Limit.High {
-		needed = j.policy.Reject
-	}
-	z := distuv.UnitNormal.Quantile(needed)
-	if z <= 0 || math.IsInf(distance, 1) {
-		return 0
-	}
-	return math.Sqrt(3) * distance / z / math.Abs(r.Value)
 }
 
 // holdRating lets a rating answer: its whole band must lie inside. A measured value may refute a rating, never replace it.

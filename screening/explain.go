@@ -252,8 +252,13 @@ func (j *judging) settleStep(s criterionState, f *Finding) Step {
 	if f.TooCoarse {
 		return Step{Code: CodeRepeat, Text: text + " with every digit that the meter shows, on its lowest range", Gap: f.Wants}
 	}
-	if f.Wants.Accuracy > 0 {
+	switch more := moreReadings(f.Wants.Repeats); {
+	case f.Wants.Accuracy > 0 && more != "":
+		text += ": needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2) + ", or " + more
+	case f.Wants.Accuracy > 0:
 		text += ": needs ±" + quantity.Format(f.Wants.Accuracy, quantity.Ratio, 2)
+	case more != "":
+		text += ": needs " + more
 	}
 	return Step{Code: CodeRepeat, Text: text, Gap: f.Wants}
 }

@@ -2,6 +2,7 @@ package screening
 
 import (
 	"fmt"
+	"math"
 	"slices"
 
 	"goodbin/screening/quantity"
@@ -23,6 +24,7 @@ func Judge(book *Rulebook, part Part, policy Policy) (Judgement, error) {
 	}
 	part.Claim = claim
 	part.Readings = j.prepare(part)
+	notes = append(notes, j.behaviours(part.Readings)...)
 	if book.Derive != nil {
 		derived, why := book.Derive(part)
 		part.Readings = append(part.Readings, derived...)
@@ -65,31 +67,33 @@ func (j *judging) complete(claim Claim) (Claim, []Reason, error) {
 	return j.book.Complete(claim)
 }
 
-// prepare fills in what the readings that stand leave open: the ambient temperature, what then is left of the field's default condition,
-// the uncertainty. A measured ambient goes before an assumed one.
+// prepare fills in what the readings that stand leave open: the meter's own test signal, the ambient temperature, what then is left of the
+// field's default condition, the correction for the leads, the uncertainty. A measured ambient goes before an assumed one. What an earlier
+// judging filled in is taken out first, so that to judge a judged part again changes nothing.
 func (j *judging) prepare(part Part) []Reading {
 	readings := part.Current()
 	ambient, hasAmbient := part.Ambient()
 	for i := range readings {
 		r := &readings[i]
+		meter := j.policy.meter(r.Meter)
+		r.Value, r.Correction = r.shown(), 0
+		r.At = r.At.dropping(&r.AssumedAt).dropping(&r.MeterAt)
+		r.AssumedAt, r.MeterAt = Condition{}, Condition{}
+		if g, _ := meter.rangeOf(r.Of, r.Unit, math.Abs(r.Value)); g != nil && g.At.n > 0 {
+			r.At, r.MeterAt = r.At.filling(&g.At)
+		}
 		if hasAmbient && r.Of != Temperature.Name && !r.At.Has(PartTemperature) {
 			r.At = r.At.With(PartTemperature, ambient.Value)
 		}
-		if f := j.book.bench(r.Of); f != nil && !f.Default.IsZero() {
-			filled := r.At.Fill(f.Default)
-			for v := Frequency; v < variables; v++ {
-				if x, added := filled.Get(v); added && !r.At.Has(v) {
-					r.AssumedAt = r.AssumedAt.With(v, x)
-				}
-			}
-			r.At = filled
+		if f := j.book.bench(r.Of); f != nil && f.Default.n > 0 {
+			r.At, r.AssumedAt = r.At.filling(&f.Default)
 		}
-		meter, ok := j.policy.Meters[r.Meter]
-		if !ok {
-			meter = AssumedMeter()
+		meter.Leads.correct(r)
+		d := meter.doubt(r)
+		r.U, r.Spec, r.Assumed = d.judged(), 0, meter.Assumed || !d.covered
+		if !d.exact {
+			r.Spec = d.a.halfWidth(r.shown(), r.Step)
 		}
-		r.U, r.Spec = meter.Uncertainty(*r), meter.HalfWidth(*r)
-		r.Assumed = meter.Assumed
 	}
 	return readings
 }

@@ -150,6 +150,7 @@ type Gap struct {
 	Section  string
 	At       Condition
 	Accuracy float64 // relative accuracy (half-width of a rectangular specification) that would decide; 0 where not known or not the matter
+	Repeats  int     // how many more readings would decide, if they scatter alike about the same mean; 0 where no number of them can
 }
 
 // Evidence returns the reading that was held against the limit: the converted one where there is one. It is nil where there is none.

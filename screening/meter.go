@@ -11,19 +11,49 @@ import (
 	"goodbin/screening/quantity"
 )
 
-// Accuracy is a meter's claim for one characteristic: ±(Relative·|x| + Counts·step + Absolute), taken as rectangular (JCGM 100, 4.3.7).
-// The counts or the absolute part include the digit.
+// Confidence says what a maker's ±a means.
+type Confidence uint8
+
+// The confidences. What is not said is taken as rectangular.
+const (
+	WithinIt Confidence = iota // never further off than ±a, anywhere inside alike: u = a/√3 (JCGM 100, 4.3.7)
+	Normal99                   // 99 % of a normal distribution: u = a/2.58 (JCGM 100, 4.3.4)
+)
+
+// String returns the confidence as a meter's description spells it: "rectangular" or "99%".
+func (c Confidence) String() string { return [...]string{"rectangular", "99%"}[min(int(c), 1)] }
+
+// Accuracy is a meter's claim for one characteristic: ±(Relative·|x| + Counts·step + Absolute), x being what the meter shows. The counts or
+// the absolute part include the digit unless DigitApart says otherwise.
 type Accuracy struct {
-	Relative float64 // of the reading, as a ratio
-	Counts   float64 // in units of the last digit
-	Absolute float64 // SI
+	Relative   float64 // of the reading, as a ratio
+	Counts     float64 // in units of the last digit
+	Absolute   float64 // SI
+	Resolution float64 // value of one count, SI; 0: that of the last typed digit
+	Confidence Confidence
+	DigitApart bool    // the claim leaves the digit out; it is added
+	Spread     float64 // standard deviation of repeats on a steady part, SI, that two or three repeats are not believed below; 0: not stated
 }
 
-// Meter is an instrument with its accuracies by characteristic; Default serves those it does not name, by unit.
+// Range is one range of a meter: what it claims of readings whose magnitude lies from Low to High.
+type Range struct {
+	Of        Characteristic // "" for every characteristic in Unit that has no ranges of its own
+	Unit      quantity.Unit
+	Low, High float64   // SI, both ends included; a High of 0 has no upper end
+	At        Condition // the test signal; readings that state none were taken at it
+	Accuracy
+}
+
+func (g *Range) holds(x float64) bool { return x >= g.Low && (g.High == 0 || x <= g.High) }
+
+// Meter is an instrument with its accuracies. Those in Ranges go first, by characteristic before by unit, the first that holds the reading;
+// then By, then ByUnit. A meter with Ranges that lists none for a reading is taken to be no better than the assumed one.
 type Meter struct {
 	Name    string
+	Ranges  []Range
 	By      map[Characteristic]Accuracy
 	ByUnit  map[quantity.Unit]Accuracy
+	Leads   Leads
 	Assumed bool
 }
 
@@ -65,34 +95,86 @@ var assumedMeter = sync.OnceValue(func() Meter {
 	return m
 })
 
-// accuracy returns the meter's claim for a characteristic.
-func (m *Meter) accuracy(of Characteristic, unit quantity.Unit) Accuracy {
-	if a, ok := m.By[of]; ok {
-		return a
+// accuracy returns the meter's claim for a reading that shows x, and the range it stands in, nil where it stands in none. covered is false
+// where the meter has ranges and none of them serves: the assumed meter's claim then counts, or that of the nearest range if it is wider.
+func (m *Meter) accuracy(of Characteristic, unit quantity.Unit, x, step float64) (a Accuracy, in *Range, covered bool) {
+	x = math.Abs(x)
+	in, own := m.rangeOf(of, unit, x)
+	if in != nil && in.holds(x) {
+		return in.Accuracy, in, true
 	}
-	return m.ByUnit[unit]
+	if a, ok := m.By[of]; ok && !own {
+		return a, nil, true
+	}
+	if a, ok := m.ByUnit[unit]; ok && !own || len(m.Ranges) == 0 {
+		return a, nil, true
+	}
+	assumed := AssumedMeter()
+	a, _, _ = assumed.accuracy(of, unit, x, step)
+	if in != nil && in.halfWidth(x, step) > a.halfWidth(x, step) {
+		a = in.Accuracy
+	}
+	return a, in, false
+}
+
+// rangeOf returns the first range that holds x, else the nearest one to it; own reports that it is the characteristic's own.
+func (m *Meter) rangeOf(of Characteristic, unit quantity.Unit, x float64) (nearest *Range, own bool) {
+	off := math.Inf(1)
+	for i := range m.Ranges {
+		g := &m.Ranges[i]
+		mine := g.Of == of
+		if !mine && (own || g.Of != "" || g.Unit != unit) {
+			continue
+		}
+		d := math.Max(0, g.Low-x)
+		if g.High > 0 {
+			d = math.Max(d, x-g.High)
+		}
+		if mine && !own || d < off {
+			nearest, off, own = g, d, mine
+		}
+	}
+	return nearest, own
+}
+
+// halfWidth returns ±a for a reading that shows x with this last digit, the digit included.
+func (a *Accuracy) halfWidth(x, step float64) float64 {
+	claim, digit := a.claim(x, step)
+	return claim + digit
+}
+
+// claim returns the half-widths of what the maker claims and of the digit where the claim does not hold it: where it leaves it out, and where
+// fewer digits were written down than the meter shows. A claim that says nothing of the digit is never less than half of it.
+func (a *Accuracy) claim(x, step float64) (claim, digit float64) {
+	count := step
+	if a.Resolution > 0 {
+		count = a.Resolution
+	}
+	claim = a.Relative*math.Abs(x) + a.Counts*count + a.Absolute
+	switch {
+	case a.DigitApart:
+		return claim, math.Max(count, step) / 2
+	case a.Resolution > 0 && step > a.Resolution*(1+1e-9):
+		return claim, step / 2
+	}
+	return math.Max(claim, step/2), 0
 }
 
 // HalfWidth returns how far a meter that keeps its specification can be off at this reading, SI: never less than half of the last typed
 // digit, 0 for an exact meter.
 func (m *Meter) HalfWidth(r Reading) float64 {
-	a := m.accuracy(r.Of, r.Unit)
+	a, _, _ := m.accuracy(r.Of, r.Unit, r.shown(), r.Step)
 	if a == (Accuracy{}) {
 		return 0
 	}
-	return math.Max(a.Relative*math.Abs(r.Value)+a.Counts*r.Step+a.Absolute, r.Step/2)
+	return a.halfWidth(r.shown(), r.Step)
 }
 
-// Uncertainty returns the standard uncertainty of a reading taken with this meter, SI: the specification as a rectangular distribution
-// of half-width a, u = a/√3, combined with the scatter of repeats s/√n (JCGM 100, 4.2.3, 4.3.7). Repeats shrink only the scatter; the
-// specification is common to all of them. Of an exact meter it is 0.
+// Uncertainty returns the standard uncertainty of a reading taken with this meter, SI, as JCGM 100 states it: the specification as a
+// rectangular distribution of half-width a, u = a/√3, or as the meter's entry says, combined with the digit, the leads and the scatter of
+// repeats s/√n (JCGM 100, 4.2.3, 4.3.7). Repeats shrink only the scatter; the specification is common to all of them. Of an exact meter it
+// is 0. The judge, who takes every reading as normally distributed, widens the scatter of few repeats ([BudgetOf]).
 func (m *Meter) Uncertainty(r Reading) float64 {
-	u := m.HalfWidth(r) / math.Sqrt(3)
-	if u == 0 {
-		return 0
-	}
-	if n := len(r.Repeats); n > 1 {
-		u = math.Hypot(u, r.Spread()/math.Sqrt(float64(n)))
-	}
-	return u
+	d := m.doubt(&r)
+	return d.plain()
 }

@@ -1,19 +1,5 @@
 package screening
 
-// DecisionRule says how a reading with its uncertainty is held against a limit.
-type DecisionRule uint8
-
-// The decision rules built so far.
-const (
-	ByProbability    DecisionRule = iota // JCGM 106:2012 conformance probability against the policy's thresholds
-	SimpleAcceptance                     // the reading against the closed interval; shared risk
-)
-
-// String returns the rule's name.
-func (d DecisionRule) String() string {
-	return [...]string{"by-probability", "simple-acceptance"}[min(int(d), 1)]
-}
-
 // Policy is the workbook's choices.
 type Policy struct {
 	Lowest Grade // the lowest grade that may be accepted
@@ -36,6 +22,14 @@ func DefaultPolicy() Policy {
 	}
 }
 
+// meter returns the instrument of a name; one that the policy does not know is the assumed one.
+func (p *Policy) meter(name string) Meter {
+	if m, ok := p.Meters[name]; ok {
+		return m
+	}
+	return AssumedMeter()
+}
+
 // counts reports whether a limit takes part in the verdict under this policy.
 func (p *Policy) counts(kind Kind, l *Limit) bool {
 	if l.Need == RoleOnly {
@@ -49,7 +43,7 @@ func (p *Policy) counts(kind Kind, l *Limit) bool {
 
 // threshold returns the conformance probability that a limit needs to pass.
 func (p *Policy) threshold(l *Limit) float64 {
-	if l.Soft && l.Grade == Serviceable {
+	if l.soft() {
 		return p.Soft
 	}
 	return p.Accept

@@ -1,10 +1,10 @@
 package screening
 
 import (
-	"math"
 	"slices"
 
 	"goodbin/screening/quantity"
+	"goodbin/screening/uncertainty"
 )
 
 // Reading is what the bench measured: one value, or a series of repeats of it, at a condition.
@@ -26,21 +26,26 @@ type Reading struct {
 	Spec      float64   // how far the meter may be off while it keeps its specification, SI; 0 where U is not a meter's
 	Assumed   bool      // U rests on the assumed meter
 	AssumedAt Condition // the part of At that is the field's default, not typed
-	Rule      string    // how it was derived or converted; "" for a reading as taken
+	MeterAt   Condition // the part of At that is the meter's own test signal, not typed
+	// Correction is what was added to the value shown for the meter's leads, SI; Value holds it already.
+	Correction float64
+	Rule       string  // how it was derived or converted; "" for a reading as taken
+	From       []Input // what it was derived from, where its rule lists it
 }
 
-// Spread returns the sample standard deviation of a series of repeats, 0 for a single reading.
-func (r Reading) Spread() float64 {
-	n := float64(len(r.Repeats))
-	if n < 2 {
-		return 0
-	}
-	var sum float64
-	for _, x := range r.Repeats {
-		sum += (x - r.Value) * (x - r.Value)
-	}
-	return math.Sqrt(sum / (n - 1))
+// Input is a reading or rating that another reading was derived from.
+type Input struct {
+	Of          Characteristic
+	Name        string  // in words, where it is no reading: "rated capacitance and its tolerance"
+	U           float64 // standard uncertainty, SI
+	Sensitivity float64 // by how much the result changes per unit of it
 }
+
+// shown returns the value as the meter showed it.
+func (r *Reading) shown() float64 { return r.Value - r.Correction }
+
+// Spread returns the sample standard deviation of a series of repeats, 0 for a single reading.
+func (r Reading) Spread() float64 { return uncertainty.Spread(r.Repeats) }
 
 // Series makes one reading of several readings of the same thing. Its step is the coarsest. It returns the zero Reading for none.
 func Series(readings ...Reading) Reading {

@@ -55,6 +55,8 @@ const (
 	CodeNearLimit       = "near-limit"
 	CodeAssumed         = "assumed"
 	CodeNote            = "note"
+	CodeDrifting        = "drifting"
+	CodeUnsettled       = "unsettled"
 	CodeSeen            = "seen"
 	CodeMeasure         = "measure"
 	CodeRepeat          = "repeat"

@@ -36,8 +36,9 @@ func (a *app) judgeCommand() *cobra.Command {
 
 func (a *app) judgeFlags(cmd *cobra.Command) {
 	cmd.Flags().BoolVar(&a.json, "json", false, "print JSON: SI units, null where open or absent")
-	cmd.Flags().StringVar(&a.decision, "decision", "by-probability", "decision `RULE`: by-probability (95 % to pass, 95 % to fail) or simple")
-	_ = cmd.RegisterFlagCompletionFunc("decision", cobra.FixedCompletions([]string{"by-probability", "simple"}, cobra.ShellCompDirectiveNoFileComp))
+	cmd.Flags().StringVar(&a.decision, "decision", "by-probability",
+		"decision `RULE`: by-probability (95 % to pass, 95 % to fail), guard-band, guard-band-0.83 or simple")
+	_ = cmd.RegisterFlagCompletionFunc("decision", cobra.FixedCompletions(decisionFlags(), cobra.ShellCompDirectiveNoFileComp))
 }
 
 func (a *app) judge(kind string, words []string) error {

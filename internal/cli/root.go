@@ -162,14 +162,26 @@ func (a *app) book(kind string) (*screening.Rulebook, error) {
 // policy returns the choices that the flags leave.
 func (a *app) policy() (screening.Policy, error) {
 	p := screening.DefaultPolicy()
-	switch a.decision {
-	case "", "by-probability":
-	case "simple":
-		p.Rule = screening.SimpleAcceptance
-	default:
-		return p, request(fmt.Errorf("--decision %q is no decision rule", a.decision), "it is by-probability or simple")
+	if a.decision == "" {
+		return p, nil
 	}
+	rule, ok := screening.DecisionRuleNamed(a.decision)
+	if !ok {
+		flags := decisionFlags()
+		last := len(flags) - 1
+		return p, request(fmt.Errorf("--decision %q is no decision rule", a.decision), "it is "+strings.Join(flags[:last], ", ")+" or "+flags[last])
+	}
+	p.Rule = rule
 	return p, nil
+}
+
+// decisionFlags lists the decision rules as the command line spells them.
+func decisionFlags() []string {
+	var names []string
+	for _, d := range screening.DecisionRules() {
+		names = append(names, d.Flag())
+	}
+	return names
 }
 
 var errNoKind = errors.New("say what kind of part it is")

@@ -77,6 +77,7 @@ func netOf(part screening.Part, gain screening.Reading) (net screening.Reading, 
 	net = gain
 	net.Of, net.Unit, net.Value, net.U = HFENet.Name, HFENet.Unit, value, uNet
 	net.Repeats, net.Step, net.Typed = nil, stepOf(uNet), ""
+	net.From = []screening.Input{{Of: gain.Of, U: gain.U, Sensitivity: 1 - iceo/ic}, {Of: leak.Of, U: u, Sensitivity: -gain.Value / ic}}
 	net.Assumed = gain.Assumed || leak.Assumed
 	net.Rule = fmt.Sprintf("(%s − %s) over a base current of %s", quantity.Format(ic, quantity.Ampere, 3),
 		quantity.Format(iceo, quantity.Ampere, 3), quantity.Format(ic/gain.Value, quantity.Ampere, 3))

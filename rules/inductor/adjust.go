@@ -22,6 +22,9 @@ func derive(part screening.Part) ([]screening.Reading, []screening.Reason) {
 				Of: Q.Name, Unit: Q.Unit, Value: q, At: screening.At(screening.Frequency, f), Meter: l.Meter, Assumed: l.Assumed || esr.Assumed,
 				U: q * math.Hypot(l.U/l.Value, esr.U/esr.Value), Spec: q * (l.Spec/l.Value + esr.Spec/esr.Value),
 				Rule: "2πfL/R of the readings of inductance and series resistance",
+				From: []screening.Input{
+					{Of: l.Of, U: l.U, Sensitivity: q / l.Value}, {Of: esr.Of, U: esr.U, Sensitivity: -q / esr.Value},
+				},
 			}}, nil
 		}
 	}

@@ -87,6 +87,9 @@ func derive(part screening.Part) ([]screening.Reading, []screening.Reason) {
 		ohms := r
 		ohms.Of, ohms.Unit, ohms.Value = screening.RDSOn.Name, screening.RDSOn.Unit, r.Value/id
 		ohms.U = math.Hypot(r.U/id, ohms.Value*setCurrent/math.Sqrt(3))
+		ohms.From = []screening.Input{
+			{Of: r.Of, U: r.U, Sensitivity: 1 / id}, {Name: "the drain current as set", U: setCurrent * id / math.Sqrt(3), Sensitivity: -ohms.Value / id},
+		}
 		ohms.Spec = r.Spec/id + ohms.Value*setCurrent
 		ohms.Step, ohms.Repeats, ohms.Typed = 0, nil, ""
 		ohms.Rule = quantity.Format(r.Value, quantity.Volt, 3) + " over " + semi.Amps(id)

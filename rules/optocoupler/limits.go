@@ -145,6 +145,9 @@ func derive(part screening.Part) ([]screening.Reading, []screening.Reason) {
 		}
 		r.Rule = "IC/IF = " + quantity.Format(r.Value, quantity.Ampere, 3) + "/" + quantity.Format(i, quantity.Ampere, 3)
 		// The LED's current was set with a meter of the same sort.
+		r.From = []screening.Input{
+			{Of: r.Of, U: r.U, Sensitivity: 1 / i}, {Name: "the LED's current as set", U: currentError * i, Sensitivity: -r.Value / (i * i)},
+		}
 		r.U = math.Hypot(r.U, currentError*r.Value) / i
 		r.Of, r.Unit, r.Value, r.Spec, r.Step, r.Repeats = CTR.Name, CTR.Unit, r.Value/i, r.Spec/i, r.Step/i, nil
 		derived = append(derived, r)

@@ -60,51 +60,61 @@ func readThere(part screening.Part, d screening.Reading) bool {
 	})
 }
 
-// capacitanceOf returns the capacitance to compute with: the one read, else the nominal one with its tolerance as a rectangle; farad and
-// standard uncertainty, and how far it may be off.
-func capacitanceOf(part screening.Part, section string) (farad, u, spec float64, ok bool) {
-	if r, measured := part.Reading(screening.Capacitance.Name, section); measured && r.Sense == quantity.Exactly && r.Value > 0 {
-		return r.Value, r.U, r.Spec, true
-	}
-	farad, ok = part.Claim.Nominal(screening.Capacitance.Name, section)
-	t, _ := part.Claim.Rating(screening.Tolerance.Name, section)
-	spec = farad * math.Max(math.Abs(t.Low), math.Abs(t.High))
-	return farad, spec / math.Sqrt(3), spec, ok && farad > 0
+// capacity is a capacitance to compute with: farad, its standard uncertainty, how far it may be off, and where it is from.
+type capacity struct {
+	farad, u, spec float64
+	name           string
 }
 
-// scaled returns r as another characteristic, its value times factor, whose own relative uncertainty and reach are those of the capacitance
-// that factor holds.
-func scaled(r screening.Reading, d screening.Definition, factor, relativeU, relativeSpec float64) screening.Reading {
+// capacitanceOf returns the capacitance to compute with: the one read, else the nominal one with its tolerance as a rectangle.
+func capacitanceOf(part screening.Part, section string) (c capacity, ok bool) {
+	if r, measured := part.Reading(screening.Capacitance.Name, section); measured && r.Sense == quantity.Exactly && r.Value > 0 {
+		return capacity{r.Value, r.U, r.Spec, "capacitance as read"}, true
+	}
+	c.name = "capacitance as claimed, with its tolerance"
+	c.farad, ok = part.Claim.Nominal(screening.Capacitance.Name, section)
+	t, _ := part.Claim.Rating(screening.Tolerance.Name, section)
+	c.spec = c.farad * math.Max(math.Abs(t.Low), math.Abs(t.High))
+	c.u = c.spec / math.Sqrt(3)
+	return c, ok && c.farad > 0
+}
+
+// scaled returns r as another characteristic, its value times factor, which holds the capacitance as a factor or divisor.
+func scaled(r screening.Reading, d screening.Definition, factor float64, c capacity) screening.Reading {
 	n := r
 	n.Of, n.Unit, n.Value = d.Name, d.Unit, r.Value*factor
-	n.U = math.Hypot(r.U*factor, n.Value*relativeU)
-	n.Spec = r.Spec*factor + n.Value*relativeSpec
+	n.U = math.Hypot(r.U*factor, n.Value*c.u/c.farad)
+	n.Spec = r.Spec*factor + n.Value*c.spec/c.farad
 	n.Repeats, n.Step, n.Typed, n.Over = nil, 0, "", false
+	n.From = []screening.Input{
+		{Of: r.Of, U: r.U, Sensitivity: factor},
+		{Of: screening.Capacitance.Name, Name: c.name, U: c.u, Sensitivity: n.Value / c.farad},
+	}
 	return n
 }
 
 func tanDeltaFrom(part screening.Part, r screening.Reading) (screening.Reading, string) {
 	hertz, stated := r.At.Get(screening.Frequency)
-	c, u, spec, ok := capacitanceOf(part, r.Section)
+	c, ok := capacitanceOf(part, r.Section)
 	switch {
 	case !stated:
 		return screening.Reading{}, "say at which frequency the ESR was read: esr@1kHz=…"
 	case !ok || hertz <= 0:
 		return screening.Reading{}, ""
 	}
-	d := scaled(r, screening.TanDelta, TanDeltaOf(1, hertz, c), u/c, spec/c)
-	d.Rule = fmt.Sprintf("2π·%s·%s·%s", quantity.Format(hertz, quantity.Hertz, 0), Farads(c), quantity.Format(r.Value, quantity.Ohm, 3))
+	d := scaled(r, screening.TanDelta, TanDeltaOf(1, hertz, c.farad), c)
+	d.Rule = fmt.Sprintf("2π·%s·%s·%s", quantity.Format(hertz, quantity.Hertz, 0), Farads(c.farad), quantity.Format(r.Value, quantity.Ohm, 3))
 	return d, ""
 }
 
 func esrFrom(part screening.Part, r screening.Reading) (screening.Reading, string) {
 	hertz, stated := r.At.Get(screening.Frequency)
-	c, u, spec, ok := capacitanceOf(part, r.Section)
+	c, ok := capacitanceOf(part, r.Section)
 	if !stated || !ok || hertz <= 0 {
 		return screening.Reading{}, "" // the limit on tan δ itself asks for the frequency
 	}
-	d := scaled(r, screening.ESR, ESROf(1, hertz, c), u/c, spec/c)
-	d.Rule = fmt.Sprintf("%.3g/(2π·%s·%s)", r.Value, quantity.Format(hertz, quantity.Hertz, 0), Farads(c))
+	d := scaled(r, screening.ESR, ESROf(1, hertz, c.farad), c)
+	d.Rule = fmt.Sprintf("%.3g/(2π·%s·%s)", r.Value, quantity.Format(hertz, quantity.Hertz, 0), Farads(c.farad))
 	return d, ""
 }
 
@@ -132,6 +142,7 @@ func insulationFromLeakage(r screening.Reading) (screening.Reading, string) {
 	default:
 		d.Value = volts / r.Value
 		d.U, d.Spec = d.Value*r.U/r.Value, d.Value*r.Spec/r.Value
+		d.From = []screening.Input{{Of: r.Of, U: r.U, Sensitivity: -d.Value / r.Value}}
 	}
 	return d, ""
 }
@@ -141,17 +152,17 @@ func tooCoarse(r *screening.Reading) bool { return r.U > widestDerived*r.Value }
 
 // insulationFromTime: R = τ/C. Dielectric absorption and the air take charge too, so that the part insulates at least so well.
 func insulationFromTime(part screening.Part, r screening.Reading) (screening.Reading, string) {
-	c, u, spec, ok := capacitanceOf(part, r.Section)
+	c, ok := capacitanceOf(part, r.Section)
 	if !ok {
 		return screening.Reading{}, ""
 	}
 	if !r.At.Has(screening.Voltage) {
 		return screening.Reading{}, "say at which voltage the self-discharge began: time-constant@100V=…"
 	}
-	d := scaled(r, screening.InsulationResistance, 1/c, u/c, spec/c)
+	d := scaled(r, screening.InsulationResistance, 1/c.farad, c)
 	if d.Sense == quantity.Exactly {
 		d.Sense = quantity.AtLeast
 	}
-	d.Rule = fmt.Sprintf("%s/%s", quantity.Format(r.Value, quantity.Second, 3), Farads(c))
+	d.Rule = fmt.Sprintf("%s/%s", quantity.Format(r.Value, quantity.Second, 3), Farads(c.farad))
 	return d, ""
 }
