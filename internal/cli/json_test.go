@@ -32,15 +32,16 @@ func runHere(t testing.TB, stdin string, args ...string) (stdout, stderr string,
 
 // jsonShapes are the objects that --json prints, by the command that prints them.
 var jsonShapes = map[string][]any{
-	"judge":   {jsonJudgement{}},
-	"limits":  {jsonLimits{}},
-	"marking": {jsonMarking{}},
-	"screen":  {jsonJudgement{}, jsonWrong{}, jsonCounts{}},
-	"stock":   {jsonStock{}},
-	"export":  {jsonLot{}, jsonPart{}, jsonHouseType{}, jsonFamilies{}},
-	"types":   {jsonTypeRow{}, jsonGuess{}},
-	"verify":  {jsonVerify{}},
-	"version": {jsonVersion{}},
+	"judge":    {jsonJudgement{}},
+	"limits":   {jsonLimits{}},
+	"marking":  {jsonMarking{}},
+	"screen":   {jsonJudgement{}, jsonWrong{}, jsonCounts{}},
+	"sampling": {jsonSampling{}},
+	"stock":    {jsonStock{}},
+	"export":   {jsonLot{}, jsonPart{}, jsonHouseType{}, jsonFamilies{}},
+	"types":    {jsonTypeRow{}, jsonGuess{}},
+	"verify":   {jsonVerify{}},
+	"version":  {jsonVersion{}},
 }
 
 // TestJSONShapes holds the names and types in every JSON output against testdata/json: what scripts rely on does not change unnoticed.

@@ -103,7 +103,7 @@ meter's own error, and says what to do with the part and why. Every judged part 
 	root.AddCommand(
 		a.judgeCommand(), a.limitsCommand(), a.markingCommand(), a.screenCommand(), a.stockCommand(), a.benchCommand(), a.exportCommand(),
 		a.backupCommand(), a.verifyCommand(), a.verifyChildCommand(), a.versionCommand(), a.typesCommand(),
-		a.familiesCommand(),
+		a.familiesCommand(), a.samplingCommand(),
 	)
 	root.AddCommand(a.stockCommands()...)
 	return root
