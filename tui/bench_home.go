@@ -193,9 +193,12 @@ func (r lotRows) count() int { return len(r.lots) }
 
 func (r lotRows) cells(i int, dst []string) {
 	l := r.lots[i]
-	claim := l.Header
-	if l.Mixed {
+	claim := l.Claim.String()
+	switch {
+	case l.Mixed:
 		claim = "mixed"
+	case claim == "":
+		claim = l.Header
 	}
 	texts := [...]string{
 		inventory.ID{Lot: l.ID}.String(), string(l.Kind), claim, strconv.Itoa(r.held[l.ID].parts),
@@ -210,8 +213,8 @@ func (b *bench) drawHome(w, h int) ([]string, spot) {
 	t := b.d.t
 	cols := columnsFor([]column{
 		{title: "lot", w: 5, right: true},
-		{title: "kind", w: 13},
-		{title: "claims", w: max(18, min(40, w-76))},
+		{title: "kind", w: 18},
+		{title: "claims", w: max(20, min(40, w-81))},
 		{title: "parts", w: 6, right: true},
 		{title: "usable", w: 6, right: true},
 		{title: "place", w: 16},

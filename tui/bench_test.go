@@ -341,7 +341,7 @@ func TestBenchListsTheLotsAndOpensOne(t *testing.T) {
 	d := newLot(t, "100uF 35V 1986")
 	d.answer("00", "98")
 	d.press("esc")
-	d.mustShow("Lots", "100uF 35V 1986", "shelf B")
+	d.mustShow("Lots", "100 µF 35 V 1986", "shelf B")
 	d.press("enter")
 	d.mustShow("1-01  series resistance")
 	d.press("f8")
