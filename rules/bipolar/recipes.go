@@ -36,9 +36,13 @@ func (b rulebook) recipes(part screening.Part, l screening.Limit) []screening.Re
 		}
 		return all
 	case ICEO.Name:
-		return []screening.Recipe{leakageRecipe(p, l)}
+		if v, stated := l.At.Get(screening.VCE); stated && v > 0 {
+			return []screening.Recipe{leakageRecipe(p, l)}
+		}
 	case ICBO.Name:
-		return []screening.Recipe{collectorRecipe(p, l)}
+		if v, stated := l.At.Get(screening.VCB); stated && v > 0 { // a limit that is claimed without its voltage says nothing of the supply
+			return []screening.Recipe{collectorRecipe(p, l)}
+		}
 	case screening.VBR.Name:
 		return []screening.Recipe{breakdownRecipe(p)}
 	case screening.Temperature.Name:
