@@ -26,8 +26,11 @@ func BudgetOf(r Reading, policy Policy) uncertainty.Budget {
 	}
 	b.Contributions = make([]uncertainty.Contribution, 0, 5) // with room for a conversion
 	source := cmp.Or(m.Name, "the meter's entry")
-	if m.Assumed || !d.covered {
+	switch {
+	case !d.covered || m.Assumed && m.Name == "":
 		source = "assumed meter (house)"
+	case m.Assumed:
+		source += ", typical figures from memory"
 	}
 	add := func(kind uncertainty.Kind, name string, u float64, source string) {
 		if u > 0 {

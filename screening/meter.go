@@ -117,6 +117,13 @@ func (m *Meter) accuracy(of Characteristic, unit quantity.Unit, x, step float64)
 	return a, in, false
 }
 
+// Covers reports whether the meter's own claim holds for a reading. Where it does not, the assumed meter's counts, or that of the nearest range
+// where it is wider.
+func (m *Meter) Covers(r Reading) bool {
+	_, _, covered := m.accuracy(r.Of, r.Unit, r.shown(), r.Step)
+	return covered
+}
+
 // rangeOf returns the first range that holds x, else the nearest one to it; own reports that it is the characteristic's own.
 func (m *Meter) rangeOf(of Characteristic, unit quantity.Unit, x float64) (nearest *Range, own bool) {
 	off := math.Inf(1)

@@ -11,7 +11,7 @@ import (
 )
 
 // needNoHouse are the commands that judge nothing and show no verdict.
-var needNoHouse = []string{"version", "sampling", verifyChild, "completion", "bash", "zsh", "fish", "powershell", "no-help"}
+var needNoHouse = []string{"version", "sampling", "meters", verifyChild, "completion", "bash", "zsh", "fish", "powershell", "no-help"}
 
 // leaveWorkbook are the commands that do not open the workbook themselves: what is wrong with it is said only here.
 var leaveWorkbook = []string{"judge", "limits", "marking", "list", "show"}

@@ -55,12 +55,18 @@ type jsonFinding struct {
 	Probability *float64       `json:"probability"`
 	Margin      *float64       `json:"margin"`
 	Why         *string        `json:"why"`
+	Statement   *string        `json:"statement"`
+	Risk        jsonRisk       `json:"risk"`
+
+	Budget      []jsonContribution `json:"budget,omitempty"`      // with --budget
+	Uncertainty *jsonUncertainty   `json:"uncertainty,omitempty"` // with --budget
 }
 
-func findingJSON(f *screening.Finding) jsonFinding {
+func findingJSON(f *screening.Finding, policy *screening.Policy) jsonFinding {
 	out := jsonFinding{
 		Limit: limitJSON(&f.Limit), Need: f.Need.String(), By: "none", Reading: readingJSON(f.Reading), Outcome: f.Outcome.String(),
 		NearLimit: f.NearLimit, Probability: number(f.Probability), Margin: number(f.Margin), Why: text(f.Why),
+		Statement: text(f.Statement(policy.Rule).String()), Risk: riskJSON(f),
 	}
 	switch {
 	case f.By == screening.ByRating && f.Outcome != screening.Missing:
@@ -163,13 +169,16 @@ type jsonJudgement struct {
 	Next       []jsonStep     `json:"next"`
 	Cautions   []jsonCaution  `json:"cautions"`
 	Assumed    bool           `json:"assumed"`
+	Meter      jsonMeterUsed  `json:"meter"`
+	RuleWords  string         `json:"decision_words"`
 }
 
-func judgeJSON(book *screening.Rulebook, j screening.Judgement, policy screening.Policy) jsonJudgement {
+func judgeJSON(book *screening.Rulebook, j screening.Judgement, policy screening.Policy, budget bool) jsonJudgement {
 	out := jsonJudgement{
 		Schema: schema, Kind: string(book.Kind), Claim: claimJSON(j.Claim), Policy: policyJSON(policy), Tables: j.Tables,
 		Readings: []*jsonReading{}, Stops: []jsonStop{}, Findings: []jsonFinding{}, Verdict: j.Verdict.String(), Grade: text(j.Grade.String()),
 		NotTested: []jsonGap{}, Reasons: []jsonReason{}, Next: []jsonStep{}, Cautions: []jsonCaution{}, Assumed: j.Assumed,
+		Meter: meterUsedJSON(&j, &policy), RuleWords: policy.Rule.Words(),
 	}
 	for i := range j.Part.Readings {
 		out.Readings = append(out.Readings, readingJSON(&j.Part.Readings[i]))
@@ -178,7 +187,11 @@ func judgeJSON(book *screening.Rulebook, j screening.Judgement, policy screening
 		out.Stops = append(out.Stops, jsonStop{s.Check, s.Verdict.String(), s.Reason, text(s.Do), sourceJSON(s.Source)})
 	}
 	for i := range j.Findings {
-		out.Findings = append(out.Findings, findingJSON(&j.Findings[i]))
+		f := findingJSON(&j.Findings[i], &policy)
+		if budget {
+			f.Budget, f.Uncertainty = budgetJSON(&j.Findings[i], policy)
+		}
+		out.Findings = append(out.Findings, f)
 	}
 	if l := j.RegradedAs; l != nil {
 		out.RegradedAs = &jsonLesser{claimJSON(l.Claim), string(l.Answers), l.Text, sourceJSON(l.Source)}

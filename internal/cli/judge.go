@@ -11,6 +11,7 @@ const judgeExamples = `  goodbin judge electrolytic 2200uF 35V M capacitance=201
   goodbin judge bipolar type=2N3904 hfe@ic=10mA,vce=1V=180 vbe=0.68 iceo@20V=..0.1uA
   goodbin judge electrolytic 8+8/450 capacitance/1=8.2uF capacitance/2=7.9uF seen=nothing
   goodbin judge resistor 4k7 5% "resistance=4.68k, 4.69k, 4.68k"
+  goodbin judge resistor 4k7 5% resistance=4.9k --meter "hand-held LCR" --budget
 
 Words:
   NAME[/SECTION][@COND,...]=VALUE   a reading: x, ..x (at most), x.. (at least), OL, or repeats "x, y, z"
@@ -31,6 +32,7 @@ func (a *app) judgeCommand() *cobra.Command {
 	}
 	a.judgeFlags(cmd)
 	cmd.Flags().BoolVar(&a.all, "all", false, "show every limit, also those of criteria that are answered")
+	cmd.Flags().BoolVar(&a.budget, "budget", false, "show under every limit what makes its reading uncertain, the largest first, and the risk")
 	return cmd
 }
 
@@ -38,6 +40,9 @@ func (a *app) judgeFlags(cmd *cobra.Command) {
 	cmd.Flags().BoolVar(&a.json, "json", false, "print JSON: SI units, null where open or absent")
 	cmd.Flags().StringVar(&a.decision, "decision", "by-probability",
 		"decision `RULE`: by-probability (95 % to pass, 95 % to fail), guard-band, guard-band-0.83 or simple")
+	cmd.Flags().StringVar(&a.meter, "meter", "",
+		"the meter in `WORDS`: a class from goodbin meters, such as \"hand-held LCR\", or what yours claims: \"capacitance@1kHz 2%+5; ohms 0.8%+2\"")
+	_ = cmd.RegisterFlagCompletionFunc("meter", cobra.FixedCompletions(classNames(), cobra.ShellCompDirectiveNoFileComp))
 	_ = cmd.RegisterFlagCompletionFunc("decision", cobra.FixedCompletions(decisionFlags(), cobra.ShellCompDirectiveNoFileComp))
 }
 
@@ -65,9 +70,9 @@ func (a *app) judge(kind string, words []string) error {
 		}
 	}
 	if a.json {
-		err = a.writeJSON(judgeJSON(book, j, policy))
+		err = a.writeJSON(judgeJSON(book, j, policy, a.budget))
 	} else {
-		err = a.printJudgement(book, j, parsed)
+		err = a.printJudgement(book, j, parsed, policy)
 	}
 	if err != nil {
 		return err

@@ -16,9 +16,10 @@ import (
 func formatValue(x float64, unit quantity.Unit) string { return quantity.Bound(x, unit) }
 
 // printJudgement prints a judgement for a person: the verdict first, then why, what next, what was not tested, the cautions, and every limit.
-func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, parsed entry.Parsed) error {
+func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, parsed entry.Parsed, policy screening.Policy) error {
 	e := a.env
-	if err := e.strong(verdictLine(j)); err != nil {
+	meter := policy.Meters[""]
+	if err := e.strong(verdictBy(&meter, j)); err != nil {
 		return err
 	}
 	title := book.Label
@@ -34,12 +35,15 @@ func (a *app) printJudgement(book *screening.Rulebook, j screening.Judgement, pa
 	if err := a.printWhy(j, book); err != nil {
 		return err
 	}
+	if err := a.printMeter(book, &j, &policy); err != nil {
+		return err
+	}
 	for _, c := range j.Cautions {
 		if err := e.printCaution(c); err != nil {
 			return err
 		}
 	}
-	if err := a.printFindings(book, j); err != nil {
+	if err := a.printFindings(book, j, &policy); err != nil {
 		return err
 	}
 	if len(parsed.Echo) == 0 {
@@ -85,6 +89,12 @@ func (a *app) printOfType(book *screening.Rulebook, j *screening.Judgement, own 
 
 // verdictLine words the verdict with what it is held as: "ACCEPT, serviceable", "REGRADE: as measured, 112 µF".
 func verdictLine(j screening.Judgement) string {
+	assumed := screening.AssumedMeter()
+	return verdictBy(&assumed, j)
+}
+
+// verdictBy is the verdict's line for a part that was measured with one meter.
+func verdictBy(m *screening.Meter, j screening.Judgement) string {
 	text := strings.ToUpper(j.Verdict.String())
 	switch {
 	case j.RegradedAs != nil && j.Verdict == screening.Regrade:
@@ -99,8 +109,8 @@ func verdictLine(j screening.Judgement) string {
 	if j.Verdict.Usable() && j.Grade != screening.AnyGrade {
 		text += ", " + j.Grade.String()
 	}
-	if j.Assumed {
-		text += " (assumed meter)"
+	if by := meterText(m, &j); by != "" {
+		text += " (" + by + ")"
 	}
 	return text
 }
@@ -174,7 +184,7 @@ func (e *Env) printCaution(c screening.Caution) error {
 
 // printFindings prints the limits with their readings, each followed by its rule and source. Without --all, limits that wait for a reading
 // which another one of the same criterion has answered are left out.
-func (a *app) printFindings(book *screening.Rulebook, j screening.Judgement) error {
+func (a *app) printFindings(book *screening.Rulebook, j screening.Judgement, policy *screening.Policy) error {
 	var shown []*screening.Finding
 	for i := range j.Findings {
 		if f := &j.Findings[i]; a.all || f.Outcome != screening.Missing || !answeredElsewhere(j.Findings, f) {
@@ -203,6 +213,12 @@ func (a *app) printFindings(book *screening.Rulebook, j screening.Judgement) err
 			return err
 		}
 		if err := a.printRule(f); err != nil {
+			return err
+		}
+		if !a.budget {
+			continue
+		}
+		if err := a.printBudget(f, policy); err != nil {
 			return err
 		}
 	}

@@ -28,6 +28,8 @@ type app struct {
 	json     bool
 	all      bool // judge and limits: leave nothing out
 	decision string
+	meter    string // a class of meters, or a description
+	budget   bool   // judge: show what makes the readings uncertain
 }
 
 // Run runs the program with its arguments (without its name) and returns the exit status. It never panics on what it reads.
@@ -103,7 +105,7 @@ meter's own error, and says what to do with the part and why. Every judged part 
 	root.AddCommand(
 		a.judgeCommand(), a.limitsCommand(), a.markingCommand(), a.screenCommand(), a.stockCommand(), a.benchCommand(), a.exportCommand(),
 		a.backupCommand(), a.verifyCommand(), a.verifyChildCommand(), a.versionCommand(), a.typesCommand(),
-		a.familiesCommand(), a.samplingCommand(),
+		a.familiesCommand(), a.samplingCommand(), a.lotCommand(), a.metersCommand(),
 	)
 	root.AddCommand(a.stockCommands()...)
 	return root
@@ -162,6 +164,13 @@ func (a *app) book(kind string) (*screening.Rulebook, error) {
 // policy returns the choices that the flags leave.
 func (a *app) policy() (screening.Policy, error) {
 	p := screening.DefaultPolicy()
+	if a.meter != "" {
+		m, err := a.meterOf(a.meter)
+		if err != nil {
+			return p, err
+		}
+		p.Meters[""] = m
+	}
 	if a.decision == "" {
 		return p, nil
 	}

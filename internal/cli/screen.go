@@ -22,6 +22,7 @@ const screenExamples = `  goodbin screen box.csv
   goodbin screen box.csv --json                 one JSON object a line
   goodbin screen - < box.csv                    from standard input
   goodbin screen box.csv --keep=false           judge only; the workbook is not touched
+  goodbin screen box.csv --meter "hand-held LCR"
 
   kind,lot,part,place,claim,capacitance,esr@120Hz,"leakage@35V,2min [uA]",seen
   electrolytic,12,1,drawer 3,2200uF 35V M,2010uF,61m,45,nothing
@@ -69,6 +70,9 @@ func (a *app) screenFile(ctx context.Context, path string, s *screeningRun, keep
 	var err error
 	if s.policy, err = a.policy(); err != nil {
 		return err
+	}
+	if s.policy.Rule != screening.ByProbability && !a.json {
+		a.env.note("goodbin: decision rule: %s", s.policy.Rule.Words())
 	}
 	var in io.Reader
 	if path == "-" {

@@ -147,7 +147,8 @@ func (s *screeningRun) judgeRow(row entry.Row) judgedRow {
 	}
 	title := out.part.Claim.String()
 	out.outcome = inventory.Summarise(out.judgement, title, s.now)
-	out.said = [3]string{verdictLine(out.judgement), string(book.Kind) + " " + title, whyText(book, &out.judgement)}
+	meter := s.policy.Meters[""]
+	out.said = [3]string{verdictBy(&meter, out.judgement), string(book.Kind) + " " + title, whyText(book, &out.judgement)}
 	if s.asTyped || !outside(out.judgement.Findings) {
 		return out
 	}

@@ -160,7 +160,7 @@ func (s *screeningRun) judged(r judgedRow, part *inventory.Part) error {
 		id = inventory.ID{}
 	}
 	if s.json {
-		j := judgeJSON(r.row.Book, r.judgement, s.policy)
+		j := judgeJSON(r.row.Book, r.judgement, s.policy, false)
 		j.Lot, j.Part, j.Row = &id.Lot, &id.Number, &r.row.Line
 		return s.writeJSON(j)
 	}

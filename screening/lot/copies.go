@@ -136,8 +136,9 @@ func repeated(keys []int, count map[int]int) []Suspicion {
 		chance := math.Min(1, pairs*math.Pow(agree, float64(end-i)))
 		out = append(out, Suspicion{
 			Kind: Copied, Parts: between(i, end), Chance: chance, Test: "expected number of such repeats among random readings",
-			Why: fmt.Sprintf("parts %d to %d read one by one what parts %d to %d did; by chance in %s of bags. Copied: measure them again",
-				i+1, end, from+1, from+end-i, percent(chance)),
+			// Places are not what is written on the bag, so the text names none.
+			Why: fmt.Sprintf("these %d parts read one by one what the parts %d places before did; by chance in %s of bags. Copied: measure them again",
+				end-i, i-from, percent(chance)),
 		})
 		for ; i+1 < end && i+1+length <= n; i++ { // what was named needs no second word
 			hash.next()
