@@ -9,7 +9,6 @@ import (
 	_ "embed"
 	"errors"
 	"math"
-	"strings"
 	"sync"
 	"time"
 
@@ -104,11 +103,11 @@ func claims(t *types.Table) []screening.Field {
 	return []screening.Field{
 		sheet.Field(t, Kind, "KBP208"),
 		{
-			Definition: screening.VRRM, Example: "800V", AcceptRange: atLeastIn(quantity.Volt, "V"),
+			Definition: screening.VRRM, Example: "800V", AcceptRange: book.AtLeastIn(quantity.Volt, "V"),
 			Help: "the peak reverse voltage of its sheet; a B80 print is 80 V of AC input, not this",
 		},
 		{
-			Definition: screening.IFAV, Example: "1.5A", AcceptRange: atLeastIn(quantity.Ampere, "A"),
+			Definition: screening.IFAV, Example: "1.5A", AcceptRange: book.AtLeastIn(quantity.Ampere, "A"),
 			Help: "the output current it claims to carry; not tested",
 		},
 		{Definition: screening.IFSM, Example: "rated:ifsm=50A", Help: "the surge of one half-wave that its sheet allows; not tested"},
@@ -120,20 +119,6 @@ func claims(t *types.Table) []screening.Field {
 			Help: "the leads in order; + and ~ are mostly printed at them",
 		},
 		book.DatedField(),
-	}
-}
-
-// atLeastIn takes a bare value that states its unit as "at least so much": what stands on a bridge is what it claims to bear.
-func atLeastIn(unit quantity.Unit, symbol string) func(string) (low, high float64, ok bool) {
-	return func(word string) (low, high float64, ok bool) {
-		if !strings.HasSuffix(word, symbol) {
-			return 0, 0, false
-		}
-		v, err := quantity.Parse(word, unit)
-		if err != nil || v.Sense != quantity.Exactly || v.Over || v.Number <= 0 {
-			return 0, 0, false
-		}
-		return v.Number, inf, true
 	}
 }
 

@@ -37,20 +37,7 @@ func cautions(part screening.Part, at screening.Moment) []screening.Caution {
 		Values: map[string]float64{"supply": supply, "series-resistance": ohms, "resistor-power": watts}, Source: book.Practice,
 	}}
 	if known && rated > book.TouchVoltage {
-		ohms, watts := reverseTest(rated)
-		all = append(all, screening.Caution{
-			Code: "test-voltage", Level: screening.Danger,
-			Text: fmt.Sprintf("proving %s needs a supply that can kill. It is not needed for a first verdict: what was proved is said with it. "+
-				"If you must: %s in series, %s into a short, rated for the voltage; a cover over the part (it may burst), one hand, nobody alone, "+
-				"volts measured down to %.0f V before you touch anything; above %.0f V do as your local code and licensed practice say",
-				quantity.Format(rated, quantity.Volt, 0), book.About(ohms, quantity.Ohm), book.About(watts, quantity.Watt),
-				float64(screening.SafeVoltage), book.TouchVoltage),
-			Values: map[string]float64{
-				"supply": rated, "series-resistance": ohms, "resistor-power": watts, "touch-voltage": book.TouchVoltage,
-				"safe-voltage": screening.SafeVoltage,
-			},
-			Source: book.TouchSource,
-		})
+		all = append(all, book.TestVoltage(rated, reverseCurrent))
 	}
 	return all
 }

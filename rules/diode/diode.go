@@ -5,7 +5,6 @@
 package diode
 
 import (
-	"strings"
 	"time"
 
 	"goodbin/rules/internal/book"
@@ -67,11 +66,11 @@ func (b rulebook) claims() []screening.Field {
 			},
 		},
 		{
-			Definition: screening.VRRM, Example: "400V", AcceptRange: atLeastIn(quantity.Volt, "V"),
+			Definition: screening.VRRM, Example: "400V", AcceptRange: book.AtLeastIn(quantity.Volt, "V"),
 			Help: "the reverse voltage it claims to block",
 		},
 		{
-			Definition: screening.IFAV, Example: "1A", AcceptRange: atLeastIn(quantity.Ampere, "A"),
+			Definition: screening.IFAV, Example: "1A", AcceptRange: book.AtLeastIn(quantity.Ampere, "A"),
 			Help: "the forward current it claims to carry; not tested",
 		},
 		{
@@ -96,20 +95,6 @@ func (b rulebook) claims() []screening.Field {
 func (b rulebook) acceptType(word string) (string, bool) {
 	row, ok := b.types.Lookup(Kind, word)
 	return row.Type, ok
-}
-
-// atLeastIn takes a bare value that states its unit as "at least so much": what stands on a diode is what it claims to bear.
-func atLeastIn(unit quantity.Unit, symbol string) func(string) (low, high float64, ok bool) {
-	return func(word string) (low, high float64, ok bool) {
-		if !strings.HasSuffix(word, symbol) {
-			return 0, 0, false
-		}
-		v, err := quantity.Parse(word, unit)
-		if err != nil || v.Sense != quantity.Exactly || v.Over || v.Number <= 0 {
-			return 0, 0, false
-		}
-		return v.Number, inf, true
-	}
 }
 
 func bench() []screening.Field {

@@ -8,6 +8,7 @@ import (
 
 	"pgregory.net/rapid"
 
+	"goodbin/rules/internal/book"
 	"goodbin/rules/internal/booktest"
 	"goodbin/rules/types"
 	"goodbin/screening"
@@ -216,7 +217,7 @@ func TestBareValues(t *testing.T) {
 	if !ok || v != 400 || i.Low != 3 || technologyOf(p.Claim).name != schottky || len(sections(p.Claim)) != 2 {
 		t.Errorf("%v V, %v A, %s, %v", v, i.Low, technologyOf(p.Claim).name, sections(p.Claim))
 	}
-	if _, _, ok := atLeastIn(quantity.Volt, "V")("BAV"); ok {
+	if _, _, ok := book.AtLeastIn(quantity.Volt, "V")("BAV"); ok {
 		t.Error("BAV is taken as a voltage")
 	}
 }

@@ -3,8 +3,10 @@ package book
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"goodbin/screening"
+	"goodbin/screening/quantity"
 )
 
 // Trait defines a characteristic that is claimed in words.
@@ -65,4 +67,19 @@ func Without(ratings []screening.Rating, of screening.Characteristic) []screenin
 // itself.
 func Version(kind screening.Kind, edition string, tables ...string) string {
 	return string(kind) + "-" + edition + "-" + Fingerprint(tables...)
+}
+
+// AtLeastIn takes a bare value that states its unit as "at least so much": what stands on a part is what it claims to bear. symbol is the
+// unit's, without which the word is not taken.
+func AtLeastIn(unit quantity.Unit, symbol string) func(string) (low, high float64, ok bool) {
+	return func(word string) (low, high float64, ok bool) {
+		if !strings.HasSuffix(word, symbol) {
+			return 0, 0, false
+		}
+		v, err := quantity.Parse(word, unit)
+		if err != nil || v.Sense != quantity.Exactly || v.Over || v.Number <= 0 {
+			return 0, 0, false
+		}
+		return v.Number, math.Inf(1), true
+	}
 }

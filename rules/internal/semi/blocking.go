@@ -215,17 +215,5 @@ func (b Blocking) Cautions() []screening.Caution {
 	if !(b.Rated > book.TouchVoltage) {
 		return all
 	}
-	ohms, watts = b.Rated/testCurrent, b.Rated*testCurrent
-	return append(all, screening.Caution{
-		Code: "test-voltage", Level: screening.Danger,
-		Text: fmt.Sprintf("proving %s needs a supply that can kill. It is not needed for a first verdict: what was proved is said with it. "+
-			"If you must: %s in series, %s into a short, rated for the voltage; a cover over the part (it may burst), one hand, nobody alone, "+
-			"volts measured down to %.0f V before you touch anything; above %.0f V do as your local code and licensed practice say",
-			plainVolts(b.Rated), Ohms(ohms), Watts(watts), float64(screening.SafeVoltage), book.TouchVoltage),
-		Values: map[string]float64{
-			"supply": b.Rated, "series-resistance": ohms, "resistor-power": watts, "touch-voltage": book.TouchVoltage,
-			"safe-voltage": screening.SafeVoltage,
-		},
-		Source: book.TouchSource,
-	})
+	return append(all, book.TestVoltage(b.Rated, testCurrent))
 }
