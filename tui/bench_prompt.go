@@ -250,7 +250,11 @@ func (g *grid) underField(q screening.Question, open bool, w, room int) []string
 	case q.Ask == screening.AskGate:
 		return paintAll(t.faint, fmt.Sprintf("at most %d V may remain; measure again after discharging", screening.SafeVoltage), 2)
 	case q.Why != "" && q.Why != "not measured":
-		return paintAll(t.label, q.Why, 2)
+		how := q.Field.Ask // what to do says more than what it is, where there is room for one of them
+		if how == "" {
+			how = q.Field.Help
+		}
+		return paintAll(t.label, q.Why+"; "+how, 2)
 	}
 	return paintAll(t.faint, q.Field.Help, 2)
 }

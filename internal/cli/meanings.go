@@ -117,7 +117,7 @@ func (a *app) typesNamed(text string) []tui.Meaning {
 		}
 		says := []string{row.Type}
 		for _, name := range []string{screening.TraitGroup, screening.TraitPolarity, screening.TraitMaterial, screening.TraitTechnology} {
-			if trait := row.Trait(name); trait != "" {
+			if trait := row.Trait(name); trait != "" && !strings.HasSuffix(row.Type, trait) { // BF245A says its group itself
 				says = append(says, trait)
 			}
 		}

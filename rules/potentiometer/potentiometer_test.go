@@ -99,13 +99,7 @@ var verdictCases = []struct {
 func TestVerdicts(t *testing.T) {
 	seen := map[screening.Verdict]int{}
 	for _, tt := range verdictCases {
-		t.Run(tt.name, func(t *testing.T) {
-			j := booktest.Judge(t, Book(), tt.words, screening.DefaultPolicy())
-			seen[j.Verdict]++
-			if j.Verdict != tt.verdict || !strings.Contains(booktest.Texts(j), tt.says) || booktest.NotSoAs(j, tt.as) {
-				t.Errorf("%s: %s as %q, want %s as %q, saying %q\n%s", tt.words, j.Verdict, booktest.As(j), tt.verdict, tt.as, tt.says, booktest.Texts(j))
-			}
-		})
+		booktest.Case(t, Book(), seen, tt.name, tt.words, tt.verdict, tt.as, tt.says)
 	}
 	booktest.EveryVerdict(t, seen, screening.Treat)
 }
@@ -153,13 +147,7 @@ func TestClaimsThatCannotBe(t *testing.T) {
 		"10k rated:tolerance=-150%..-100%":                   "no tolerance of a potentiometer",
 		"3-gang rated:resistance/1=1k rated:resistance/2=1k": "3 are claimed, and values for 2",
 	} {
-		p, err := entry.Words(Book(), strings.Fields(words))
-		if err == nil {
-			_, err = screening.Judge(Book(), screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
-		}
-		if err == nil || !strings.Contains(err.Error(), want) {
-			t.Errorf("%s: %v, want %q", words, err, want)
-		}
+		booktest.Refuses(t, Book(), words, want)
 	}
 }
 

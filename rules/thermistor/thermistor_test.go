@@ -9,7 +9,6 @@ import (
 
 	"goodbin/rules/internal/booktest"
 	"goodbin/screening"
-	"goodbin/screening/entry"
 	"goodbin/screening/quantity"
 )
 
@@ -77,13 +76,7 @@ var verdictCases = []struct {
 func TestVerdicts(t *testing.T) {
 	seen := map[screening.Verdict]int{}
 	for _, tt := range verdictCases {
-		t.Run(tt.name, func(t *testing.T) {
-			j := booktest.Judge(t, Book(), tt.words, screening.DefaultPolicy())
-			seen[j.Verdict]++
-			if text := booktest.Texts(j); j.Verdict != tt.verdict || !strings.Contains(text, tt.says) || booktest.NotSoAs(j, tt.as) {
-				t.Errorf("%s: %s as %q, want %s as %q, saying %q\n%s", tt.words, j.Verdict, booktest.As(j), tt.verdict, tt.as, tt.says, text)
-			}
-		})
+		booktest.Case(t, Book(), seen, tt.name, tt.words, tt.verdict, tt.as, tt.says)
 	}
 	booktest.EveryVerdict(t, seen, screening.Treat)
 }
@@ -122,13 +115,7 @@ func TestClaimsThatCannotBe(t *testing.T) {
 		"18R ptc B3977":                    "a PTC has none",
 		"10k rated:tolerance=-150%..-100%": "no tolerance of a thermistor",
 	} {
-		p, err := entry.Words(Book(), strings.Fields(words))
-		if err == nil {
-			_, err = screening.Judge(Book(), screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
-		}
-		if err == nil || !strings.Contains(err.Error(), want) {
-			t.Errorf("%s: %v, want %q", words, err, want)
-		}
+		booktest.Refuses(t, Book(), words, want)
 	}
 }
 

@@ -77,6 +77,31 @@ func NotSoAs(j screening.Judgement, want string) bool {
 	return want == "" && as != "" || !strings.Contains(as, want)
 }
 
+// Case judges one part from words as typed and holds it against the verdict wanted, the lesser claim that it names ("" for none at all) and a
+// text that it says; given counts the verdict for [EveryVerdict].
+func Case(t *testing.T, book *screening.Rulebook, given map[screening.Verdict]int, name, words string, want screening.Verdict, as, says string) {
+	t.Helper()
+	t.Run(name, func(t *testing.T) {
+		j := Judge(t, book, words, screening.DefaultPolicy())
+		given[j.Verdict]++
+		if text := Texts(j); j.Verdict != want || !strings.Contains(text, says) || NotSoAs(j, as) {
+			t.Errorf("%s: %s as %q, want %s as %q, saying %q\n%s", words, j.Verdict, As(j), want, as, says, text)
+		}
+	})
+}
+
+// Refuses holds that words as typed, or the claim that they make, are refused with a text.
+func Refuses(t testing.TB, book *screening.Rulebook, words, want string) {
+	t.Helper()
+	p, err := entry.Words(book, strings.Fields(words))
+	if err == nil {
+		_, err = screening.Judge(book, screening.Part{Claim: p.Claim}, screening.DefaultPolicy())
+	}
+	if err == nil || !strings.Contains(err.Error(), want) {
+		t.Errorf("%s: %v, want %q", words, err, want)
+	}
+}
+
 // EveryVerdict holds what a table of cases gave against the verdicts that a kind can give: each at least once, and never one of those that
 // it cannot.
 func EveryVerdict(t *testing.T, given map[screening.Verdict]int, never ...screening.Verdict) {
