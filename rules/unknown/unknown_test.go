@@ -228,3 +228,12 @@ func TestLeadsThatAMeterCannotTell(t *testing.T) {
 func BenchmarkJudge(b *testing.B) {
 	booktest.Benchmark(b, book0(), "leads=3 vf/2-1=0.68 vf/2-3=0.67 vf/1-2=OL vf/3-2=OL")
 }
+
+// A reading that tells more comes before the name that nobody knows yet.
+func TestTheNameIsAskedForLast(t *testing.T) {
+	j := booktest.Judge(t, book0(), "leads=3 vf/1-2=OL", screening.DefaultPolicy())
+	if len(j.Next) < 2 || j.Next[0].Code != screening.CodeMeasure || strings.HasPrefix(j.Next[0].Text, "NAME it") ||
+		!strings.HasPrefix(j.Next[len(j.Next)-1].Text, "NAME it") {
+		t.Errorf("next steps %v", j.Next)
+	}
+}
